@@ -1,0 +1,60 @@
+import { drizzle, type MySql2Database } from "drizzle-orm/mysql2";
+import mysql from "mysql2/promise";
+import * as bench from "./schema/bench";
+import * as decisions from "./schema/decisions";
+import * as delivery from "./schema/delivery";
+import * as people from "./schema/people";
+import * as trail from "./schema/trail";
+import * as units from "./schema/units";
+
+export const tables = { ...people, ...units, ...bench, ...decisions, ...trail, ...delivery };
+
+export type Database = MySql2Database<Record<string, never>>;
+export type Transaction = Parameters<Parameters<Database["transaction"]>[0]>[0];
+/** What reads need: the pool or an open transaction. */
+export type Reader = Pick<Transaction, "select" | "selectDistinct">;
+
+/** Opens a pool. Times are UTC on the wire; a dead connection is replaced at the next query. */
+export function openDatabase(url: string, options: { connections?: number } = {}): Database & { close(): Promise<void> } {
+  const pool = mysql.createPool({
+    uri: url,
+    connectionLimit: options.connections ?? 20,
+    timezone: "Z",
+    charset: "utf8mb4",
+    enableKeepAlive: true,
+    connectTimeout: 5_000,
+  });
+  const database = drizzle({ client: pool, casing: "snake_case" });
+  return Object.assign(database, { close: () => pool.end() });
+}
+
+/** Lost race under snapshot isolation, lock wait timeout, deadlock: the transaction may be run again as a whole. */
+const RETRYABLE = new Set([1020, 1205, 1213]);
+const TRIES = 5;
+
+/** The MariaDB error number behind an error, or null. */
+export function databaseErrorNumber(error: unknown): number | null {
+  const cause = error instanceof Error && error.cause instanceof Error ? error.cause : error;
+  if (cause instanceof Error && "errno" in cause && typeof cause.errno === "number") return cause.errno;
+  return null;
+}
+
+/** Whether a unique key refused a row. */
+export function isDuplicate(error: unknown): boolean {
+  return databaseErrorNumber(error) === 1062;
+}
+
+/**
+ * Runs `work` in one transaction, again when MariaDB says that it lost a race (1020, 1205, 1213).
+ * `work` must therefore do nothing outside the database.
+ */
+export async function inTransaction<T>(database: Database, work: (tx: Transaction) => Promise<T>): Promise<T> {
+  for (let attempt = 1; ; attempt++) {
+    try {
+      return await database.transaction(work);
+    } catch (error) {
+      const number = databaseErrorNumber(error);
+      if (attempt >= TRIES || number === null || !RETRYABLE.has(number)) throw error;
+    }
+  }
+}

@@ -1,0 +1,153 @@
+import { sql } from "drizzle-orm";
+import {
+  check,
+  double,
+  index,
+  int,
+  json,
+  mysqlEnum,
+  mysqlTable,
+  text,
+  unique,
+  varchar,
+} from "drizzle-orm/mysql-core";
+import { unitStates } from "~/workflow/states";
+import { id, moment, ref } from "./columns";
+import { people, workshops } from "./people";
+
+export const units = mysqlTable(
+  "units",
+  {
+    id: id(),
+    workshopId: ref().notNull().references(() => workshops.id),
+    /** Counts up within the workshop; the number in links and on labels. */
+    number: int({ unsigned: true }).notNull(),
+    name: varchar({ length: 120 }).notNull(),
+    purpose: varchar({ length: 1000 }).notNull(),
+    placeOfUse: varchar({ length: 300 }).notNull(),
+    supplyVolts: double().notNull(),
+    supplyHertz: double().notNull(),
+    protectionClass: mysqlEnum(["I", "II"]).notNull(),
+    builderId: ref().notNull().references(() => people.id),
+    state: mysqlEnum(unitStates).notNull(),
+    /** Number of the revision being drafted or examined. */
+    revision: int({ unsigned: true }).notNull(),
+    /** Who has it on the bench, or had it there when the sheet was finished. */
+    inspectorId: ref().references(() => people.id),
+    /** Optimistic lock: every change adds one and checks the row count. */
+    version: int({ unsigned: true }).notNull(),
+    createdAt: moment().notNull(),
+    changedAt: moment().notNull(),
+  },
+  (table) => [
+    unique("units_number").on(table.workshopId, table.number),
+    index("units_by_state").on(table.workshopId, table.state, table.changedAt),
+    index("units_by_builder").on(table.workshopId, table.builderId, table.changedAt),
+    check("units_supply", sql`supply_volts > 0 and supply_hertz >= 0`),
+  ],
+);
+
+/** One revision of a unit: the map as drafted, frozen from its submission on. */
+export const revisions = mysqlTable(
+  "revisions",
+  {
+    id: id(),
+    unitId: ref().notNull().references(() => units.id),
+    number: int({ unsigned: true }).notNull(),
+    /** An EnergyMap of engine/energy-map.ts; parsed by zod wherever it is read. */
+    map: json().$type<unknown>().notNull(),
+    ruleSetKey: varchar({ length: 60 }).notNull(),
+    ruleSetVersion: int({ unsigned: true }).notNull(),
+    createdAt: moment().notNull(),
+    submittedAt: moment(),
+  },
+  (table) => [unique("revisions_number").on(table.unitId, table.number)],
+);
+
+/** Everybody who ever took a unit on the bench: the four-eyes rule reads this. */
+export const benchTurns = mysqlTable(
+  "bench_turns",
+  {
+    id: id(),
+    unitId: ref().notNull().references(() => units.id),
+    revisionId: ref().notNull().references(() => revisions.id),
+    inspectorId: ref().notNull().references(() => people.id),
+    takenAt: moment().notNull(),
+    endedAt: moment(),
+  },
+  (table) => [index("bench_turns_by_unit").on(table.unitId, table.takenAt)],
+);
+
+export const fileSubjects = ["unit", "check", "finding", "answer"] as const;
+
+/** Photos and drawings. The bytes are in S3 under `storageKey` (and `thumbKey` for photos). */
+export const files = mysqlTable(
+  "files",
+  {
+    id: id(),
+    workshopId: ref().notNull().references(() => workshops.id),
+    unitId: ref().notNull().references(() => units.id),
+    revisionId: ref().notNull().references(() => revisions.id),
+    kind: mysqlEnum(["photo", "drawing"]).notNull(),
+    subject: mysqlEnum(fileSubjects).notNull(),
+    /** The check's key when the subject is a check. */
+    checkKey: varchar({ length: 190 }),
+    findingId: ref().references(() => findings.id),
+    contentType: varchar({ length: 60 }).notNull(),
+    bytes: int({ unsigned: true }).notNull(),
+    width: int({ unsigned: true }),
+    height: int({ unsigned: true }),
+    sha256: varchar({ length: 64 }).notNull(),
+    storageKey: varchar({ length: 190 }).notNull().unique(),
+    thumbKey: varchar({ length: 190 }),
+    originalName: varchar({ length: 200 }).notNull(),
+    caption: varchar({ length: 300 }).notNull().default(""),
+    addedById: ref().notNull().references(() => people.id),
+    addedAt: moment().notNull(),
+    /** Set when taken back before the revision was decided; the row stays. */
+    removedAt: moment(),
+  },
+  (table) => [index("files_by_unit").on(table.unitId, table.subject, table.checkKey)],
+);
+
+export const severities = ["danger", "defect", "advice"] as const;
+
+export const findings = mysqlTable(
+  "findings",
+  {
+    id: id(),
+    unitId: ref().notNull().references(() => units.id),
+    /** Revision on which it was raised. */
+    revisionId: ref().notNull().references(() => revisions.id),
+    /** Counts up within the unit: "Finding 3". */
+    number: int({ unsigned: true }).notNull(),
+    severity: mysqlEnum(severities).notNull(),
+    checkKey: varchar({ length: 190 }),
+    elementId: varchar({ length: 40 }),
+    text: text().notNull(),
+    raisedById: ref().notNull().references(() => people.id),
+    raisedAt: moment().notNull(),
+    closedById: ref().references(() => people.id),
+    closedAt: moment(),
+    closingText: text(),
+  },
+  (table) => [
+    unique("findings_number").on(table.unitId, table.number),
+    check("findings_closing", sql`(closed_at is null) = (closed_by_id is null)`),
+  ],
+);
+
+/** The builder's answers; a finding can be answered in every round of rework. */
+export const findingAnswers = mysqlTable(
+  "finding_answers",
+  {
+    id: id(),
+    findingId: ref().notNull().references(() => findings.id),
+    /** The revision being reworked when it was answered. */
+    revisionId: ref().notNull().references(() => revisions.id),
+    text: text().notNull(),
+    answeredById: ref().notNull().references(() => people.id),
+    answeredAt: moment().notNull(),
+  },
+  (table) => [unique("finding_answers_round").on(table.findingId, table.revisionId)],
+);

@@ -1,0 +1,40 @@
+import { data, type RouterContextProvider } from "react-router";
+import type { ServiceContext } from "~/services/context.server";
+import { NotFoundError } from "~/services/errors";
+import { findUnit, type StandingUnit } from "~/services/unit-act.server";
+import { type Action, decide } from "~/workflow/permissions";
+import { answerTo } from "./answers.server";
+import { serviceContext } from "./workshop.server";
+
+/**
+ * The first line of every loader and action below a workshop: asks the permission table, and gives what services
+ * need. For actions that concern no single unit.
+ *
+ * @throws a 403 answer with the reason
+ */
+export function authorise(context: Readonly<RouterContextProvider>, action: Action): ServiceContext {
+  const services = serviceContext(context);
+  const decision = decide(action, { id: services.person.id, roles: services.workshop.roles });
+  if (!decision.allowed) throw data(decision.reason, { status: 403 });
+  return services;
+}
+
+/**
+ * The same for an action on one unit of the workshop, named by the number in its address. Services ask again under
+ * the row lock; this answers early and gives the unit for reading.
+ *
+ * @throws a 404 answer when the workshop has no such unit, a 403 answer with the reason
+ */
+export async function authoriseUnit(
+  context: Readonly<RouterContextProvider>,
+  action: Action,
+  unitNumber: string | undefined,
+): Promise<{ services: ServiceContext; unit: StandingUnit }> {
+  const services = serviceContext(context);
+  const number = Number(unitNumber);
+  const unit = Number.isSafeInteger(number) && number > 0 ? await findUnit(services.db, services.workshop.id, number) : null;
+  if (!unit) throw answerTo(new NotFoundError("The unit"));
+  const decision = decide(action, { id: services.person.id, roles: services.workshop.roles }, unit);
+  if (!decision.allowed) throw data(decision.reason, { status: 403 });
+  return { services, unit };
+}

@@ -1,0 +1,60 @@
+import { createCookie, type MiddlewareFunction, redirect, type RouterContextProvider } from "react-router";
+import { clientAddressContext, personContext, type SignedInPerson } from "~/context";
+import { environment } from "~/environment.server";
+import { database } from "~/services/database.server";
+import { findSession, hashSecret, openSession, revokeSession } from "~/services/people/sessions.server";
+
+type Context = Readonly<RouterContextProvider>;
+
+function sessionCookie() {
+  const secure = environment().APP_URL.startsWith("https:");
+  return createCookie(secure ? "__Host-mainsgate" : "mainsgate", {
+    httpOnly: true,
+    sameSite: "lax",
+    path: "/",
+    secure,
+    maxAge: 14 * 86_400,
+  });
+}
+
+async function readSecret(request: Request): Promise<string | null> {
+  const value: unknown = await sessionCookie().parse(request.headers.get("Cookie"));
+  return typeof value === "string" && value.length > 0 ? value : null;
+}
+
+/** Finds out, once a request, who is signed in. */
+export const sessionMiddleware: MiddlewareFunction<Response> = async ({ request, context }, next) => {
+  const secret = await readSecret(request);
+  const session = secret ? await findSession(database(), secret, new Date()) : null;
+  context.set(personContext, session?.person ?? null);
+  return next();
+};
+
+/** The signed-in person, or a redirect to the sign-in page that leads back here afterwards. */
+export function requirePerson(context: Context, url: URL): SignedInPerson {
+  const person = context.get(personContext);
+  if (person) return person;
+  const back = url.pathname === "/" ? "" : `?${new URLSearchParams({ to: url.pathname + url.search }).toString()}`;
+  throw redirect(`/sign-in${back}`);
+}
+
+/** Opens a session for a person who has just authenticated; the header sets its cookie. */
+export async function signIn(request: Request, context: Context, personId: number): Promise<string> {
+  const origin = { userAgent: request.headers.get("User-Agent") ?? "", ip: context.get(clientAddressContext) };
+  const secret = await openSession(database(), personId, origin, new Date());
+  return sessionCookie().serialize(secret);
+}
+
+/** Ends the session of this request; the header removes its cookie. */
+export async function signOut(request: Request, context: Context): Promise<string> {
+  const secret = await readSecret(request);
+  const person = context.get(personContext);
+  if (secret && person) await revokeSession(database(), person.id, hashSecret(secret));
+  return sessionCookie().serialize("", { maxAge: 0 });
+}
+
+/** The hash that names this request's own session in the list of sessions. */
+export async function currentSessionHash(request: Request): Promise<string | null> {
+  const secret = await readSecret(request);
+  return secret ? hashSecret(secret) : null;
+}

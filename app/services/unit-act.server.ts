@@ -1,0 +1,153 @@
+import { and, eq, sql } from "drizzle-orm";
+import { inTransaction, type Reader, tables, type Transaction } from "~/db/client.server";
+import { appendEntry } from "~/services/audit/append-entry.server";
+import type { ServiceContext } from "~/services/context.server";
+import { ConflictError, ForbiddenError, NotFoundError } from "~/services/errors";
+import { type Action, decide, type UnitStanding } from "~/workflow/permissions";
+import { stateTitles } from "~/workflow/states";
+import { transition, type TransitionName, transitions } from "~/workflow/transitions";
+
+const { benchTurns, people, units } = tables;
+
+export type UnitRow = typeof units.$inferSelect;
+
+/** A unit as the permission table must see it. */
+export type StandingUnit = UnitRow & UnitStanding;
+
+export interface UnitActInput {
+  /** The unit's number within the workshop, as in its address. */
+  unitNumber: number;
+  /** The version that the person's form was made from; left out where any version will do. */
+  expectedVersion?: number;
+}
+
+export interface Act {
+  tx: Transaction;
+  /** The unit as it stands under the row lock. */
+  unit: StandingUnit;
+  at: Date;
+}
+
+/** Reads a unit of this workshop with everybody who inspected it; null when there is none. */
+export async function findUnit(
+  tx: Reader,
+  workshopId: number,
+  unitNumber: number,
+  lock: "update" | "none" = "none",
+): Promise<StandingUnit | null> {
+  const query = tx
+    .select()
+    .from(units)
+    .where(and(eq(units.workshopId, workshopId), eq(units.number, unitNumber)));
+  const [unit] = lock === "update" ? await query.for("update") : await query;
+  if (!unit) return null;
+  const turns = await tx
+    .selectDistinct({ inspectorId: benchTurns.inspectorId })
+    .from(benchTurns)
+    .where(eq(benchTurns.unitId, unit.id));
+  return { ...unit, inspectorIds: turns.map((turn) => turn.inspectorId) };
+}
+
+/**
+ * Does something to one unit: locks its row, asks the permission table again under the lock, does the work, raises
+ * the version and appends the audit entry, all in one transaction.
+ *
+ * @throws NotFoundError, ForbiddenError, ConflictError when the unit changed since the form was made
+ */
+export function actOnUnit<T>(
+  context: ServiceContext,
+  action: Action,
+  input: UnitActInput,
+  work: (act: Act) => Promise<{ result: T; detail?: Record<string, unknown>; act?: string }>,
+): Promise<T> {
+  return inTransaction(context.db, async (tx) => {
+    const { unit, at } = await lockUnit(context, tx, input);
+    authoriseUnder(context, action, unit);
+    const { result, detail, act } = await work({ tx, unit, at });
+    await touch(tx, unit, at, {});
+    await appendEntry(tx, {
+      workshopId: context.workshop.id,
+      at,
+      actorId: context.person.id,
+      act: act ?? action,
+      unitId: unit.id,
+      detail,
+    });
+    return result;
+  });
+}
+
+/**
+ * Takes a unit from one state to the next: everything of {@link actOnUnit}, with the row of the transition table
+ * deciding who may and whence. `work` checks the guards and writes mail; the state changes after it, in the same transaction.
+ *
+ * @throws ConflictError when the unit isn't in a state that this transition starts from
+ */
+export function moveUnit<T>(
+  context: ServiceContext,
+  name: TransitionName,
+  input: UnitActInput,
+  work: (act: Act) => Promise<{
+    result: T;
+    detail?: Record<string, unknown>;
+    changes?: Partial<Pick<UnitRow, "inspectorId" | "revision">>;
+  }>,
+): Promise<T> {
+  return inTransaction(context.db, async (tx) => {
+    const { unit, at } = await lockUnit(context, tx, input);
+    const outcome = transition(unit.state, name);
+    if (!outcome.ok) throw await staleConflict(tx, unit);
+    authoriseUnder(context, transitions[name].action, unit);
+    const { result, detail, changes } = await work({ tx, unit, at });
+    await touch(tx, unit, at, { ...changes, state: outcome.to });
+    await appendEntry(tx, {
+      workshopId: context.workshop.id,
+      at,
+      actorId: context.person.id,
+      act: `unit.${name}`,
+      unitId: unit.id,
+      fromState: unit.state,
+      toState: outcome.to,
+      detail: { revision: unit.revision, ...detail },
+    });
+    return result;
+  });
+}
+
+async function lockUnit(context: ServiceContext, tx: Transaction, input: UnitActInput) {
+  const unit = await findUnit(tx, context.workshop.id, input.unitNumber, "update");
+  if (!unit) throw new NotFoundError(`Unit ${input.unitNumber}`);
+  if (input.expectedVersion !== undefined && input.expectedVersion !== unit.version) {
+    throw await staleConflict(tx, unit);
+  }
+  return { unit, at: context.now() };
+}
+
+function authoriseUnder(context: ServiceContext, action: Action, unit: UnitStanding): void {
+  const decision = decide(action, { id: context.person.id, roles: context.workshop.roles }, unit);
+  if (!decision.allowed) throw new ForbiddenError(decision.reason);
+}
+
+async function touch(tx: Transaction, unit: UnitRow, at: Date, changes: Partial<UnitRow>): Promise<void> {
+  const [answer] = await tx
+    .update(units)
+    .set({ ...changes, version: sql`${units.version} + 1`, changedAt: at })
+    .where(and(eq(units.id, unit.id), eq(units.version, unit.version)));
+  if (answer.affectedRows !== 1) throw new ConflictError("Somebody else changed this unit at the same moment.");
+}
+
+/** Says who acted last, so that the person knows whom to ask. */
+async function staleConflict(tx: Transaction, unit: UnitRow): Promise<ConflictError> {
+  const { auditEntries } = tables;
+  const [last] = await tx
+    .select({ name: people.name, at: auditEntries.at })
+    .from(auditEntries)
+    .leftJoin(people, eq(people.id, auditEntries.actorId))
+    .where(eq(auditEntries.unitId, unit.id))
+    .orderBy(sql`${auditEntries.sequence} desc`)
+    .limit(1);
+  const who = last?.name ?? "Somebody else";
+  return new ConflictError(
+    `${who} acted on unit ${unit.number} before you. It is now “${stateTitles[unit.state]}”, revision ${unit.revision}.`,
+  );
+}
