@@ -15,7 +15,10 @@ export type Transaction = Parameters<Parameters<Database["transaction"]>[0]>[0];
 export type Reader = Pick<Transaction, "select" | "selectDistinct">;
 
 /** Opens a pool. Times are UTC on the wire; a dead connection is replaced at the next query. */
-export function openDatabase(url: string, options: { connections?: number } = {}): Database & { close(): Promise<void> } {
+export function openDatabase(
+  url: string,
+  options: { connections?: number } = {},
+): Database & { close(): Promise<void> } {
   const pool = mysql.createPool({
     uri: url,
     connectionLimit: options.connections ?? 20,
@@ -48,7 +51,10 @@ export function isDuplicate(error: unknown): boolean {
  * Runs `work` in one transaction, again when MariaDB says that it lost a race (1020, 1205, 1213).
  * `work` must therefore do nothing outside the database.
  */
-export async function inTransaction<T>(database: Database, work: (tx: Transaction) => Promise<T>): Promise<T> {
+export async function inTransaction<T>(
+  database: Database,
+  work: (tx: Transaction) => Promise<T>,
+): Promise<T> {
   for (let attempt = 1; ; attempt++) {
     try {
       return await database.transaction(work);

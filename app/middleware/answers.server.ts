@@ -20,11 +20,18 @@ export function problem(error: unknown): Response {
 }
 
 /** A Problem Details answer with a title for the status, a detail in a sentence and extension members. */
-export function problemResponse(status: number, detail: string, members: Record<string, unknown> = {}): Response {
-  return new Response(JSON.stringify({ type: "about:blank", title: titles[status] ?? "Error", status, detail, ...members }), {
-    status,
-    headers: { "Content-Type": "application/problem+json", "Cache-Control": "no-store" },
-  });
+export function problemResponse(
+  status: number,
+  detail: string,
+  members: Record<string, unknown> = {},
+): Response {
+  return new Response(
+    JSON.stringify({ type: "about:blank", title: titles[status] ?? "Error", status, detail, ...members }),
+    {
+      status,
+      headers: { "Content-Type": "application/problem+json", "Cache-Control": "no-store" },
+    },
+  );
 }
 
 const titles: Record<number, string> = {

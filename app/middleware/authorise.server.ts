@@ -32,7 +32,10 @@ export async function authoriseUnit(
 ): Promise<{ services: ServiceContext; unit: StandingUnit }> {
   const services = serviceContext(context);
   const number = Number(unitNumber);
-  const unit = Number.isSafeInteger(number) && number > 0 ? await findUnit(services.db, services.workshop.id, number) : null;
+  const unit =
+    Number.isSafeInteger(number) && number > 0
+      ? await findUnit(services.db, services.workshop.id, number)
+      : null;
   if (!unit) throw answerTo(new NotFoundError("The unit"));
   const decision = decide(action, { id: services.person.id, roles: services.workshop.roles }, unit);
   if (!decision.allowed) throw data(decision.reason, { status: 403 });

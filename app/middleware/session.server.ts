@@ -34,13 +34,17 @@ export const sessionMiddleware: MiddlewareFunction<Response> = async ({ request,
 export function requirePerson(context: Context, url: URL): SignedInPerson {
   const person = context.get(personContext);
   if (person) return person;
-  const back = url.pathname === "/" ? "" : `?${new URLSearchParams({ to: url.pathname + url.search }).toString()}`;
+  const back =
+    url.pathname === "/" ? "" : `?${new URLSearchParams({ to: url.pathname + url.search }).toString()}`;
   throw redirect(`/sign-in${back}`);
 }
 
 /** Opens a session for a person who has just authenticated; the header sets its cookie. */
 export async function signIn(request: Request, context: Context, personId: number): Promise<string> {
-  const origin = { userAgent: request.headers.get("User-Agent") ?? "", ip: context.get(clientAddressContext) };
+  const origin = {
+    userAgent: request.headers.get("User-Agent") ?? "",
+    ip: context.get(clientAddressContext),
+  };
   const secret = await openSession(database(), personId, origin, new Date());
   return sessionCookie().serialize(secret);
 }

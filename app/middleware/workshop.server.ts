@@ -10,8 +10,8 @@ import { requirePerson } from "./session.server";
  * Stands on every route with a `:workshop` parameter: somebody must be signed in and belong to that workshop.
  * To everybody else the workshop doesn't exist.
  */
-export const workshopMiddleware: MiddlewareFunction<Response> = async ({ request, params, context }, next) => {
-  const person = requirePerson(context, new URL(request.url));
+export const workshopMiddleware: MiddlewareFunction<Response> = async ({ url, params, context }, next) => {
+  const person = requirePerson(context, url);
   const workshop = params.workshop ? await findWorkshop(database(), params.workshop, person.id) : null;
   if (!workshop) throw data("There is no such workshop among yours.", { status: 404 });
   context.set(workshopContext, workshop);

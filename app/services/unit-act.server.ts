@@ -2,10 +2,10 @@ import { and, eq, sql } from "drizzle-orm";
 import { inTransaction, type Reader, tables, type Transaction } from "~/db/client.server";
 import { appendEntry } from "~/services/audit/append-entry.server";
 import type { ServiceContext } from "~/services/context.server";
-import { ConflictError, ForbiddenError, NotFoundError } from "~/services/errors";
+import { ConflictError, ForbiddenError, GuardError, NotFoundError } from "~/services/errors";
 import { type Action, decide, type UnitStanding } from "~/workflow/permissions";
 import { stateTitles } from "~/workflow/states";
-import { transition, type TransitionName, transitions } from "~/workflow/transitions";
+import { type GuardOf, transition, type TransitionName, transitions } from "~/workflow/transitions";
 
 const { benchTurns, people, units } = tables;
 
@@ -77,28 +77,42 @@ export function actOnUnit<T>(
   });
 }
 
-/**
- * Takes a unit from one state to the next: everything of {@link actOnUnit}, with the row of the transition table
- * deciding who may and whence. `work` checks the guards and writes mail; the state changes after it, in the same transaction.
- *
- * @throws ConflictError when the unit isn't in a state that this transition starts from
- */
-export function moveUnit<T>(
-  context: ServiceContext,
-  name: TransitionName,
-  input: UnitActInput,
+/** What stands against a transition, guard by guard: sentences for the person, none where the guard is met. */
+export type GuardAnswers<Name extends TransitionName> = Record<GuardOf<Name>, readonly string[]>;
+
+export interface Move<Name extends TransitionName, T> {
+  /** Answers every guard in the transition's row; the compiler demands each. Runs under the row lock. */
+  guards: (act: Act) => Promise<GuardAnswers<Name>> | GuardAnswers<Name>;
+  /** Writes what the transition brings along, mails included. The unit's state changes after it. */
   work: (act: Act) => Promise<{
     result: T;
     detail?: Record<string, unknown>;
     changes?: Partial<Pick<UnitRow, "inspectorId" | "revision">>;
-  }>,
+  }>;
+}
+
+/**
+ * Takes a unit from one state to the next: everything of {@link actOnUnit}, with the row of the transition table
+ * deciding who may, whence, and which guards must hold; one transaction.
+ *
+ * @throws NotFoundError, ForbiddenError, ConflictError (acted on by somebody else), GuardError with every reason at once
+ */
+export function moveUnit<Name extends TransitionName, T>(
+  context: ServiceContext,
+  name: Name,
+  input: UnitActInput,
+  move: Move<Name, T>,
 ): Promise<T> {
   return inTransaction(context.db, async (tx) => {
     const { unit, at } = await lockUnit(context, tx, input);
     const outcome = transition(unit.state, name);
     if (!outcome.ok) throw await staleConflict(tx, unit);
     authoriseUnder(context, transitions[name].action, unit);
-    const { result, detail, changes } = await work({ tx, unit, at });
+    const act = { tx, unit, at };
+    const answers: Record<string, readonly string[]> = await move.guards(act);
+    const reasons = Object.values(answers).flat();
+    if (reasons.length > 0) throw new GuardError(reasons);
+    const { result, detail, changes } = await move.work(act);
     await touch(tx, unit, at, { ...changes, state: outcome.to });
     await appendEntry(tx, {
       workshopId: context.workshop.id,
@@ -133,7 +147,8 @@ async function touch(tx: Transaction, unit: UnitRow, at: Date, changes: Partial<
     .update(units)
     .set({ ...changes, version: sql`${units.version} + 1`, changedAt: at })
     .where(and(eq(units.id, unit.id), eq(units.version, unit.version)));
-  if (answer.affectedRows !== 1) throw new ConflictError("Somebody else changed this unit at the same moment.");
+  if (answer.affectedRows !== 1)
+    throw new ConflictError("Somebody else changed this unit at the same moment.");
 }
 
 /** Says who acted last, so that the person knows whom to ask. */

@@ -81,7 +81,9 @@ export function decide(
 ): Decision {
   const permission: Permission = permissions[action];
   if (!permission.roles.some((role) => person.roles.includes(role))) {
-    return deny(`This needs the role ${orList(permission.roles.map((role) => roleTitles[role].toLowerCase()))}.`);
+    return deny(
+      `This needs the role ${orList(permission.roles.map((role) => roleTitles[role].toLowerCase()))}.`,
+    );
   }
   if (!permission.states && !permission.relation) return { allowed: true };
   if (!unit) return deny("This concerns one unit, and none was named.");

@@ -15,7 +15,8 @@ export const roleTitles: Record<Role, string> = {
 export const roleDuties: Record<Role, string> = {
   builder: "Describes units and their energy maps, answers findings, resubmits.",
   inspector: "Works the bench sheet: examines, measures, photographs, raises and closes findings.",
-  electrician: "Licensed. Reviews and signs, signs with conditions, refuses or sends back; may withdraw later.",
+  electrician:
+    "Licensed. Reviews and signs, signs with conditions, refuses or sends back; may withdraw later.",
   archivist: "Reads and searches every record and its trail. Changes none.",
   steward: "Runs the workshop: people, licences, instruments, policies. Alters no reading and no signature.",
 };

@@ -101,7 +101,13 @@ export const transitions = {
     from: ["awaiting_signature"],
     to: "refused",
     action: "signing.refuse",
-    guards: ["licence-in-date", "licence-in-scope", "signer-authenticated", "signature-given", "reason-given"],
+    guards: [
+      "licence-in-date",
+      "licence-in-scope",
+      "signer-authenticated",
+      "signature-given",
+      "reason-given",
+    ],
     tells: ["builder", "inspector"],
     told: "refused",
   },
@@ -117,9 +123,11 @@ export const transitions = {
 
 export type TransitionName = keyof typeof transitions;
 
+/** The guards of one transition's row. */
+export type GuardOf<Name extends TransitionName> = (typeof transitions)[Name]["guards"][number];
+
 export type Outcome =
-  | { ok: true; to: UnitState; transition: Transition }
-  | { ok: false; reason: "stale"; state: UnitState };
+  { ok: true; to: UnitState; transition: Transition } | { ok: false; reason: "stale"; state: UnitState };
 
 /** The state that a transition leads to from `state`, or that it no longer applies there. Runs nothing. */
 export function transition(state: UnitState, name: TransitionName): Outcome {

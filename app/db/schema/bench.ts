@@ -19,7 +19,9 @@ export const instruments = mysqlTable(
   "instruments",
   {
     id: id(),
-    workshopId: ref().notNull().references(() => workshops.id),
+    workshopId: ref()
+      .notNull()
+      .references(() => workshops.id),
     name: varchar({ length: 120 }).notNull(),
     /** An InstrumentKind of engine/check.ts, parsed by zod where it is read. */
     kind: varchar({ length: 60 }).notNull(),
@@ -40,7 +42,9 @@ export const instrumentRanges = mysqlTable(
   "instrument_ranges",
   {
     id: id(),
-    instrumentId: ref().notNull().references(() => instruments.id),
+    instrumentId: ref()
+      .notNull()
+      .references(() => instruments.id),
     unit: varchar({ length: 20 }).notNull(),
     lower: double().notNull(),
     upper: double().notNull(),
@@ -71,8 +75,12 @@ export const observations = mysqlTable(
   "observations",
   {
     id: id(),
-    unitId: ref().notNull().references(() => units.id),
-    revisionId: ref().notNull().references(() => revisions.id),
+    unitId: ref()
+      .notNull()
+      .references(() => units.id),
+    revisionId: ref()
+      .notNull()
+      .references(() => revisions.id),
     checkKey: varchar({ length: 190 }).notNull(),
     kind: mysqlEnum(observationKinds).notNull(),
     /** The value displayed, for "measured"; `bound` tells that the display read over or under its range. */
@@ -88,7 +96,9 @@ export const observations = mysqlTable(
     reason: varchar({ length: 1000 }),
     correctsId: ref(),
     carriedFromId: ref(),
-    byId: ref().notNull().references(() => people.id),
+    byId: ref()
+      .notNull()
+      .references(() => people.id),
     at: moment().notNull(),
     note: text(),
   },
@@ -97,7 +107,11 @@ export const observations = mysqlTable(
     index("observations_by_unit").on(table.unitId),
     index("observations_by_instrument").on(table.instrumentId),
     foreignKey({ name: "observations_corrects", columns: [table.correctsId], foreignColumns: [table.id] }),
-    foreignKey({ name: "observations_carried_from", columns: [table.carriedFromId], foreignColumns: [table.id] }),
+    foreignKey({
+      name: "observations_carried_from",
+      columns: [table.carriedFromId],
+      foreignColumns: [table.id],
+    }),
     unique("observations_corrected_once").on(table.correctsId),
     check(
       "observations_shape",

@@ -34,11 +34,19 @@ export const decisions = mysqlTable(
   "decisions",
   {
     id: id(),
-    unitId: ref().notNull().references(() => units.id),
-    revisionId: ref().notNull().references(() => revisions.id),
+    unitId: ref()
+      .notNull()
+      .references(() => units.id),
+    revisionId: ref()
+      .notNull()
+      .references(() => revisions.id),
     kind: mysqlEnum(["signed", "refused"]).notNull(),
-    signerId: ref().notNull().references(() => people.id),
-    licenceId: ref().notNull().references(() => licences.id),
+    signerId: ref()
+      .notNull()
+      .references(() => people.id),
+    licenceId: ref()
+      .notNull()
+      .references(() => licences.id),
     /** What the signer states by signing, or why they refuse. */
     statement: text().notNull(),
     conditions: json().$type<SigningConditions>(),
@@ -66,9 +74,16 @@ export const records = mysqlTable(
   "records",
   {
     id: id(),
-    workshopId: ref().notNull().references(() => workshops.id),
-    unitId: ref().notNull().references(() => units.id),
-    decisionId: ref().notNull().references(() => decisions.id).unique("records_decision"),
+    workshopId: ref()
+      .notNull()
+      .references(() => workshops.id),
+    unitId: ref()
+      .notNull()
+      .references(() => units.id),
+    decisionId: ref()
+      .notNull()
+      .references(() => decisions.id)
+      .unique("records_decision"),
     /** Random, unguessable; the address of the public page behind the QR code. */
     publicCode: varchar({ length: 32 }).notNull().unique(),
     /** RFC 8785 canonical JSON, byte for byte what `sha256` was computed over. */
@@ -80,13 +95,21 @@ export const records = mysqlTable(
     pdfBytes: int({ unsigned: true }),
     pdfMadeAt: moment(),
   },
-  (table) => [index("records_by_workshop").on(table.workshopId, table.madeAt), index("records_by_unit").on(table.unitId)],
+  (table) => [
+    index("records_by_workshop").on(table.workshopId, table.madeAt),
+    index("records_by_unit").on(table.unitId),
+  ],
 );
 
 export const withdrawals = mysqlTable("withdrawals", {
   id: id(),
-  recordId: ref().notNull().references(() => records.id).unique("withdrawals_record"),
-  byId: ref().notNull().references(() => people.id),
+  recordId: ref()
+    .notNull()
+    .references(() => records.id)
+    .unique("withdrawals_record"),
+  byId: ref()
+    .notNull()
+    .references(() => people.id),
   reason: text().notNull(),
   at: moment().notNull(),
 });

@@ -41,5 +41,8 @@ export const jobs = mysqlTable(
     doneAt: moment(),
     lastError: varchar({ length: 500 }),
   },
-  (table) => [unique("jobs_once").on(table.kind, table.subjectId), index("jobs_due").on(table.doneAt, table.dueAt)],
+  (table) => [
+    unique("jobs_once").on(table.kind, table.subjectId),
+    index("jobs_due").on(table.doneAt, table.dueAt),
+  ],
 );

@@ -43,8 +43,12 @@ export const workshops = mysqlTable("workshops", {
 export const memberships = mysqlTable(
   "memberships",
   {
-    workshopId: ref().notNull().references(() => workshops.id),
-    personId: ref().notNull().references(() => people.id),
+    workshopId: ref()
+      .notNull()
+      .references(() => workshops.id),
+    personId: ref()
+      .notNull()
+      .references(() => people.id),
     role: mysqlEnum(roles).notNull(),
     grantedAt: moment().notNull(),
   },
@@ -58,8 +62,12 @@ export const licences = mysqlTable(
   "licences",
   {
     id: id(),
-    workshopId: ref().notNull().references(() => workshops.id),
-    personId: ref().notNull().references(() => people.id),
+    workshopId: ref()
+      .notNull()
+      .references(() => workshops.id),
+    personId: ref()
+      .notNull()
+      .references(() => people.id),
     number: varchar({ length: 60 }).notNull(),
     authority: varchar({ length: 120 }).notNull(),
     validFrom: date({ mode: "string" }).notNull(),
@@ -80,14 +88,19 @@ export const sessions = mysqlTable(
   {
     /** SHA-256 of the secret in the cookie, in hex: a leaked table opens no session. */
     idHash: char({ length: 64 }).primaryKey(),
-    personId: ref().notNull().references(() => people.id),
+    personId: ref()
+      .notNull()
+      .references(() => people.id),
     userAgent: varchar({ length: 255 }).notNull(),
     ip: varchar({ length: 45 }).notNull(),
     createdAt: moment().notNull(),
     lastSeenAt: moment().notNull(),
     expiresAt: moment().notNull(),
   },
-  (table) => [index("sessions_by_person").on(table.personId), index("sessions_by_expiry").on(table.expiresAt)],
+  (table) => [
+    index("sessions_by_person").on(table.personId),
+    index("sessions_by_expiry").on(table.expiresAt),
+  ],
 );
 
 export const tokens = mysqlTable(
@@ -97,7 +110,9 @@ export const tokens = mysqlTable(
     /** SHA-256 of the token in the link, in hex. */
     hash: char({ length: 64 }).notNull().unique(),
     purpose: mysqlEnum(["reset", "invitation"]).notNull(),
-    personId: ref().notNull().references(() => people.id),
+    personId: ref()
+      .notNull()
+      .references(() => people.id),
     workshopId: ref().references(() => workshops.id),
     roles: json().$type<Role[]>(),
     createdById: ref().references(() => people.id),

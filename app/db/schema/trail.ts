@@ -6,7 +6,9 @@ import { units } from "./units";
 
 /** The head of each workshop's trail; its row lock orders the appends. */
 export const trailHeads = mysqlTable("trail_heads", {
-  workshopId: ref().primaryKey().references(() => workshops.id),
+  workshopId: ref()
+    .primaryKey()
+    .references(() => workshops.id),
   sequence: int({ unsigned: true }).notNull(),
   hash: char({ length: 64 }).notNull(),
 });
@@ -15,7 +17,9 @@ export const trailHeads = mysqlTable("trail_heads", {
 export const auditEntries = mysqlTable(
   "audit_entries",
   {
-    workshopId: ref().notNull().references(() => workshops.id),
+    workshopId: ref()
+      .notNull()
+      .references(() => workshops.id),
     /** 1, 2, 3 … within the workshop. */
     sequence: int({ unsigned: true }).notNull(),
     at: moment().notNull(),

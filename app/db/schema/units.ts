@@ -19,7 +19,9 @@ export const units = mysqlTable(
   "units",
   {
     id: id(),
-    workshopId: ref().notNull().references(() => workshops.id),
+    workshopId: ref()
+      .notNull()
+      .references(() => workshops.id),
     /** Counts up within the workshop; the number in links and on labels. */
     number: int({ unsigned: true }).notNull(),
     name: varchar({ length: 120 }).notNull(),
@@ -28,7 +30,9 @@ export const units = mysqlTable(
     supplyVolts: double().notNull(),
     supplyHertz: double().notNull(),
     protectionClass: mysqlEnum(["I", "II"]).notNull(),
-    builderId: ref().notNull().references(() => people.id),
+    builderId: ref()
+      .notNull()
+      .references(() => people.id),
     state: mysqlEnum(unitStates).notNull(),
     /** Number of the revision being drafted or examined. */
     revision: int({ unsigned: true }).notNull(),
@@ -52,7 +56,9 @@ export const revisions = mysqlTable(
   "revisions",
   {
     id: id(),
-    unitId: ref().notNull().references(() => units.id),
+    unitId: ref()
+      .notNull()
+      .references(() => units.id),
     number: int({ unsigned: true }).notNull(),
     /** An EnergyMap of engine/energy-map.ts; parsed by zod wherever it is read. */
     map: json().$type<unknown>().notNull(),
@@ -69,9 +75,15 @@ export const benchTurns = mysqlTable(
   "bench_turns",
   {
     id: id(),
-    unitId: ref().notNull().references(() => units.id),
-    revisionId: ref().notNull().references(() => revisions.id),
-    inspectorId: ref().notNull().references(() => people.id),
+    unitId: ref()
+      .notNull()
+      .references(() => units.id),
+    revisionId: ref()
+      .notNull()
+      .references(() => revisions.id),
+    inspectorId: ref()
+      .notNull()
+      .references(() => people.id),
     takenAt: moment().notNull(),
     endedAt: moment(),
   },
@@ -85,9 +97,15 @@ export const files = mysqlTable(
   "files",
   {
     id: id(),
-    workshopId: ref().notNull().references(() => workshops.id),
-    unitId: ref().notNull().references(() => units.id),
-    revisionId: ref().notNull().references(() => revisions.id),
+    workshopId: ref()
+      .notNull()
+      .references(() => workshops.id),
+    unitId: ref()
+      .notNull()
+      .references(() => units.id),
+    revisionId: ref()
+      .notNull()
+      .references(() => revisions.id),
     kind: mysqlEnum(["photo", "drawing"]).notNull(),
     subject: mysqlEnum(fileSubjects).notNull(),
     /** The check's key when the subject is a check. */
@@ -102,7 +120,9 @@ export const files = mysqlTable(
     thumbKey: varchar({ length: 190 }),
     originalName: varchar({ length: 200 }).notNull(),
     caption: varchar({ length: 300 }).notNull().default(""),
-    addedById: ref().notNull().references(() => people.id),
+    addedById: ref()
+      .notNull()
+      .references(() => people.id),
     addedAt: moment().notNull(),
     /** Set when taken back before the revision was decided; the row stays. */
     removedAt: moment(),
@@ -116,16 +136,22 @@ export const findings = mysqlTable(
   "findings",
   {
     id: id(),
-    unitId: ref().notNull().references(() => units.id),
+    unitId: ref()
+      .notNull()
+      .references(() => units.id),
     /** Revision on which it was raised. */
-    revisionId: ref().notNull().references(() => revisions.id),
+    revisionId: ref()
+      .notNull()
+      .references(() => revisions.id),
     /** Counts up within the unit: "Finding 3". */
     number: int({ unsigned: true }).notNull(),
     severity: mysqlEnum(severities).notNull(),
     checkKey: varchar({ length: 190 }),
     elementId: varchar({ length: 40 }),
     text: text().notNull(),
-    raisedById: ref().notNull().references(() => people.id),
+    raisedById: ref()
+      .notNull()
+      .references(() => people.id),
     raisedAt: moment().notNull(),
     closedById: ref().references(() => people.id),
     closedAt: moment(),
@@ -142,11 +168,17 @@ export const findingAnswers = mysqlTable(
   "finding_answers",
   {
     id: id(),
-    findingId: ref().notNull().references(() => findings.id),
+    findingId: ref()
+      .notNull()
+      .references(() => findings.id),
     /** The revision being reworked when it was answered. */
-    revisionId: ref().notNull().references(() => revisions.id),
+    revisionId: ref()
+      .notNull()
+      .references(() => revisions.id),
     text: text().notNull(),
-    answeredById: ref().notNull().references(() => people.id),
+    answeredById: ref()
+      .notNull()
+      .references(() => people.id),
     answeredAt: moment().notNull(),
   },
   (table) => [unique("finding_answers_round").on(table.findingId, table.revisionId)],

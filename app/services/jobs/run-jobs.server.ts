@@ -25,7 +25,10 @@ export async function runDueJobs(db: Database, now: () => Date): Promise<number>
   for (let job = await leaseOne(db, now()); job; job = await leaseOne(db, now())) {
     try {
       await runners[job.kind](db, job.subjectId, now);
-      await db.update(jobs).set({ doneAt: now(), lockedUntil: null, lastError: null }).where(eq(jobs.id, job.id));
+      await db
+        .update(jobs)
+        .set({ doneAt: now(), lockedUntil: null, lastError: null })
+        .where(eq(jobs.id, job.id));
       done++;
     } catch (error) {
       console.error(`Job ${job.id} (${job.kind}) failed and will be tried again:`, error);
@@ -49,7 +52,13 @@ function leaseOne(db: Database, now: Date) {
     const [job] = await tx
       .select()
       .from(jobs)
-      .where(and(isNull(jobs.doneAt), lte(jobs.dueAt, now), or(isNull(jobs.lockedUntil), lte(jobs.lockedUntil, now))))
+      .where(
+        and(
+          isNull(jobs.doneAt),
+          lte(jobs.dueAt, now),
+          or(isNull(jobs.lockedUntil), lte(jobs.lockedUntil, now)),
+        ),
+      )
       .orderBy(jobs.id)
       .limit(1)
       .for("update", { skipLocked: true });

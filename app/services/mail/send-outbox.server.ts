@@ -33,7 +33,10 @@ export async function sendOutbox(db: Database, now: () => Date): Promise<number>
         html: mail.html,
         messageId: `<${mail.messageKey}@mainsgate>`,
       });
-      await db.update(outbox).set({ sentAt: now(), lockedUntil: null, lastError: null }).where(eq(outbox.id, mail.id));
+      await db
+        .update(outbox)
+        .set({ sentAt: now(), lockedUntil: null, lastError: null })
+        .where(eq(outbox.id, mail.id));
       sent++;
     } catch (error) {
       const wait = Math.min(LONGEST_WAIT_MS, 5_000 * 2 ** mail.attempts);
@@ -56,7 +59,13 @@ function lease(db: Database, now: Date) {
     const due = await tx
       .select()
       .from(outbox)
-      .where(and(isNull(outbox.sentAt), lte(outbox.dueAt, now), or(isNull(outbox.lockedUntil), lte(outbox.lockedUntil, now))))
+      .where(
+        and(
+          isNull(outbox.sentAt),
+          lte(outbox.dueAt, now),
+          or(isNull(outbox.lockedUntil), lte(outbox.lockedUntil, now)),
+        ),
+      )
       .orderBy(outbox.id)
       .limit(BATCH)
       .for("update", { skipLocked: true });

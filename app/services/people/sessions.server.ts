@@ -30,7 +30,12 @@ export function newSecret(): string {
 }
 
 /** Opens a session and returns its secret, which only the cookie will know. */
-export async function openSession(db: Database, personId: number, origin: SessionOrigin, now: Date): Promise<string> {
+export async function openSession(
+  db: Database,
+  personId: number,
+  origin: SessionOrigin,
+  now: Date,
+): Promise<string> {
   const secret = newSecret();
   await db.insert(sessions).values({
     idHash: hashSecret(secret),

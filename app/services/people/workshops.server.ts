@@ -15,7 +15,11 @@ export function listWorkshops(db: Database, personId: number) {
 }
 
 /** A workshop with the roles that the person holds in it; null when there is none or they hold none. */
-export async function findWorkshop(db: Database, slug: string, personId: number): Promise<CurrentWorkshop | null> {
+export async function findWorkshop(
+  db: Database,
+  slug: string,
+  personId: number,
+): Promise<CurrentWorkshop | null> {
   const rows = await db
     .select({ workshop: workshops, role: memberships.role })
     .from(workshops)

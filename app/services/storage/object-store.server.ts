@@ -25,7 +25,12 @@ export function s3ObjectStore(client: S3Client, bucket: string): ObjectStore {
       await unavailableOnFailure(upload.done());
     },
     async putBytes(key, body, contentType) {
-      const command = new PutObjectCommand({ Bucket: bucket, Key: key, Body: body, ContentType: contentType });
+      const command = new PutObjectCommand({
+        Bucket: bucket,
+        Key: key,
+        Body: body,
+        ContentType: contentType,
+      });
       await unavailableOnFailure(client.send(command));
     },
     async get(key) {
@@ -34,7 +39,8 @@ export function s3ObjectStore(client: S3Client, bucket: string): ObjectStore {
         if (!(answer.Body instanceof Readable)) throw new Error("The object store sent no body.");
         return { body: answer.Body, bytes: answer.ContentLength };
       } catch (error) {
-        if (error instanceof S3ServiceException && error.name === "NoSuchKey") throw new NotFoundError("The file");
+        if (error instanceof S3ServiceException && error.name === "NoSuchKey")
+          throw new NotFoundError("The file");
         throw new UnavailableError("The file store", { cause: error });
       }
     },
