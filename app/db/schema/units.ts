@@ -1,5 +1,6 @@
 import { sql } from "drizzle-orm";
 import {
+  boolean,
   check,
   double,
   index,
@@ -30,6 +31,11 @@ export const units = mysqlTable(
     supplyVolts: double().notNull(),
     supplyHertz: double().notNull(),
     protectionClass: mysqlEnum(["I", "II"]).notNull(),
+    /** Null in these four: not known. */
+    cordLengthM: double(),
+    cordAreaMm2: double(),
+    handheld: boolean(),
+    altitudeM: double(),
     builderId: ref()
       .notNull()
       .references(() => people.id),
@@ -62,6 +68,10 @@ export const revisions = mysqlTable(
     number: int({ unsigned: true }).notNull(),
     /** An EnergyMap of engine/energy-map.ts; parsed by zod wherever it is read. */
     map: json().$type<unknown>().notNull(),
+    /** Counts the saves of the draft: an editor open elsewhere is told apart by it. */
+    mapEdition: int({ unsigned: true }).notNull().default(1),
+    /** The UnitFacts of engine/unit-facts.ts as submitted; null while the revision is a draft. */
+    facts: json().$type<unknown>(),
     ruleSetKey: varchar({ length: 60 }).notNull(),
     ruleSetVersion: int({ unsigned: true }).notNull(),
     createdAt: moment().notNull(),
