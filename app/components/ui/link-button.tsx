@@ -1,0 +1,30 @@
+/**
+ * A link that looks like a button: for going somewhere, never for changing something.
+ *   <LinkButton to="/units/new" variant="primary" icon={Plus}>New unit</LinkButton>
+ *   <LinkButton to={pdfUrl} reloadDocument>Download the PDF</LinkButton>
+ */
+import { Link, type LinkProps } from "react-router";
+import { buttonClass, type ButtonSize, type ButtonVariant } from "./button";
+import type { IconType } from "./icon-type";
+
+export interface LinkButtonProps extends LinkProps {
+  variant?: ButtonVariant;
+  size?: ButtonSize;
+  icon?: IconType;
+}
+
+export function LinkButton({
+  variant = "secondary",
+  size = "md",
+  icon: Icon,
+  className = "",
+  children,
+  ...rest
+}: LinkButtonProps) {
+  return (
+    <Link {...rest} className={`${buttonClass(variant, size)} ${className}`}>
+      {Icon ? <Icon aria-hidden size={size === "bench" ? 22 : 18} className="shrink-0" /> : null}
+      {children}
+    </Link>
+  );
+}
