@@ -1,0 +1,179 @@
+import type { Problem } from "./problem";
+
+/** What the engine found out about a map. Plain data: it can be stored, sent and compared. */
+
+export type StatementFamily =
+  | "isolation"
+  | "reverse"
+  | "fusing"
+  | "insulation"
+  | "protective-earth"
+  | "leakage"
+  | "stored-charge"
+  | "battery";
+export type StatementLevel = "danger" | "defect" | "caution" | "good" | "unknown";
+
+export interface Statement {
+  /** Stable for the same finding about the same things. */
+  id: string;
+  family: StatementFamily;
+  level: StatementLevel;
+  text: string;
+  elements: string[];
+  conductors: string[];
+}
+
+/** Sure from what is known, or not to be excluded because something is not known. */
+export type Certainty = "certain" | "possible";
+
+export interface LiveFrom {
+  /** Id of the source element. */
+  source: string;
+  /** Elements that the energy passes on its way here, in order, without the source. */
+  via: string[];
+  /** Reached on its line/plus pole, or only on its neutral/minus pole, or through a load. */
+  how: "direct" | "neutral" | "through-load";
+  certainty: Certainty;
+}
+
+export interface LiveConductor {
+  conductor: string;
+  from: LiveFrom[];
+}
+
+export interface PoleReport {
+  /** "L", "N", "+" or "-". */
+  pole: string;
+  /** Each switch that by itself parts this pole from everything that uses energy. */
+  brokenBy: string[];
+  /** With all switches off it is parted. `null`: not known. */
+  partedWhenAllOff: boolean | null;
+}
+
+export interface SourceIsolation {
+  source: string;
+  poles: PoleReport[];
+  /** Switches that part all poles of this source together in one body. */
+  allPoleSwitches: string[];
+}
+
+export interface SwitchReport {
+  element: string;
+  poles: { pole: number; circuits: ("mains" | "elv" | "earth")[] }[];
+  mixesMainsAndElv: boolean;
+  /** A pole carries the protective conductor. */
+  switchesEarth: boolean;
+}
+
+export interface SwitchCombination {
+  /** State of each switch by id. */
+  states: Record<string, "on" | "off">;
+  /** Conductors that carry a live potential, by source. */
+  live: Record<string, string[]>;
+}
+
+export interface IsolationResult {
+  sources: SourceIsolation[];
+  switches: SwitchReport[];
+  /** With every switch off. */
+  whenOff: LiveConductor[];
+  /** Worked out one by one while there are at most eight switches; else only all off, all on and each alone. */
+  combinations: SwitchCombination[];
+  combinationsComplete: boolean;
+}
+
+export interface BackwardPath {
+  id: string;
+  /** The source that drives it. */
+  from: string;
+  /** The element it reaches: another source or the pins of an inlet. */
+  to: string;
+  /** Elements passed, in order, without the ends. */
+  via: string[];
+  conductors: string[];
+  /** `null` in the healthy unit; else the one part that has failed short. */
+  failed: string | null;
+  certainty: Certainty;
+  /** Parts along the way whose data would be needed to exclude it. */
+  unknownParts: string[];
+}
+
+export interface FalseIndication {
+  indicator: string;
+  meaning: string;
+  /** The source that lights it although what it means is absent. */
+  litBy: string;
+  failed: string | null;
+  certainty: Certainty;
+}
+
+export interface ReverseResult {
+  paths: BackwardPath[];
+  falseIndications: FalseIndication[];
+  /** The parts that were each taken as failed short. */
+  blockingParts: string[];
+}
+
+export type Verdict3 = "pass" | "fail" | "unknown";
+
+export interface ConductorProtection {
+  conductor: string;
+  source: string;
+  /** Largest current that can flow on without any device opening, A; `null`: nothing limits it or not known. */
+  limitAmps: number | null;
+  /** The devices or current limits that set it. */
+  limitedBy: string[];
+  /** What the conductor may carry, A; `null`: not known. */
+  ampacityAmps: number | null;
+  verdict: Verdict3;
+  text: string;
+}
+
+export interface DeviceReport {
+  device: string;
+  source: string;
+  loadAmps: number | null;
+  ratingAmps: number | null;
+  /** Smallest current that the conductors it protects may carry, A. */
+  smallestAmpacityAmps: number | null;
+  /** The next standard rating that would suit, A; `null`: none or not known. */
+  proposedAmps: number | null;
+  prospectiveAmps: number | null;
+  breakingAmps: number | null;
+  loadVerdict: Verdict3;
+  breakingVerdict: Verdict3;
+  voltageVerdict: Verdict3;
+  texts: string[];
+}
+
+export interface FusingResult {
+  conductors: ConductorProtection[];
+  devices: DeviceReport[];
+}
+
+export interface InsulationBarrier {
+  id: string;
+  /** Between which two circuits, in words. */
+  between: string;
+  elements: string[];
+  grade: "basic" | "reinforced";
+  clearanceMm: number;
+  creepageMm: number;
+  minimumMegohms: number;
+  testVolts: number;
+  verdict: Verdict3;
+  text: string;
+}
+
+export interface InsulationResult {
+  barriers: InsulationBarrier[];
+}
+
+export interface Analysis {
+  problems: Problem[];
+  isolation: IsolationResult;
+  reverse: ReverseResult;
+  fusing: FusingResult;
+  insulation: InsulationResult;
+  statements: Statement[];
+}
