@@ -14,7 +14,7 @@ export interface CurrentWorkshop {
   timeZone: string;
   isDemo: boolean;
   ruleSetKey: string;
-  ruleSetVersion: number;
+  ruleSetVersion: string;
   accuracyPolicy: "rect" | "maker-k2";
   recheckMonths: number;
   /** Roles that the signed-in person holds here; never empty. */

@@ -30,7 +30,7 @@ export const workshops = mysqlTable("workshops", {
   timeZone: varchar({ length: 60 }).notNull(),
   isDemo: boolean().notNull(),
   ruleSetKey: varchar({ length: 60 }).notNull(),
-  ruleSetVersion: int({ unsigned: true }).notNull(),
+  ruleSetVersion: varchar({ length: 20 }).notNull(),
   /** How an instrument's accuracy becomes an uncertainty: see engine/verdict.ts. */
   accuracyPolicy: mysqlEnum(["rect", "maker-k2"]).notNull(),
   /** Months until the recheck date that the signing page proposes. */

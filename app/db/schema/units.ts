@@ -73,7 +73,7 @@ export const revisions = mysqlTable(
     /** The UnitFacts of engine/unit-facts.ts as submitted; null while the revision is a draft. */
     facts: json().$type<unknown>(),
     ruleSetKey: varchar({ length: 60 }).notNull(),
-    ruleSetVersion: int({ unsigned: true }).notNull(),
+    ruleSetVersion: varchar({ length: 20 }).notNull(),
     createdAt: moment().notNull(),
     submittedAt: moment(),
   },
