@@ -36,6 +36,8 @@ CREATE TABLE `observations` (
 	`bound` enum('over','under'),
 	`unit` varchar(20),
 	`instrument_id` int unsigned,
+	`accuracy` json,
+	`calibration_due` date,
 	`conditions` varchar(500) NOT NULL DEFAULT '',
 	`conforms` enum('yes','no'),
 	`reason` varchar(1000),
@@ -46,7 +48,8 @@ CREATE TABLE `observations` (
 	`note` text,
 	CONSTRAINT `observations_id` PRIMARY KEY(`id`),
 	CONSTRAINT `observations_corrected_once` UNIQUE(`corrects_id`),
-	CONSTRAINT `observations_shape` CHECK((kind <> 'measured' or (value is not null and unit is not null and instrument_id is not null))
+	CONSTRAINT `observations_shape` CHECK((kind <> 'measured' or (value is not null and unit is not null and instrument_id is not null
+          and calibration_due is not null))
         and (kind <> 'examined' or conforms is not null)
         and (kind not in ('not-applicable', 'not-possible') or reason is not null)
         and (kind <> 'carried-over' or carried_from_id is not null)

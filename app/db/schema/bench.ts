@@ -5,6 +5,7 @@ import {
   double,
   foreignKey,
   index,
+  json,
   mysqlEnum,
   mysqlTable,
   text,
@@ -88,6 +89,10 @@ export const observations = mysqlTable(
     bound: mysqlEnum(["over", "under"]),
     unit: varchar({ length: 20 }),
     instrumentId: ref().references(() => instruments.id),
+    /** The instrument's accuracy at that value (in `unit`) as it was stated on the day; null outside every range. */
+    accuracy: json().$type<unknown>(),
+    /** Until when the instrument was in calibration on the day of the reading. */
+    calibrationDue: date({ mode: "string" }),
     /** How it was measured: test voltage, polarity, switch position. */
     conditions: varchar({ length: 500 }).notNull().default(""),
     /** The answer, for "examined". */
@@ -115,7 +120,8 @@ export const observations = mysqlTable(
     unique("observations_corrected_once").on(table.correctsId),
     check(
       "observations_shape",
-      sql`(kind <> 'measured' or (value is not null and unit is not null and instrument_id is not null))
+      sql`(kind <> 'measured' or (value is not null and unit is not null and instrument_id is not null
+          and calibration_due is not null))
         and (kind <> 'examined' or conforms is not null)
         and (kind not in ('not-applicable', 'not-possible') or reason is not null)
         and (kind <> 'carried-over' or carried_from_id is not null)
