@@ -50,7 +50,8 @@ export async function findUnit(
 
 /**
  * Does something to one unit: locks its row, asks the permission table again under the lock, does the work, raises
- * the version and appends the audit entry, all in one transaction.
+ * the version and appends the audit entry, all in one transaction. `act` names the entry where the action's name says
+ * too little; null leaves it out, for the saving of a draft while it is typed (its submission pins what counts).
  *
  * @throws NotFoundError, ForbiddenError, ConflictError when the unit changed since the form was made
  */
@@ -58,13 +59,14 @@ export function actOnUnit<T>(
   context: ServiceContext,
   action: Action,
   input: UnitActInput,
-  work: (act: Act) => Promise<{ result: T; detail?: Record<string, unknown>; act?: string }>,
+  work: (act: Act) => Promise<{ result: T; detail?: Record<string, unknown>; act?: string | null }>,
 ): Promise<T> {
   return inTransaction(context.db, async (tx) => {
     const { unit, at } = await lockUnit(context, tx, input);
     authoriseUnder(context, action, unit);
     const { result, detail, act } = await work({ tx, unit, at });
     await touch(tx, unit, at, {});
+    if (act === null) return result;
     await appendEntry(tx, {
       workshopId: context.workshop.id,
       at,
