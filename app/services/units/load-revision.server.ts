@@ -36,7 +36,7 @@ export function factsOf(unit: UnitRow): UnitFacts {
 }
 
 /** The rule set behind a key and a version of the database. @throws Error when this build doesn't hold it */
-export function requireRuleSet(key: string, version: number): RuleSet {
+export function requireRuleSet(key: string, version: string): RuleSet {
   const ruleSet = findRuleSet(key, version);
   if (!ruleSet) throw new Error(`This build holds no rule set “${key}”, version ${version}.`);
   return ruleSet;
