@@ -1,13 +1,23 @@
-import { data } from "react-router";
 import { ServiceError, ThrottledError } from "~/services/errors";
 
 /**
  * The answer that a page throws for a typed error of a service, so that the error page can say what happened.
  * Anything else is rethrown as it is: it is a defect, and the server answers 500.
  */
-export function answerTo(error: unknown) {
+export function answerTo(error: unknown): Response {
   if (!(error instanceof ServiceError)) throw error;
-  return data(error.message, { status: error.status, headers: retryHeader(error) });
+  return refusal(error.status, error.message, retryHeader(error));
+}
+
+/**
+ * A refusal in a sentence. A plain response, so that it also reaches the API's middleware as it is: a thrown `data()`
+ * loses its words in a resource route.
+ */
+export function refusal(status: number, sentence: string, headers: Record<string, string> = {}): Response {
+  return new Response(sentence, {
+    status,
+    headers: { "Content-Type": "text/plain; charset=utf-8", "Cache-Control": "no-store", ...headers },
+  });
 }
 
 /** The same for the API: Problem Details (RFC 9457). */
@@ -47,6 +57,6 @@ const titles: Record<number, string> = {
   503: "Not available",
 };
 
-function retryHeader(error: ServiceError): HeadersInit {
+function retryHeader(error: ServiceError): Record<string, string> {
   return error instanceof ThrottledError ? { "Retry-After": String(Math.ceil(error.retryAfterSeconds)) } : {};
 }

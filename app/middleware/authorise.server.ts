@@ -1,9 +1,9 @@
-import { data, type RouterContextProvider } from "react-router";
+import type { RouterContextProvider } from "react-router";
 import type { ServiceContext } from "~/services/context.server";
 import { NotFoundError } from "~/services/errors";
 import { findUnit, type StandingUnit } from "~/services/unit-act.server";
 import { type Action, decide } from "~/workflow/permissions";
-import { answerTo } from "./answers.server";
+import { answerTo, refusal } from "./answers.server";
 import { serviceContext } from "./workshop.server";
 
 /**
@@ -15,7 +15,7 @@ import { serviceContext } from "./workshop.server";
 export function authorise(context: Readonly<RouterContextProvider>, action: Action): ServiceContext {
   const services = serviceContext(context);
   const decision = decide(action, { id: services.person.id, roles: services.workshop.roles });
-  if (!decision.allowed) throw data(decision.reason, { status: 403 });
+  if (!decision.allowed) throw refusal(403, decision.reason);
   return services;
 }
 
@@ -38,6 +38,6 @@ export async function authoriseUnit(
       : null;
   if (!unit) throw answerTo(new NotFoundError("The unit"));
   const decision = decide(action, { id: services.person.id, roles: services.workshop.roles }, unit);
-  if (!decision.allowed) throw data(decision.reason, { status: 403 });
+  if (!decision.allowed) throw refusal(403, decision.reason);
   return { services, unit };
 }

@@ -1,10 +1,13 @@
-import { data, type MiddlewareFunction, type RouterContextProvider } from "react-router";
+import type { MiddlewareFunction, RouterContextProvider } from "react-router";
 import { personContext, workshopContext } from "~/context";
 import { environment } from "~/environment.server";
 import type { ServiceContext } from "~/services/context.server";
 import { database } from "~/services/database.server";
 import { findWorkshop } from "~/services/people/workshops.server";
+import { problemResponse, refusal } from "./answers.server";
 import { requirePerson } from "./session.server";
+
+const NO_SUCH_WORKSHOP = "There is no such workshop among yours.";
 
 /**
  * Stands on every route with a `:workshop` parameter: somebody must be signed in and belong to that workshop.
@@ -13,15 +16,31 @@ import { requirePerson } from "./session.server";
 export const workshopMiddleware: MiddlewareFunction<Response> = async ({ url, params, context }, next) => {
   const person = requirePerson(context, url);
   const workshop = params.workshop ? await findWorkshop(database(), params.workshop, person.id) : null;
-  if (!workshop) throw data("There is no such workshop among yours.", { status: 404 });
+  if (!workshop) throw refusal(404, NO_SUCH_WORKSHOP);
   context.set(workshopContext, workshop);
   return next();
+};
+
+/**
+ * The same for the API, where nobody can be led to the sign-in page. Whatever a route refuses in plain words leaves
+ * as Problem Details.
+ */
+export const apiWorkshopMiddleware: MiddlewareFunction<Response> = async ({ params, context }, next) => {
+  const person = context.get(personContext);
+  if (!person) return problemResponse(401, "Sign in first.");
+  const workshop = params.workshop ? await findWorkshop(database(), params.workshop, person.id) : null;
+  if (!workshop) return problemResponse(404, NO_SUCH_WORKSHOP);
+  context.set(workshopContext, workshop);
+  const response = await next();
+  const plain = response.headers.get("Content-Type")?.startsWith("text/plain") ?? false;
+  if (response.status < 400 || !plain) return response;
+  return problemResponse(response.status, await response.text());
 };
 
 /** What services are given, for the person and workshop of this request. */
 export function serviceContext(context: Readonly<RouterContextProvider>): ServiceContext {
   const person = context.get(personContext);
-  if (!person) throw data("Nobody is signed in.", { status: 401 });
+  if (!person) throw refusal(401, "Nobody is signed in.");
   return {
     db: database(),
     person,
