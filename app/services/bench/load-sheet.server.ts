@@ -1,0 +1,149 @@
+import type { Reader } from "~/db/client.server";
+import { analyse } from "~/engine/analyse";
+import {
+  type BenchAnswer,
+  isDecided,
+  judgeBenchReading,
+  type LineVerdict,
+  lineVerdict,
+} from "~/engine/bench-answer";
+import type { BenchCheck } from "~/engine/bench-check";
+import { deriveBenchSheet } from "~/engine/bench-sheet";
+import type { Judgement, UncertaintyPolicy } from "~/engine/verdict";
+import type { ServiceContext } from "~/services/context.server";
+import { type FileView, listFiles } from "~/services/files/list-files.server";
+import type { UnitRow } from "~/services/unit-act.server";
+import { loadRevision } from "~/services/units/load-revision.server";
+import { listFindings } from "./findings.server";
+import { listObservations } from "./observations.server";
+import type { ObservationView, Sheet, SheetLine, SheetProgress } from "./sheet-view";
+
+/**
+ * The bench sheet of a unit: the checks that its revision calls for, with readings, verdicts, photos and findings. The
+ * verdicts are computed here, every time, from what was stored.
+ *
+ * @param revisionNumber the current revision when left out
+ * @param db an open transaction, where the sheet must be read under the unit's lock
+ */
+export async function loadSheet(
+  services: Pick<ServiceContext, "db" | "workshop">,
+  unit: UnitRow,
+  revisionNumber?: number,
+  db: Reader = services.db,
+): Promise<Sheet> {
+  const revision = await loadRevision(db, unit, revisionNumber);
+  const analysis = analyse(revision.map, revision.ruleSet, revision.facts);
+  const checks = deriveBenchSheet(revision.map, revision.ruleSet, revision.facts, analysis);
+  const observations = (await listObservations(db, unit.id)).filter(
+    (each) => each.revisionId === revision.id,
+  );
+  const findings = await listFindings(db, unit.id);
+  const photos = await listFiles(db, unit.id, { subject: "check" });
+
+  const lines = checks.map((check): SheetLine => {
+    const history = observations.filter((each) => each.checkKey === check.key).reverse();
+    const observation = history[0] ?? null;
+    const ownPhotos = photos.filter(
+      (photo) => photo.checkKey === check.key && photo.revision <= revision.number,
+    );
+    return {
+      check,
+      ...judgeLine(check, observation, services.workshop.accuracyPolicy),
+      observation,
+      history,
+      photos: ownPhotos,
+      photoMissing: isPhotoMissing(check, observation, ownPhotos, revision.number),
+      findings: findings.filter((finding) => finding.checkKey === check.key),
+    };
+  });
+  return { revision, analysis, lines, progress: progressOf(lines) };
+}
+
+/** The verdict of one check from its latest observation: the reading judged, then combined with the engine's answer. */
+export function judgeLine(
+  check: BenchCheck,
+  observation: ObservationView | null,
+  policy: UncertaintyPolicy,
+): { verdict: LineVerdict; because: string; judged: Judgement | null } {
+  const computed = check.computed?.verdict ?? null;
+  const answer = observation && answerOf(check, observation, policy);
+  return {
+    ...lineVerdict(computed, answer),
+    judged: answer?.kind === "measured" ? answer.judgement : null,
+  };
+}
+
+/** What an observation answers to the check as it is asked now; null when it answers another kind of question. */
+function answerOf(
+  check: BenchCheck,
+  observation: ObservationView,
+  policy: UncertaintyPolicy,
+): BenchAnswer | null {
+  switch (observation.kind) {
+    case "not-applicable":
+    case "not-possible":
+      return { kind: observation.kind };
+    case "examined":
+      if (check.asks.kind !== "examination" || observation.conforms === null) return null;
+      return { kind: "examined", conforms: observation.conforms };
+    case "measured": {
+      const { value, unit, bound, accuracy } = observation;
+      if (check.asks.kind !== "reading" || value === null || unit === null) return null;
+      return {
+        kind: "measured",
+        judgement: judgeBenchReading(check.asks.limit, { value, unit, bound }, accuracy, policy),
+      };
+    }
+  }
+}
+
+/** A step that doesn't apply or can't be done needs no photo; a carried-over one may lean on the photo of its day. */
+function isPhotoMissing(
+  check: BenchCheck,
+  observation: ObservationView | null,
+  photos: readonly FileView[],
+  revision: number,
+): boolean {
+  if (check.photo !== "required") return false;
+  if (observation?.kind === "not-applicable" || observation?.kind === "not-possible") return false;
+  const since = observation?.carried ? observation.revision : revision;
+  return !photos.some((photo) => photo.revision >= since);
+}
+
+function progressOf(lines: readonly SheetLine[]): SheetProgress {
+  const count = (verdict: LineVerdict) => lines.filter((line) => line.verdict === verdict).length;
+  return {
+    total: lines.length,
+    decided: lines.filter((line) => isDecided(line.verdict)).length,
+    byVerdict: {
+      pass: count("pass"),
+      fail: count("fail"),
+      undecided: count("undecided"),
+      open: count("open"),
+      "not-applicable": count("not-applicable"),
+      "not-possible": count("not-possible"),
+    },
+    photosMissing: lines.filter((line) => line.photoMissing).length,
+  };
+}
+
+/** What keeps the sheet from being finished or signed, as sentences for the guards of the transition table. */
+export function sheetGuards(sheet: Pick<Sheet, "lines">): {
+  "checks-decided": string[];
+  "photos-present": string[];
+} {
+  return {
+    "checks-decided":
+      sheet.lines.length === 0
+        ? ["The sheet has no check at all: the map calls for none, so nothing can be decided."]
+        : sheet.lines
+            .filter((line) => !isDecided(line.verdict))
+            .map(
+              (line) =>
+                `${line.check.title}: ${line.verdict === "open" ? "not done yet" : "undecided"}. ${line.because}`,
+            ),
+    "photos-present": sheet.lines
+      .filter((line) => line.photoMissing)
+      .map((line) => `${line.check.title}: the required photo is missing.`),
+  };
+}
