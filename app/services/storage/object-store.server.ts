@@ -1,4 +1,4 @@
-import { GetObjectCommand, PutObjectCommand, S3Client, S3ServiceException } from "@aws-sdk/client-s3";
+import { DeleteObjectCommand, GetObjectCommand, PutObjectCommand, S3Client, S3ServiceException } from "@aws-sdk/client-s3";
 import { Upload } from "@aws-sdk/lib-storage";
 import { Readable } from "node:stream";
 import { environment } from "~/environment.server";
@@ -12,6 +12,8 @@ export interface ObjectStore {
   putBytes(key: string, body: Uint8Array, contentType: string): Promise<void>;
   /** Opens an object for reading. @throws NotFoundError, UnavailableError */
   get(key: string): Promise<{ body: Readable; bytes: number | undefined }>;
+  /** Removes what was stored for an act that then did not happen; no error if it isn't there. @throws UnavailableError */
+  remove(key: string): Promise<void>;
 }
 
 /** An {@link ObjectStore} on any service that speaks S3. */
@@ -43,6 +45,9 @@ export function s3ObjectStore(client: S3Client, bucket: string): ObjectStore {
           throw new NotFoundError("The file");
         throw new UnavailableError("The file store", { cause: error });
       }
+    },
+    async remove(key) {
+      await unavailableOnFailure(client.send(new DeleteObjectCommand({ Bucket: bucket, Key: key })));
     },
   };
 }
