@@ -40,11 +40,17 @@ export class InvalidInputError extends ServiceError {
   }
 }
 
+/** Who they say they are could not be shown: wrong mail or password, or a link that no longer counts. */
+export class AuthenticationError extends ServiceError {
+  readonly status = 401;
+}
+
 /** Too many failed tries; come back after `retryAfterSeconds`. */
 export class ThrottledError extends ServiceError {
   readonly status = 429;
   constructor(readonly retryAfterSeconds: number) {
-    super(`Too many failed tries. Wait ${Math.ceil(retryAfterSeconds / 60)} minutes and try again.`);
+    const minutes = Math.ceil(retryAfterSeconds / 60);
+    super(`Too many failed tries. Wait ${minutes} ${minutes === 1 ? "minute" : "minutes"} and try again.`);
   }
 }
 
