@@ -64,6 +64,7 @@ CREATE TABLE `decisions` (
 	`signer_id` int unsigned NOT NULL,
 	`licence_id` int unsigned NOT NULL,
 	`statement` text NOT NULL,
+	`departures` text,
 	`conditions` json,
 	`recheck_on` date,
 	`signature_method` enum('drawn','typed') NOT NULL,

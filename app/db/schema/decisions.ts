@@ -49,6 +49,8 @@ export const decisions = mysqlTable(
       .references(() => licences.id),
     /** What the signer states by signing, or why they refuse. */
     statement: text().notNull(),
+    /** Why it may be used although checks fail; null where none fails. */
+    departures: text(),
     conditions: json().$type<SigningConditions>(),
     recheckOn: date({ mode: "string" }),
     signatureMethod: mysqlEnum(["drawn", "typed"]).notNull(),
