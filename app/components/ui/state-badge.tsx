@@ -1,9 +1,11 @@
 /**
- * Where a unit stands in its life.
- *   <StateBadge state={unit.state} />   <StateBadge state="signed" validity="lapsed" />
- * `validity` is computed from dates; a signed unit that has lapsed is never shown as plainly signed.
+ * Where a unit stands in its life, and for a signed one whether the signature still holds.
+ *   <StateBadge state={unit.state} validity={validity(unit.state, recheckOn, today).kind} />
+ * Green is shown only for a signature that was computed to be in force: without `validity` a signed unit's badge is
+ * neutral, and a lapsed one is never shown as plainly signed.
  */
 import {
+  Ban,
   CalendarClock,
   CalendarX2,
   ClipboardList,
@@ -14,65 +16,51 @@ import {
   Layers,
   PenLine,
   Undo2,
-  Ban,
 } from "lucide-react";
+import { stateTitles, type UnitState, type Validity } from "~/workflow/states";
 import { Badge, type BadgeTone } from "./badge";
 import type { IconType } from "./icon-type";
 
-export type UnitStateName =
-  | "draft"
-  | "submitted"
-  | "on_bench"
-  | "awaiting_signature"
-  | "sent_back"
-  | "signed"
-  | "refused"
-  | "withdrawn"
-  | "superseded";
+interface Look {
+  word: string;
+  tone: BadgeTone;
+  icon: IconType;
+}
 
-export type Validity = "valid" | "recheck_due" | "lapsed";
-
-const states: Record<UnitStateName, { word: string; tone: BadgeTone; icon: IconType }> = {
-  draft: { word: "Draft", tone: "outline", icon: FilePen },
-  submitted: { word: "Submitted", tone: "advice", icon: ClipboardList },
-  on_bench: { word: "On the bench", tone: "copper", icon: Gauge },
-  awaiting_signature: { word: "Awaiting signature", tone: "copper", icon: PenLine },
-  sent_back: { word: "Sent back", tone: "defect", icon: Undo2 },
-  signed: { word: "Signed", tone: "pass", icon: FileCheck2 },
-  refused: { word: "Refused", tone: "fail", icon: FileX2 },
-  withdrawn: { word: "Withdrawn", tone: "fail", icon: Ban },
-  superseded: { word: "Superseded", tone: "idle", icon: Layers },
+const states: Record<UnitState, Omit<Look, "word">> = {
+  draft: { tone: "outline", icon: FilePen },
+  submitted: { tone: "advice", icon: ClipboardList },
+  on_bench: { tone: "copper", icon: Gauge },
+  awaiting_signature: { tone: "copper", icon: PenLine },
+  sent_back: { tone: "defect", icon: Undo2 },
+  signed: { tone: "outline", icon: FileCheck2 },
+  refused: { tone: "fail", icon: FileX2 },
+  withdrawn: { tone: "fail", icon: Ban },
+  superseded: { tone: "idle", icon: Layers },
 };
 
-/** The words for a state, for filters, titles and mail. */
-export function stateWord(state: UnitStateName): string {
-  return states[state].word;
+const signed: Record<Validity["kind"], Look> = {
+  "may-be-used": { word: "Signed", tone: "pass", icon: FileCheck2 },
+  "recheck-due": { word: "Signed, recheck due", tone: "undecided", icon: CalendarClock },
+  lapsed: { word: "Lapsed", tone: "fail", icon: CalendarX2 },
+  "must-not-be-used": { word: "Signed, not in force", tone: "fail", icon: CalendarX2 },
+};
+
+function lookOf(state: UnitState, validity: Validity["kind"] | undefined): Look {
+  if (state === "signed" && validity !== undefined) return signed[validity];
+  return { word: stateTitles[state], ...states[state] };
 }
 
 export function StateBadge({
   state,
-  validity = "valid",
+  validity,
   size,
 }: {
-  state: UnitStateName;
-  validity?: Validity;
+  state: UnitState;
+  validity?: Validity["kind"];
   size?: "md" | "bench";
 }) {
-  if (state === "signed" && validity === "lapsed") {
-    return (
-      <Badge tone="fail" icon={CalendarX2} size={size}>
-        Lapsed
-      </Badge>
-    );
-  }
-  if (state === "signed" && validity === "recheck_due") {
-    return (
-      <Badge tone="undecided" icon={CalendarClock} size={size}>
-        Signed, recheck due
-      </Badge>
-    );
-  }
-  const { word, tone, icon } = states[state];
+  const { word, tone, icon } = lookOf(state, validity);
   return (
     <Badge tone={tone} icon={icon} size={size}>
       {word}

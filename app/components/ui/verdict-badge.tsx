@@ -12,8 +12,8 @@ const words: Record<Verdict, { word: string; tone: BadgeTone }> = {
   fail: { word: "Fail", tone: "fail" },
   undecided: { word: "Undecided", tone: "undecided" },
   unknown: { word: "Unknown", tone: "unknown" },
-  not_applicable: { word: "Not applicable", tone: "idle" },
-  not_possible: { word: "Not possible", tone: "idle" },
+  "not-applicable": { word: "Not applicable", tone: "idle" },
+  "not-possible": { word: "Not possible", tone: "idle" },
 };
 
 /** The word for a verdict, for titles, e-mails and exports. */

@@ -5,7 +5,7 @@
  */
 import type { SVGProps } from "react";
 
-export type Verdict = "pass" | "fail" | "undecided" | "unknown" | "not_applicable" | "not_possible";
+export type Verdict = "pass" | "fail" | "undecided" | "unknown" | "not-applicable" | "not-possible";
 
 export function VerdictIcon({
   verdict,
@@ -65,14 +65,14 @@ export function VerdictShape({ verdict }: { verdict: Verdict }) {
           <path d="M12 17.1v.1" strokeWidth="2.6" />
         </>
       );
-    case "not_applicable":
+    case "not-applicable":
       return (
         <>
           <rect x="3" y="3" width="18" height="18" rx="1" />
           <path d="M8 12h8" />
         </>
       );
-    case "not_possible":
+    case "not-possible":
       return (
         <>
           <circle cx="12" cy="12" r="9.5" />
