@@ -1,0 +1,70 @@
+import { spawn } from "node:child_process";
+import { createHash } from "node:crypto";
+import { existsSync, readdirSync, readFileSync, writeFileSync } from "node:fs";
+import { join } from "node:path";
+import { SetupError } from "./steps.mjs";
+
+/** What a build is made from. */
+const SOURCES = [
+  "app",
+  "public",
+  "package-lock.json",
+  "react-router.config.ts",
+  "tsconfig.json",
+  "vite.config.ts",
+];
+
+/** Whether build/ was made from the files as they are now. */
+export function buildIsCurrent(root: string): boolean {
+  const stamp = stampFile(root);
+  return existsSync(stamp) && readFileSync(stamp, "utf8") === sourceHash(root);
+}
+
+/** Builds client and server for production. The stamp is written last, so that a broken build is never current. */
+export async function buildProduct(root: string): Promise<void> {
+  const hash = sourceHash(root);
+  const output = await runToEnd(join(root, "node_modules/.bin/react-router"), ["build"], root);
+  if (output.failed) throw new SetupError(`The build failed:\n${output.text.slice(-6000)}`);
+  writeFileSync(stampFile(root), hash);
+}
+
+function stampFile(root: string): string {
+  return join(root, "build/made-from");
+}
+
+/** A hash over the content of all sources: times of files tell little after a checkout. */
+function sourceHash(root: string): string {
+  const hash = createHash("sha256");
+  for (const source of SOURCES) {
+    for (const file of filesBelow(root, source)) {
+      hash
+        .update(`${file}\0`)
+        .update(readFileSync(join(root, file)))
+        .update("\0");
+    }
+  }
+  return hash.digest("hex");
+}
+
+function filesBelow(root: string, path: string): string[] {
+  if (!existsSync(join(root, path))) return [];
+  const entries = path.includes(".")
+    ? []
+    : readdirSync(join(root, path), { recursive: true, withFileTypes: true });
+  if (entries.length === 0) return path.includes(".") ? [path] : [];
+  return entries
+    .filter((entry) => entry.isFile() && !/\.test\.tsx?$/.test(entry.name))
+    .map((entry) => join(entry.parentPath, entry.name).slice(root.length + 1))
+    .sort();
+}
+
+function runToEnd(command: string, args: string[], cwd: string): Promise<{ failed: boolean; text: string }> {
+  return new Promise((resolve, reject) => {
+    const child = spawn(command, args, { cwd, env: { ...process.env, NODE_ENV: "production" } });
+    let text = "";
+    child.stdout.on("data", (chunk) => (text += chunk));
+    child.stderr.on("data", (chunk) => (text += chunk));
+    child.once("error", reject);
+    child.once("close", (code) => resolve({ failed: code !== 0, text }));
+  });
+}

@@ -1,0 +1,7 @@
+// Puts the demo workshop into the database that the environment names. A process of its own, because the services
+// that it calls read the environment once.
+import { seedDemo } from "./seed";
+
+await seedDemo();
+process.send?.({ ready: true });
+process.exit(0);
