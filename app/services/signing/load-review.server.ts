@@ -1,0 +1,81 @@
+import { and, asc, desc, eq } from "drizzle-orm";
+import { type Reader, tables } from "~/db/client.server";
+import { listFindings } from "~/services/bench/findings.server";
+import { loadSheet } from "~/services/bench/load-sheet.server";
+import type { FindingView, Sheet } from "~/services/bench/sheet-view";
+import type { ServiceContext } from "~/services/context.server";
+import { type FileView, listFiles } from "~/services/files/list-files.server";
+import type { StandingUnit } from "~/services/unit-act.server";
+import { listRevisions, type RevisionView } from "~/services/units/load-revision.server";
+import type { LicenceRow } from "./assess-licences";
+
+const { benchTurns, licences, people, revisions } = tables;
+
+export interface BenchTurnView {
+  inspector: string;
+  revision: number;
+  takenAt: Date;
+  endedAt: Date | null;
+}
+
+/** Everything that a decision on a unit rests on: what the review page shows, the guards weigh and the record holds. */
+export interface Review {
+  unit: StandingUnit;
+  builder: string;
+  sheet: Sheet;
+  findings: FindingView[];
+  files: FileView[];
+  revisions: RevisionView[];
+  turns: BenchTurnView[];
+  /** Of the person who looks: theirs alone can carry a signature. */
+  licences: LicenceRow[];
+}
+
+/**
+ * Reads a unit's review for the person of `services`.
+ *
+ * @param db an open transaction, where it must be read under the unit's lock
+ */
+export async function loadReview(
+  services: ServiceContext,
+  unit: StandingUnit,
+  db: Reader = services.db,
+): Promise<Review> {
+  const [builder] = await db.select({ name: people.name }).from(people).where(eq(people.id, unit.builderId));
+  return {
+    unit,
+    builder: builder?.name ?? "",
+    sheet: await loadSheet(services, unit, undefined, db),
+    findings: await listFindings(db, unit.id),
+    files: await listFiles(db, unit.id),
+    revisions: await listRevisions(db, unit.id),
+    turns: await listTurns(db, unit.id),
+    licences: await ownLicences(db, services.workshop.id, services.person.id),
+  };
+}
+
+/** Who had the unit on the bench and when, the earliest first. */
+export function listTurns(db: Reader, unitId: number): Promise<BenchTurnView[]> {
+  return db
+    .select({
+      inspector: people.name,
+      revision: revisions.number,
+      takenAt: benchTurns.takenAt,
+      endedAt: benchTurns.endedAt,
+    })
+    .from(benchTurns)
+    .innerJoin(people, eq(people.id, benchTurns.inspectorId))
+    .innerJoin(revisions, eq(revisions.id, benchTurns.revisionId))
+    .where(eq(benchTurns.unitId, unitId))
+    .orderBy(asc(benchTurns.id));
+}
+
+/** A person's licences in a workshop, the one that lasts longest first; locked against a revocation meanwhile. */
+function ownLicences(db: Reader, workshopId: number, personId: number): Promise<LicenceRow[]> {
+  return db
+    .select()
+    .from(licences)
+    .where(and(eq(licences.workshopId, workshopId), eq(licences.personId, personId)))
+    .orderBy(desc(licences.validTo), desc(licences.id))
+    .for("share");
+}
