@@ -343,6 +343,7 @@ CREATE TABLE `units` (
 	`version` int unsigned NOT NULL,
 	`created_at` datetime(3) NOT NULL,
 	`changed_at` datetime(3) NOT NULL,
+	`discarded_at` datetime(3),
 	CONSTRAINT `units_id` PRIMARY KEY(`id`),
 	CONSTRAINT `units_number` UNIQUE(`workshop_id`,`number`),
 	CONSTRAINT `units_supply` CHECK(supply_volts > 0 and supply_hertz >= 0)

@@ -1,4 +1,4 @@
-import { and, eq, sql } from "drizzle-orm";
+import { and, eq, isNull, sql } from "drizzle-orm";
 import { inTransaction, type Reader, tables, type Transaction } from "~/db/client.server";
 import { appendEntry } from "~/services/audit/append-entry.server";
 import type { ServiceContext } from "~/services/context.server";
@@ -28,7 +28,7 @@ export interface Act {
   at: Date;
 }
 
-/** Reads a unit of this workshop with everybody who inspected it; null when there is none. */
+/** Reads a unit of this workshop with everybody who inspected it; null when there is none, or it was discarded. */
 export async function findUnit(
   tx: Reader,
   workshopId: number,
@@ -38,7 +38,7 @@ export async function findUnit(
   const query = tx
     .select()
     .from(units)
-    .where(and(eq(units.workshopId, workshopId), eq(units.number, unitNumber)));
+    .where(and(eq(units.workshopId, workshopId), eq(units.number, unitNumber), isNull(units.discardedAt)));
   const [unit] = lock === "update" ? await query.for("update") : await query;
   if (!unit) return null;
   const turns = await tx

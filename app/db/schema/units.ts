@@ -48,6 +48,8 @@ export const units = mysqlTable(
     version: int({ unsigned: true }).notNull(),
     createdAt: moment().notNull(),
     changedAt: moment().notNull(),
+    /** Set when a draft that was never submitted is thrown away; the trail keeps its row. */
+    discardedAt: moment(),
   },
   (table) => [
     unique("units_number").on(table.workshopId, table.number),
