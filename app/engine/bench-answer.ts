@@ -128,3 +128,15 @@ function benchSays(answer: Extract<BenchAnswer, { kind: "measured" } | { kind: "
     ? { measured: "pass", bench: "It was examined and conforms." }
     : { measured: "fail", bench: "It was examined and does not conform." };
 }
+
+/**
+ * Why a number can't be a reading in that unit; null when it can. Sizes are written without a sign: a negative value
+ * would slip under every "at most". Only temperatures go below nought.
+ */
+export function readingObjection(value: number, unit: string): string | null {
+  if (!Number.isFinite(value)) return "Write the reading as a number.";
+  if (value < 0 && unit !== "°C") {
+    return "Write the size without its sign; say the polarity under the conditions.";
+  }
+  return null;
+}
