@@ -7,13 +7,15 @@ import { findSession, hashSecret, openSession, revokeSession } from "~/services/
 type Context = Readonly<RouterContextProvider>;
 
 function sessionCookie() {
-  const secure = environment().APP_URL.startsWith("https:");
+  const { APP_URL, SESSION_SECRET } = environment();
+  const secure = APP_URL.startsWith("https:");
   return createCookie(secure ? "__Host-mainsgate" : "mainsgate", {
     httpOnly: true,
     sameSite: "lax",
     path: "/",
     secure,
     maxAge: 14 * 86_400,
+    secrets: [SESSION_SECRET],
   });
 }
 
@@ -27,8 +29,19 @@ export const sessionMiddleware: MiddlewareFunction<Response> = async ({ request,
   const secret = await readSecret(request);
   const session = secret ? await findSession(database(), secret, new Date()) : null;
   context.set(personContext, session?.person ?? null);
-  return next();
+  const response = await next();
+  if (secret && session?.renewed && !setsSession(response)) {
+    // The browser forgets the cookie when the session would have ended without this visit.
+    response.headers.append("Set-Cookie", await sessionCookie().serialize(secret));
+  }
+  return response;
 };
+
+/** Whether an answer signs in or out by itself. */
+function setsSession(response: Response): boolean {
+  const { name } = sessionCookie();
+  return response.headers.getSetCookie().some((cookie) => cookie.startsWith(`${name}=`));
+}
 
 /** The signed-in person, or a redirect to the sign-in page that leads back here afterwards. */
 export function requirePerson(context: Context, url: URL): SignedInPerson {

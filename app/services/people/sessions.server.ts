@@ -17,6 +17,8 @@ export interface SessionOrigin {
 export interface OpenSession {
   idHash: string;
   person: { id: number; name: string; email: string };
+  /** Its end was just put off, so the cookie's must be too. */
+  renewed: boolean;
 }
 
 /** Hex SHA-256 of a secret that only its holder knows. */
@@ -58,13 +60,14 @@ export async function findSession(db: Database, secret: string, now: Date): Prom
     .innerJoin(people, eq(people.id, sessions.personId))
     .where(and(eq(sessions.idHash, idHash), gt(sessions.expiresAt, now)));
   if (!row) return null;
-  if (now.getTime() - row.lastSeenAt.getTime() > SEEN_STEP_MS) {
+  const renewed = now.getTime() - row.lastSeenAt.getTime() > SEEN_STEP_MS;
+  if (renewed) {
     await db
       .update(sessions)
       .set({ lastSeenAt: now, expiresAt: new Date(now.getTime() + IDLE_MS) })
       .where(eq(sessions.idHash, idHash));
   }
-  return { idHash, person: { id: row.id, name: row.name, email: row.email } };
+  return { idHash, person: { id: row.id, name: row.name, email: row.email }, renewed };
 }
 
 /** A person's open sessions, the one used last first. */

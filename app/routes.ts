@@ -1,0 +1,36 @@
+import { index, prefix, route, type RouteConfig } from "@react-router/dev/routes";
+
+/**
+ * Every address of the product. Who may do what behind it is asked in the route's loader and action, of the one
+ * permission table; tests/integration/authorisation.test.ts fails when a route is missing from its table.
+ */
+export default [
+  index("routes/home.tsx"),
+
+  route("sign-in", "routes/auth/sign-in.tsx"),
+  route("sign-out", "routes/auth/sign-out.ts"),
+  route("theme", "routes/theme.ts"),
+
+  route("w/:workshop", "routes/workshop/layout.tsx", [
+    index("routes/workshop/overview.tsx"),
+    // units
+
+    // bench
+
+    // signing
+
+    // archive
+
+    // stewardship
+  ]),
+
+  ...prefix("api", [
+    route("w/:workshop", "routes/api/workshop.ts", [
+      // units and files
+
+      // queues
+
+      // records
+    ]),
+  ]),
+] satisfies RouteConfig;
