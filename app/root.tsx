@@ -15,6 +15,9 @@ import stylesheet from "./app.css?url";
 import { ErrorPage } from "~/components/shell/error-page";
 import { PlainShell } from "~/components/shell/plain-shell";
 import { readTheme } from "~/components/shell/theme";
+import { sessionMiddleware } from "~/middleware/session.server";
+
+export const middleware: Route.MiddlewareFunction[] = [sessionMiddleware];
 
 export const links: Route.LinksFunction = () => [
   { rel: "preload", href: latin400, as: "font", type: "font/woff2", crossOrigin: "anonymous" },
