@@ -2,6 +2,8 @@ import type { Config } from "@react-router/dev/config";
 
 export default {
   appDirectory: "app",
+  // The tests build beside a running server, into a folder of their own.
+  buildDirectory: process.env.BUILD_FOLDER || "build",
   ssr: true,
   future: {
     v8_middleware: true,

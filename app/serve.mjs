@@ -4,19 +4,19 @@ import { fileURLToPath } from "node:url";
 process.env.NODE_ENV ??= "production";
 
 const LONGEST_SHUTDOWN_MS = 10_000;
-const clientFolder = fileURLToPath(new URL("../build/client", import.meta.url));
+const buildFolder = new URL(`../${process.env.BUILD_FOLDER || "build"}/`, import.meta.url);
 
 /** @returns {Promise<import("./server")>} */
 async function load() {
   /** @type {string} */
-  const built = new URL("../build/server/index.js", import.meta.url).href;
+  const built = new URL("server/index.js", buildFolder).href;
   return import(built);
 }
 
 try {
   const { createApp, environment, startWorker } = await load();
   const { PORT, HOST, WORKER } = environment();
-  const app = createApp({ clientFolder });
+  const app = createApp({ clientFolder: fileURLToPath(new URL("client", buildFolder)) });
   const server = app.listen(PORT, HOST, (error) => {
     if (error) {
       console.error(`Mainsgate can't listen on ${HOST}:${PORT}: ${error.message}`);

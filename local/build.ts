@@ -14,22 +14,28 @@ const SOURCES = [
   "vite.config.ts",
 ];
 
-/** Whether build/ was made from the files as they are now. */
-export function buildIsCurrent(root: string): boolean {
-  const stamp = stampFile(root);
+/** The product's build, and the tests' own: rebuilding must not pull files from under a running server. */
+export type BuildFolder = "build" | ".data/build-for-tests";
+
+/** Whether the folder was built from the files as they are now. */
+export function buildIsCurrent(root: string, folder: BuildFolder): boolean {
+  const stamp = stampFile(root, folder);
   return existsSync(stamp) && readFileSync(stamp, "utf8") === sourceHash(root);
 }
 
 /** Builds client and server for production. The stamp is written last, so that a broken build is never current. */
-export async function buildProduct(root: string): Promise<void> {
+export async function buildProduct(root: string, folder: BuildFolder): Promise<void> {
   const hash = sourceHash(root);
-  const output = await runToEnd(join(root, "node_modules/.bin/react-router"), ["build"], root);
+  const output = await runToEnd(join(root, "node_modules/.bin/react-router"), ["build"], root, {
+    NODE_ENV: "production",
+    BUILD_FOLDER: folder,
+  });
   if (output.failed) throw new SetupError(`The build failed:\n${output.text.slice(-6000)}`);
-  writeFileSync(stampFile(root), hash);
+  writeFileSync(stampFile(root, folder), hash);
 }
 
-function stampFile(root: string): string {
-  return join(root, "build/made-from");
+function stampFile(root: string, folder: BuildFolder): string {
+  return join(root, folder, "made-from");
 }
 
 /** A hash over the content of all sources: times of files tell little after a checkout. */
@@ -58,9 +64,14 @@ function filesBelow(root: string, path: string): string[] {
     .sort();
 }
 
-function runToEnd(command: string, args: string[], cwd: string): Promise<{ failed: boolean; text: string }> {
+function runToEnd(
+  command: string,
+  args: string[],
+  cwd: string,
+  variables: NodeJS.ProcessEnv,
+): Promise<{ failed: boolean; text: string }> {
   return new Promise((resolve, reject) => {
-    const child = spawn(command, args, { cwd, env: { ...process.env, NODE_ENV: "production" } });
+    const child = spawn(command, args, { cwd, env: { ...process.env, ...variables } });
     let text = "";
     child.stdout.on("data", (chunk) => (text += chunk));
     child.stderr.on("data", (chunk) => (text += chunk));

@@ -1,10 +1,14 @@
 // The product with hot reload: Vite in front, and the same HTTP application behind it, loaded anew when it changes.
+import { createServer } from "node:http";
 import express from "express";
 import { createServer as createViteServer, isRunnableDevEnvironment } from "vite";
 
 type ServerModule = typeof import("../app/server");
 
-const vite = await createViteServer({ server: { middlewareMode: true } });
+const outer = express();
+const http = createServer(outer);
+// Hot reload shares the port, so that two instances don't meet on Vite's own.
+const vite = await createViteServer({ server: { middlewareMode: true, hmr: { server: http } } });
 const ssr = vite.environments.ssr;
 if (ssr === undefined || !isRunnableDevEnvironment(ssr))
   throw new Error("Vite's server environment can't run code.");
@@ -28,7 +32,6 @@ async function current() {
 
 await current();
 const port = Number(process.env.PORT);
-const outer = express();
 outer.disable("x-powered-by");
 outer.use(vite.middlewares);
 outer.use(async (request, response, next) => {
@@ -39,11 +42,11 @@ outer.use(async (request, response, next) => {
     next(error);
   }
 });
-const listening = outer.listen(port, "127.0.0.1", () => process.send?.({ ready: true }));
+http.listen(port, "127.0.0.1", () => process.send?.({ ready: true }));
 
 async function stop() {
-  listening.close();
-  listening.closeAllConnections();
+  http.close();
+  http.closeAllConnections();
   await worker?.stop();
   await vite.close();
   process.exit(0);

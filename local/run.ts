@@ -53,7 +53,8 @@ export async function runMainsgate({ root, mode }: { root: string; mode: RunMode
     };
     const childEnv = { ...process.env, ...env };
     if (await isEmptyDatabase(ownerUrl)) await step("Put in the demo workshop", () => seed(root, childEnv));
-    if (mode === "serve" && !buildIsCurrent(root)) await step("Build", () => buildProduct(root));
+    if (mode === "serve" && !buildIsCurrent(root, "build"))
+      await step("Build", () => buildProduct(root, "build"));
     if (mode === "services") {
       lock.tellAddress("(services only)");
       console.log(
