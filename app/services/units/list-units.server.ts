@@ -1,0 +1,94 @@
+import { and, asc, count, desc, eq, isNull, like, or, type SQL } from "drizzle-orm";
+import { type Reader, tables } from "~/db/client.server";
+import type { UnitState } from "~/workflow/states";
+
+const { people, units } = tables;
+
+export const UNITS_PER_PAGE = 25;
+
+export const unitSortColumns = ["number", "name", "state", "builder", "changed"] as const;
+export type UnitSortColumn = (typeof unitSortColumns)[number];
+
+export interface UnitQuery {
+  workshopId: number;
+  /** Found in name, purpose or place; a number finds the unit of that number too. */
+  text?: string;
+  states?: readonly UnitState[];
+  builderId?: number;
+  sort: { by: UnitSortColumn; direction: "asc" | "desc" };
+  /** From 1. */
+  page: number;
+}
+
+export interface UnitListItem {
+  number: number;
+  name: string;
+  purpose: string;
+  state: UnitState;
+  revision: number;
+  builder: string;
+  builderId: number;
+  protectionClass: "I" | "II";
+  supplyVolts: number;
+  changedAt: Date;
+}
+
+/** One page of a workshop's units, with how many there are in all. */
+export async function listUnits(
+  db: Reader,
+  query: UnitQuery,
+): Promise<{ units: UnitListItem[]; total: number }> {
+  const where = conditionsOf(query);
+  const [found] = await db.select({ total: count() }).from(units).where(where);
+  const order = query.sort.direction === "asc" ? asc : desc;
+  const rows = await db
+    .select({
+      number: units.number,
+      name: units.name,
+      purpose: units.purpose,
+      state: units.state,
+      revision: units.revision,
+      builder: people.name,
+      builderId: units.builderId,
+      protectionClass: units.protectionClass,
+      supplyVolts: units.supplyVolts,
+      changedAt: units.changedAt,
+    })
+    .from(units)
+    .innerJoin(people, eq(people.id, units.builderId))
+    .where(where)
+    .orderBy(order(sortColumns[query.sort.by]), desc(units.number))
+    .limit(UNITS_PER_PAGE)
+    .offset((query.page - 1) * UNITS_PER_PAGE);
+  return { units: rows, total: found?.total ?? 0 };
+}
+
+const sortColumns = {
+  number: units.number,
+  name: units.name,
+  state: units.state,
+  builder: people.name,
+  changed: units.changedAt,
+};
+
+function conditionsOf(query: UnitQuery): SQL | undefined {
+  const conditions: (SQL | undefined)[] = [eq(units.workshopId, query.workshopId), isNull(units.discardedAt)];
+  const text = query.text?.trim();
+  if (text) {
+    const pattern = `%${text.replace(/[\\%_]/g, (sign) => `\\${sign}`)}%`;
+    const number = /^#?\d{1,9}$/.test(text) ? Number(text.replace("#", "")) : null;
+    conditions.push(
+      or(
+        like(units.name, pattern),
+        like(units.purpose, pattern),
+        like(units.placeOfUse, pattern),
+        ...(number === null ? [] : [eq(units.number, number)]),
+      ),
+    );
+  }
+  if (query.states && query.states.length > 0) {
+    conditions.push(or(...query.states.map((state) => eq(units.state, state))));
+  }
+  if (query.builderId !== undefined) conditions.push(eq(units.builderId, query.builderId));
+  return and(...conditions);
+}
