@@ -8,6 +8,7 @@ import { dayIn, type ServiceContext } from "~/services/context.server";
 import { ConflictError, InvalidInputError, NotFoundError } from "~/services/errors";
 import { type Act, actOnUnit } from "~/services/unit-act.server";
 import { loadRevision } from "~/services/units/load-revision.server";
+import { calibrationState } from "~/workflow/calibration";
 
 const { instrumentRanges, instruments, observations, people } = tables;
 
@@ -173,21 +174,23 @@ async function requireInstrument(context: ServiceContext, tx: Transaction, id: n
     .where(and(eq(instruments.id, id), eq(instruments.workshopId, context.workshop.id)));
   if (!instrument) throw new InvalidInputError("instrumentId", "Choose one of the workshop's instruments.");
   const named = `${instrument.name} (serial ${instrument.serial})`;
-  if (instrument.retiredAt !== null) {
-    throw new InvalidInputError("instrumentId", `${named} has been retired. Take another instrument.`);
-  }
+  const { calibratedOn, calibrationDue } = instrument;
   const today = dayIn(context.workshop.timeZone, at);
-  if (today > instrument.calibrationDue) {
-    throw new InvalidInputError(
-      "instrumentId",
-      `${named} is out of calibration since ${instrument.calibrationDue}. A reading with it proves nothing; take another instrument.`,
-    );
+  switch (calibrationState({ calibratedOn, calibrationDue, retired: instrument.retiredAt !== null }, today)) {
+    case "retired":
+      throw new InvalidInputError("instrumentId", `${named} has been retired. Take another instrument.`);
+    case "overdue":
+      throw new InvalidInputError(
+        "instrumentId",
+        `${named} is out of calibration since ${calibrationDue}. A reading with it proves nothing; take another instrument.`,
+      );
+    case "not-yet":
+      throw new InvalidInputError(
+        "instrumentId",
+        `${named} has its calibration dated ${calibratedOn}, which is still to come.`,
+      );
+    case "in-calibration":
+    case "due-soon":
+      return instrument;
   }
-  if (today < instrument.calibratedOn) {
-    throw new InvalidInputError(
-      "instrumentId",
-      `${named} has its calibration dated ${instrument.calibratedOn}, which is still to come.`,
-    );
-  }
-  return instrument;
 }
