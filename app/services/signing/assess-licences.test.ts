@@ -37,7 +37,9 @@ describe("a licence", () => {
   });
 
   test("must cover the supply voltage; the limit itself is covered", () => {
-    expect(assessLicences([licence], { ...lamp, facts: { supplyVolts: 250 } }, "2026-06-01").licence).toEqual(licence);
+    expect(assessLicences([licence], { ...lamp, facts: { supplyVolts: 250 } }, "2026-06-01").licence).toEqual(
+      licence,
+    );
     const high = assessLicences([licence], { ...lamp, facts: { supplyVolts: 400 } }, "2026-06-01");
     expect(high.licence).toBeNull();
     expect(high.inScope).toEqual([
@@ -46,7 +48,9 @@ describe("a licence", () => {
   });
 
   test("must cover batteries where there is one", () => {
-    expect(assessLicences([licence], { ...lamp, hasBattery: true }, "2026-06-01").inScope[0]).toContain("battery");
+    expect(assessLicences([licence], { ...lamp, hasBattery: true }, "2026-06-01").inScope[0]).toContain(
+      "battery",
+    );
   });
 });
 
@@ -54,5 +58,8 @@ test("one of several that fits is enough, and no licence at all is told as such"
   const wide = { ...licence, id: 2, number: "B-1", coversBatteries: true, maxSupplyVolts: 400 };
   const unit = { facts: { supplyVolts: 400 }, hasBattery: true };
   expect(assessLicences([licence, wide], unit, "2026-06-01").licence).toEqual(wide);
-  expect(assessLicences([], unit, "2026-06-01")).toMatchObject({ licence: null, inDate: [expect.stringContaining("no licence")] });
+  expect(assessLicences([], unit, "2026-06-01")).toMatchObject({
+    licence: null,
+    inDate: [expect.stringContaining("no licence")],
+  });
 });

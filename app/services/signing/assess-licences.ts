@@ -36,7 +36,11 @@ export function assessLicences(
       licences.length === 0
         ? ["You have no licence on file in this workshop. A steward enters it after seeing it."]
         : licences.flatMap((licence) => objectionToDate(licence, today) ?? []);
-    return { licence: null, inDate, inScope: ["Without a licence in date there is no scope to compare with."] };
+    return {
+      licence: null,
+      inDate,
+      inScope: ["Without a licence in date there is no scope to compare with."],
+    };
   }
   const fitting = current.find((licence) => objectionsToScope(licence, unit).length === 0);
   return fitting

@@ -73,7 +73,10 @@ function sentences(texts: readonly string[]): GuardReason[] {
 }
 
 /** The sheet's own guards, asked line by line so that each reason knows its check. */
-function sheetReasons(lines: readonly SheetLine[], guard: "checks-decided" | "photos-present"): GuardReason[] {
+function sheetReasons(
+  lines: readonly SheetLine[],
+  guard: "checks-decided" | "photos-present",
+): GuardReason[] {
   if (lines.length === 0) return sentences(sheetGuards({ lines: [] })[guard]);
   return lines.flatMap((line) =>
     sheetGuards({ lines: [line] })[guard].map((text) => ({ text, checkKey: line.check.key })),
