@@ -25,8 +25,14 @@ export default [
   ]),
 
   ...prefix("api", [
+    route("energy-map.schema.json", "routes/api/energy-map-schema.ts"),
     route("w/:workshop", "routes/api/workshop.ts", [
       // units and files
+      route("maps/evaluate", "routes/api/evaluate-map.ts"),
+      route("units", "routes/api/units.ts"),
+      route("units/:unit", "routes/api/unit.ts"),
+      route("units/:unit/files", "routes/api/unit-files.ts"),
+      route("files/:file/:size", "routes/api/file.ts"),
 
       // queues
 

@@ -1,13 +1,11 @@
 import { and, asc, count, desc, eq, isNull, like, or, type SQL } from "drizzle-orm";
 import { type Reader, tables } from "~/db/client.server";
 import type { UnitState } from "~/workflow/states";
+import type { UnitSortColumn } from "./unit-sort";
 
 const { people, units } = tables;
 
 export const UNITS_PER_PAGE = 25;
-
-export const unitSortColumns = ["number", "name", "state", "builder", "changed"] as const;
-export type UnitSortColumn = (typeof unitSortColumns)[number];
 
 export interface UnitQuery {
   workshopId: number;

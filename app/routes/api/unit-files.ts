@@ -1,0 +1,44 @@
+import { z } from "zod";
+import { problem, problemResponse } from "~/middleware/answers.server";
+import { authoriseUnit } from "~/middleware/authorise.server";
+import { ServiceError } from "~/services/errors";
+import { changeFile } from "~/services/files/change-file.server";
+import { listFiles } from "~/services/files/list-files.server";
+import { receiveUpload } from "~/services/files/receive-upload.server";
+import type { Route } from "./+types/unit-files";
+
+const changeSchema = z.discriminatedUnion("intent", [
+  z.object({
+    intent: z.literal("caption"),
+    fileId: z.coerce.number().int().positive(),
+    caption: z.string().trim().max(300),
+  }),
+  z.object({ intent: z.literal("remove"), fileId: z.coerce.number().int().positive() }),
+  z.object({ intent: z.literal("restore"), fileId: z.coerce.number().int().positive() }),
+]);
+
+/** GET: the unit's files. */
+export async function loader({ params, context }: Route.LoaderArgs) {
+  const { services, unit } = await authoriseUnit(context, "unit.read", params.unit);
+  return Response.json({ files: await listFiles(services.db, unit.id) });
+}
+
+/**
+ * POST multipart/form-data: adds one file (201). POST with `intent` and `fileId`: names it, takes it back or brings it
+ * back. Who may is asked by what the file belongs to: see receiveUpload and changeFile.
+ */
+export async function action({ request, params, context }: Route.ActionArgs) {
+  const { services, unit } = await authoriseUnit(context, "unit.read", params.unit);
+  try {
+    if (request.headers.get("Content-Type")?.startsWith("multipart/")) {
+      return Response.json(await receiveUpload(services, unit, request), { status: 201 });
+    }
+    const change = changeSchema.safeParse(Object.fromEntries(await request.formData()));
+    if (!change.success) return problemResponse(400, "Say what is to be done with which file.");
+    await changeFile(services, unit, change.data);
+    return Response.json({ ok: true });
+  } catch (error) {
+    if (error instanceof ServiceError) return problem(error);
+    throw error;
+  }
+}

@@ -1,0 +1,19 @@
+import { authorise } from "~/middleware/authorise.server";
+import { listUnits, UNITS_PER_PAGE } from "~/services/units/list-units.server";
+import { readUnitQuery } from "~/routes/units/unit-query";
+import type { Route } from "./+types/units";
+
+/** GET: the workshop's units, a page at a time, by the same parameters as the page with the list. */
+export async function loader({ url, context }: Route.LoaderArgs) {
+  const { db, person, workshop } = authorise(context, "unit.list");
+  const { text, states, mine, sort, page } = readUnitQuery(url.searchParams);
+  const { units, total } = await listUnits(db, {
+    workshopId: workshop.id,
+    text,
+    states,
+    builderId: mine ? person.id : undefined,
+    sort,
+    page,
+  });
+  return Response.json({ page, perPage: UNITS_PER_PAGE, total, units });
+}

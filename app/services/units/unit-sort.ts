@@ -1,0 +1,2 @@
+export const unitSortColumns = ["number", "name", "state", "builder", "changed"] as const;
+export type UnitSortColumn = (typeof unitSortColumns)[number];
