@@ -18,9 +18,11 @@ export interface ConflictNoticeProps {
   message: string;
   typed?: readonly TypedText[];
   reloadHref?: string;
+  /** Leaves out the heading where the page's own says the same. */
+  bare?: boolean;
 }
 
-export function ConflictNotice({ message, typed = [], reloadHref }: ConflictNoticeProps) {
+export function ConflictNotice({ message, typed = [], reloadHref, bare = false }: ConflictNoticeProps) {
   const box = useRef<HTMLDivElement>(null);
   useEffect(() => box.current?.focus(), [message]);
   return (
@@ -30,13 +32,16 @@ export function ConflictNotice({ message, typed = [], reloadHref }: ConflictNoti
       tabIndex={-1}
       className="space-y-3 border-l-4 border-undecided bg-undecided-wash px-4 py-3"
     >
-      <p className="flex items-center gap-2 font-semibold">
-        <GitPullRequestArrow aria-hidden size={20} className="shrink-0 text-undecided" />
-        Somebody else acted first
-      </p>
+      {bare ? null : (
+        <p className="flex items-center gap-2 font-semibold">
+          <GitPullRequestArrow aria-hidden size={20} className="shrink-0 text-undecided" />
+          Somebody else acted first
+        </p>
+      )}
       <p>{message}</p>
       <p className="text-sm">
-        Your change was not made. What you typed is still here; look at what is new before you try again.
+        Your change was not made. {bare && typed.length === 0 ? "Look" : "What you typed is still here; look"}{" "}
+        at what is new before you try again.
       </p>
       {typed.length > 0 ? (
         <dl className="space-y-2">

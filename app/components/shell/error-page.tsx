@@ -66,7 +66,12 @@ export function ErrorPage({ error, homeHref = "/" }: { error: unknown; homeHref?
       <h1 className="mt-1 text-2xl">{title}</h1>
       {status === 409 ? (
         <div className="mt-4">
-          <ConflictNotice message={message ?? usual} typed={typed} reloadHref={reloadHref ?? undefined} />
+          <ConflictNotice
+            bare
+            message={message ?? usual}
+            typed={typed}
+            reloadHref={reloadHref ?? undefined}
+          />
         </div>
       ) : (
         <p className="mt-3">{message ?? usual}</p>

@@ -48,7 +48,7 @@ export function NavigationBar({ items }: { items: NavigationItem[] }) {
           <li key={item.to}>
             <NavLink to={item.to} end={item.end} className={cell}>
               <item.icon aria-hidden size={22} />
-              <span className="max-w-full truncate">{item.label}</span>
+              <span className="max-w-full truncate">{item.short ?? item.label}</span>
               <span className="absolute top-1 left-1/2 ml-2">
                 <Count of={item.count} />
               </span>

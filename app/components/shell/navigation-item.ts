@@ -4,6 +4,8 @@ import type { IconType } from "../ui/icon-type";
 export interface NavigationItem {
   to: string;
   label: string;
+  /** For the phone's bottom bar, where a dozen letters fit. */
+  short?: string;
   icon: IconType;
   /** How many things wait there; nothing is shown for 0. */
   count?: number;

@@ -39,6 +39,8 @@ export interface ButtonProps extends ComponentPropsWithRef<"button"> {
   variant?: ButtonVariant;
   size?: ButtonSize;
   icon?: IconType;
+  /** Puts the icon behind the label, for going forwards. */
+  iconAtEnd?: boolean;
   pending?: boolean;
   /** Said while pending, in place of the label. */
   pendingLabel?: string;
@@ -48,6 +50,7 @@ export function Button({
   variant = "secondary",
   size = "md",
   icon: Icon,
+  iconAtEnd = false,
   pending = false,
   pendingLabel,
   className = "",
@@ -55,6 +58,7 @@ export function Button({
   onClick,
   ...rest
 }: ButtonProps) {
+  const icon = Icon ? <Icon aria-hidden size={size === "bench" ? 22 : 18} className="shrink-0" /> : null;
   return (
     <button
       {...rest}
@@ -64,12 +68,9 @@ export function Button({
       onClick={pending ? (event) => event.preventDefault() : onClick}
       className={`${buttonClass(variant, size)} ${className}`}
     >
-      {pending ? (
-        <Spinner />
-      ) : Icon ? (
-        <Icon aria-hidden size={size === "bench" ? 22 : 18} className="shrink-0" />
-      ) : null}
+      {pending ? <Spinner /> : iconAtEnd ? null : icon}
       {pending && pendingLabel ? pendingLabel : children}
+      {!pending && iconAtEnd ? icon : null}
     </button>
   );
 }

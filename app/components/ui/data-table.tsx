@@ -60,51 +60,54 @@ export function DataTable<Row>({
   if (rows.length === 0 && empty) return <>{empty}</>;
   return (
     // Explicit roles: the phone layout changes `display`, which would take a table's meaning away in some browsers.
-    <table role="table" className="w-full border-collapse text-sm max-sm:block">
-      <caption className={showCaption ? "px-3 py-2 text-left font-semibold max-sm:block" : "sr-only"}>
-        {caption}
-      </caption>
-      <thead role="rowgroup" className="max-sm:block">
-        <tr
-          role="row"
-          className="border-b-2 border-rule-strong bg-inset text-left max-sm:flex max-sm:flex-wrap max-sm:gap-x-4 max-sm:border-b max-sm:px-3"
-        >
-          {columns.map((column) => {
-            const current = sort?.by === column.id ? sort.direction : null;
-            return (
-              <th
-                key={column.id}
-                role="columnheader"
-                scope="col"
-                aria-sort={current === null ? undefined : current === "asc" ? "ascending" : "descending"}
-                className={
-                  `px-3 py-2 align-bottom font-semibold ${column.numeric ? "text-right" : ""} ` +
-                  (column.sortable ? "max-sm:px-0 max-sm:py-0" : "max-sm:sr-only")
-                }
-              >
-                {column.sortable ? (
-                  <Link
-                    to={sortHref(params, column.id, sort, column.descendingFirst)}
-                    preventScrollReset
-                    className="inline-flex items-center gap-1 underline-offset-4 hover:text-copper hover:underline max-sm:min-h-11"
-                  >
+    // The box around it scrolls a wide table sideways, and holds what is placed absolutely inside.
+    <div className="relative overflow-x-auto">
+      <table role="table" className="w-full border-collapse text-sm max-sm:block">
+        <caption className={showCaption ? "px-3 py-2 text-left font-semibold max-sm:block" : "sr-only"}>
+          {caption}
+        </caption>
+        <thead role="rowgroup" className="max-sm:block">
+          <tr
+            role="row"
+            className="border-b-2 border-rule-strong bg-inset text-left max-sm:flex max-sm:flex-wrap max-sm:gap-x-4 max-sm:border-b max-sm:px-3"
+          >
+            {columns.map((column) => {
+              const current = sort?.by === column.id ? sort.direction : null;
+              return (
+                <th
+                  key={column.id}
+                  role="columnheader"
+                  scope="col"
+                  aria-sort={current === null ? undefined : current === "asc" ? "ascending" : "descending"}
+                  className={
+                    `px-3 py-2 align-bottom font-semibold ${column.numeric ? "text-right" : ""} ` +
+                    (column.sortable ? "max-sm:px-0 max-sm:py-0" : "max-sm:sr-only")
+                  }
+                >
+                  {column.sortable ? (
+                    <Link
+                      to={sortHref(params, column.id, sort, column.descendingFirst)}
+                      preventScrollReset
+                      className="inline-flex items-center gap-1 underline-offset-4 hover:text-copper hover:underline max-sm:min-h-11"
+                    >
+                      <span className={column.hideHeader ? "sr-only" : ""}>{column.header}</span>
+                      <SortIcon direction={current} />
+                    </Link>
+                  ) : (
                     <span className={column.hideHeader ? "sr-only" : ""}>{column.header}</span>
-                    <SortIcon direction={current} />
-                  </Link>
-                ) : (
-                  <span className={column.hideHeader ? "sr-only" : ""}>{column.header}</span>
-                )}
-              </th>
-            );
-          })}
-        </tr>
-      </thead>
-      <tbody role="rowgroup" className="max-sm:block">
-        {rows.map((row) => (
-          <TableRow key={rowKey(row)} row={row} columns={columns} href={rowHref?.(row) ?? null} />
-        ))}
-      </tbody>
-    </table>
+                  )}
+                </th>
+              );
+            })}
+          </tr>
+        </thead>
+        <tbody role="rowgroup" className="max-sm:block">
+          {rows.map((row) => (
+            <TableRow key={rowKey(row)} row={row} columns={columns} href={rowHref?.(row) ?? null} />
+          ))}
+        </tbody>
+      </table>
+    </div>
   );
 }
 
@@ -120,7 +123,7 @@ function TableRow<Row>({ row, columns, href }: { row: Row; columns: Column<Row>[
       {columns.map((column) => {
         const content = column.cell(row);
         const cellClass =
-          `px-3 py-2 align-top ${column.numeric ? "text-right tabular-nums max-sm:text-left" : ""} ` +
+          `px-3 py-2 align-middle ${column.numeric ? "text-right tabular-nums max-sm:text-left" : ""} ` +
           `${column.nowrap ? "whitespace-nowrap" : ""} max-sm:flex max-sm:gap-3 max-sm:px-0 max-sm:py-1`;
         if (column.primary) {
           return (
@@ -146,9 +149,11 @@ function TableRow<Row>({ row, columns, href }: { row: Row; columns: Column<Row>[
         }
         return (
           <td key={column.id} role="cell" className={cellClass}>
-            <span aria-hidden className="legend-text hidden w-28 shrink-0 pt-0.5 max-sm:block">
-              {column.hideHeader ? "" : column.header}
-            </span>
+            {column.hideHeader ? null : (
+              <span aria-hidden className="legend-text hidden w-28 shrink-0 pt-0.5 max-sm:block">
+                {column.header}
+              </span>
+            )}
             {/* Above the stretched link, but only what can be used takes the pointer. */}
             <div
               className={`min-w-0 ${href ? "pointer-events-none relative z-1 [&_:is(a,button,input,select,label,summary)]:pointer-events-auto" : ""}`}

@@ -34,8 +34,8 @@ function FlashBox({ message, onDismiss }: { message: FlashMessage; onDismiss: ()
   const { box, icon: Icon, word } = tones[message.tone];
   return (
     <div className={`mb-4 flex items-start gap-3 border-l-4 py-1 pr-1 pl-4 ${box}`}>
-      <Icon aria-hidden size={20} className="mt-2.5 shrink-0" />
-      <p className="min-w-0 grow py-2">
+      <Icon aria-hidden size={20} className="mt-3 shrink-0" />
+      <p className="min-w-0 grow py-2.5">
         <span className="sr-only">{word}: </span>
         {message.text}
       </p>

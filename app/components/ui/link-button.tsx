@@ -11,20 +11,25 @@ export interface LinkButtonProps extends LinkProps {
   variant?: ButtonVariant;
   size?: ButtonSize;
   icon?: IconType;
+  /** Puts the icon behind the label, for going forwards. */
+  iconAtEnd?: boolean;
 }
 
 export function LinkButton({
   variant = "secondary",
   size = "md",
   icon: Icon,
+  iconAtEnd = false,
   className = "",
   children,
   ...rest
 }: LinkButtonProps) {
+  const icon = Icon ? <Icon aria-hidden size={size === "bench" ? 22 : 18} className="shrink-0" /> : null;
   return (
     <Link {...rest} className={`${buttonClass(variant, size)} ${className}`}>
-      {Icon ? <Icon aria-hidden size={size === "bench" ? 22 : 18} className="shrink-0" /> : null}
+      {iconAtEnd ? null : icon}
       {children}
+      {iconAtEnd ? icon : null}
     </Link>
   );
 }

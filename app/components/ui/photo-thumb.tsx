@@ -1,7 +1,7 @@
 /**
  * A photo as a small picture with its caption; it leads to the large one.
  *   <PhotoThumb src={photo.smallUrl} href={photo.largeUrl} alt="Mains inlet, cover off" caption={<Time at={photo.takenAt} />} />
- * Without `src` the picture is still being prepared, or could not be (`failed`).
+ * Several stand in a <PhotoGrid>. Without `src` the picture is still being prepared, or could not be (`failed`).
  */
 import { ImageOff } from "lucide-react";
 import type { ReactNode } from "react";
@@ -16,6 +16,10 @@ export interface PhotoThumbProps {
   /** A button to remove it, for instance. */
   action?: ReactNode;
   size?: "md" | "large";
+}
+
+export function PhotoGrid({ children }: { children: ReactNode }) {
+  return <div className="grid grid-cols-2 gap-3 sm:grid-cols-[repeat(auto-fill,11rem)]">{children}</div>;
 }
 
 export function PhotoThumb({
@@ -42,7 +46,7 @@ export function PhotoThumb({
   );
   return (
     <figure
-      className={`min-w-0 border border-rule-strong bg-sheet p-1 ${size === "large" ? "w-full max-w-md" : "w-44"}`}
+      className={`min-w-0 border border-rule-strong bg-sheet p-1 ${size === "large" ? "w-full max-w-md" : "w-full max-w-44"}`}
     >
       {href && src ? (
         // A plain link: the picture is a file, not a page of the application.

@@ -34,7 +34,12 @@ export function SelectField({
   return (
     <Field {...{ field, label, hint, size, optional, hideLabel, className }}>
       {(attributes) => (
-        <select {...initial} {...select} {...attributes} className={`control-box ${controlSize[size]}`}>
+        <select
+          {...initial}
+          {...select}
+          {...attributes}
+          className={`control-box -indent-1 ${controlSize[size]}`}
+        >
           {placeholder === undefined ? null : <option value="">{placeholder}</option>}
           {options.map((option) => (
             <option key={option.value} value={option.value} disabled={option.disabled}>

@@ -8,7 +8,7 @@ import { useId, type ReactNode } from "react";
 export interface SheetProps {
   title?: ReactNode;
   /** h2 unless told. */
-  headingLevel?: 2 | 3 | 4;
+  headingLevel?: 1 | 2 | 3 | 4;
   lead?: ReactNode;
   actions?: ReactNode;
   /** Under the content, behind a rule: buttons of a form, a total. */

@@ -31,7 +31,7 @@ export function TextareaField({
           {...initial}
           {...textarea}
           {...attributes}
-          className={`control-box field-sizing-content max-h-96 ${controlSize[size]}`}
+          className={`control-box field-sizing-content max-h-96 min-h-20 ${controlSize[size]}`}
         />
       )}
     </Field>
