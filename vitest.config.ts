@@ -5,13 +5,18 @@ export default defineConfig({
   resolve: { tsconfigPaths: true },
   test: {
     projects: [
-      { extends: true, test: { name: "unit", include: ["app/**/*.test.ts", "app/**/*.test.tsx", "local/**/*.test.ts"] } },
+      {
+        extends: true,
+        test: { name: "unit", include: ["app/**/*.test.ts", "app/**/*.test.tsx", "local/**/*.test.ts"] },
+      },
       {
         extends: true,
         test: {
           name: "integration",
           include: ["tests/integration/**/*.test.ts"],
           globalSetup: ["tests/setup/integration.ts"],
+          setupFiles: ["tests/setup/integration-file.ts"],
+          pool: "forks",
           fileParallelism: false,
           testTimeout: 30_000,
           hookTimeout: 60_000,
@@ -23,6 +28,7 @@ export default defineConfig({
           name: "e2e",
           include: ["tests/e2e/**/*.test.ts"],
           globalSetup: ["tests/setup/e2e.ts"],
+          pool: "forks",
           fileParallelism: false,
           testTimeout: 180_000,
           hookTimeout: 120_000,

@@ -4,6 +4,7 @@ import { buildIsCurrent, buildProduct } from "./build";
 import { applyMigrations, isEmptyDatabase } from "./migrations";
 import { freePort, type RunningProcess, startChild } from "./processes";
 import { takeRunLock } from "./run-lock";
+import { seed } from "./run-seed";
 import { type BackingServices, startBackingServices } from "./services";
 import { demoPeople } from "./seed/people";
 import { reportFailure, SetupError, step } from "./steps.mjs";
@@ -110,17 +111,6 @@ function takeDataFolder(folder: string) {
 function givenVariables(): Record<string, string> {
   const names = ["APP_URL", "HOST", "TRUST_PROXY", "CHANGES_PER_MINUTE", "SMTP_URL", "MAIL_FROM"];
   return Object.fromEntries(names.flatMap((name) => (process.env[name] ? [[name, process.env[name]]] : [])));
-}
-
-/** Runs the seed to its end. */
-export async function seed(root: string, env: NodeJS.ProcessEnv): Promise<void> {
-  const { process: child } = await startChild({
-    name: "The seed",
-    script: join(root, "local/seed/run.ts"),
-    cwd: root,
-    env,
-  });
-  await child.exited;
 }
 
 async function serve(root: string, env: NodeJS.ProcessEnv, dev: boolean): Promise<RunningProcess> {
