@@ -11,6 +11,8 @@ export interface PhotoThumbProps {
   src: string | null;
   alt: string;
   href?: string;
+  /** Shows the large one within the page; without JavaScript the link leads to it. */
+  onOpen?: () => void;
   caption?: ReactNode;
   failed?: boolean;
   /** A button to remove it, for instance. */
@@ -26,6 +28,7 @@ export function PhotoThumb({
   src,
   alt,
   href,
+  onOpen,
   caption,
   failed = false,
   action,
@@ -50,7 +53,17 @@ export function PhotoThumb({
     >
       {href && src ? (
         // A plain link: the picture is a file, not a page of the application.
-        <a href={href} target="_blank" rel="noreferrer" className="block">
+        <a
+          href={href}
+          target="_blank"
+          rel="noreferrer"
+          className="block"
+          onClick={(event) => {
+            if (!onOpen || event.ctrlKey || event.metaKey || event.shiftKey) return;
+            event.preventDefault();
+            onOpen();
+          }}
+        >
           {picture}
         </a>
       ) : (

@@ -1,0 +1,73 @@
+/** One photo large, with the next and the previous by arrow keys and buttons. */
+import { ChevronLeft, ChevronRight } from "lucide-react";
+import { Button } from "./ui/button";
+import { Dialog } from "./ui/dialog";
+import { Time } from "./ui/time";
+
+export interface ViewerPhoto {
+  id: number;
+  src: string;
+  alt: string;
+  by: string;
+  at: Date | string;
+}
+
+export interface PhotoViewerProps {
+  photos: readonly ViewerPhoto[];
+  /** Index of the photo shown; null when closed. */
+  shown: number | null;
+  onShow: (index: number | null) => void;
+}
+
+export function PhotoViewer({ photos, shown, onShow }: PhotoViewerProps) {
+  const photo = shown === null ? undefined : photos[shown];
+  const step = (by: number) => {
+    if (shown !== null) onShow((shown + by + photos.length) % photos.length);
+  };
+  return (
+    <Dialog
+      open={photo !== undefined}
+      onClose={() => onShow(null)}
+      title={photo && shown !== null ? `Photo ${shown + 1} of ${photos.length}` : "Photo"}
+      wide
+      footer={
+        photos.length > 1 ? (
+          <>
+            <Button type="button" icon={ChevronLeft} onClick={() => step(-1)}>
+              Previous
+            </Button>
+            <Button type="button" icon={ChevronRight} onClick={() => step(1)}>
+              Next
+            </Button>
+          </>
+        ) : null
+      }
+    >
+      {photo ? (
+        <figure
+          // The arrow keys work wherever the focus is inside the dialog.
+          onKeyDown={(event) => {
+            if (event.key === "ArrowLeft") step(-1);
+            if (event.key === "ArrowRight") step(1);
+          }}
+        >
+          <img
+            src={photo.src}
+            alt={photo.alt}
+            tabIndex={photos.length > 1 ? 0 : undefined}
+            className="mx-auto max-h-[65dvh] object-contain"
+          />
+          <figcaption className="mt-2 text-sm">
+            {photo.alt}
+            <span className="block text-ink-soft">
+              {photo.by}, <Time at={photo.at} /> ·{" "}
+              <a href={photo.src} target="_blank" rel="noreferrer" className="text-link">
+                Open by itself
+              </a>
+            </span>
+          </figcaption>
+        </figure>
+      ) : null}
+    </Dialog>
+  );
+}
