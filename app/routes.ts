@@ -9,6 +9,10 @@ export default [
 
   route("sign-in", "routes/auth/sign-in.tsx"),
   route("sign-out", "routes/auth/sign-out.ts"),
+  route("forgotten-password", "routes/auth/forgotten-password.tsx"),
+  route("reset/:token", "routes/auth/reset.tsx"),
+  route("invitation/:token", "routes/auth/invitation.tsx"),
+  route("account", "routes/account/account.tsx"),
   route("theme", "routes/theme.ts"),
 
   route("w/:workshop", "routes/workshop/layout.tsx", [

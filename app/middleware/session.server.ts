@@ -2,7 +2,14 @@ import { createCookie, type MiddlewareFunction, redirect, type RouterContextProv
 import { clientAddressContext, personContext, type SignedInPerson } from "~/context";
 import { environment } from "~/environment.server";
 import { database } from "~/services/database.server";
-import { findSession, hashSecret, openSession, revokeSession } from "~/services/people/sessions.server";
+import {
+  findSession,
+  hashSecret,
+  openSession,
+  revokeSession,
+  sweepSessions,
+} from "~/services/people/sessions.server";
+import { sweepTries } from "~/services/people/throttle.server";
 
 type Context = Readonly<RouterContextProvider>;
 
@@ -58,7 +65,9 @@ export async function signIn(request: Request, context: Context, personId: numbe
     userAgent: request.headers.get("User-Agent") ?? "",
     ip: context.get(clientAddressContext),
   };
-  const secret = await openSession(database(), personId, origin, new Date());
+  const now = new Date();
+  await Promise.all([sweepSessions(database(), now), sweepTries(database(), now)]);
+  const secret = await openSession(database(), personId, origin, now);
   return sessionCookie().serialize(secret);
 }
 
