@@ -1,9 +1,10 @@
 // The product with hot reload: Vite in front, and the same HTTP application behind it, loaded anew when it changes.
 import { createServer } from "node:http";
 import express from "express";
+import type * as Server from "../app/server";
 import { createServer as createViteServer, isRunnableDevEnvironment } from "vite";
 
-type ServerModule = typeof import("../app/server");
+type ServerModule = typeof Server;
 
 const outer = express();
 const http = createServer(outer);

@@ -98,6 +98,8 @@ async function answer(
   }
   const checked = new IncomingMessage(request.socket);
   Object.assign(checked, { method: request.method, url: request.url, headers: request.headers });
+  // Otherwise the stream takes the end of its (already read) body for a broken connection, and closes it.
+  checked.complete = true;
   checked.push(body);
   checked.push(null);
   vouch(checked);

@@ -148,10 +148,19 @@ export function birthOf(pid: number): string | null {
 
 /** Processes one of whose arguments is exactly `argument`. */
 export function processesWithArgument(argument: string): number[] {
+  return otherProcesses().filter((pid) => commandLineOf(pid)?.includes(argument));
+}
+
+/** Processes that name something below `folder` in their arguments. */
+export function processesBelow(folder: string): number[] {
+  return otherProcesses().filter((pid) => commandLineOf(pid)?.some((part) => part.includes(`${folder}/`)));
+}
+
+function otherProcesses(): number[] {
   return readdirSync("/proc")
     .filter((name) => /^\d+$/.test(name))
     .map(Number)
-    .filter((pid) => pid !== process.pid && commandLineOf(pid)?.includes(argument));
+    .filter((pid) => pid !== process.pid);
 }
 
 /** Ends a process that is not our child (an orphan of an earlier run) and waits until it is gone. */
