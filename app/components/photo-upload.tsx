@@ -45,6 +45,7 @@ export function PhotoUpload({
 }: PhotoUploadProps) {
   const [items, setItems] = useState<Item[]>([]);
   const [arrived, setArrived] = useState(0);
+  const [turn, setTurn] = useState(0);
   const [dragging, setDragging] = useState(false);
   const revalidator = useRevalidator();
   const nextKey = useRef(0);
@@ -76,6 +77,7 @@ export function PhotoUpload({
     change(key, { state: "sending", share: 0 });
     void upload.result.then((result) => {
       running.current = null;
+      setTurn((before) => before + 1);
       if (result.ok) {
         drop(key);
         setArrived((count) => count + 1);
@@ -85,7 +87,8 @@ export function PhotoUpload({
         change(key, { state: "failed", message: result.message, again: result.again });
       }
     });
-  }, [next, action, fields, onDone, revalidator]);
+    // `turn` wakes the next one also when the running file was taken out of the list.
+  }, [next, turn, action, fields, onDone, revalidator]);
 
   const sending = items.some((item) => item.state !== "failed");
   useEffect(() => {

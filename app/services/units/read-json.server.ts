@@ -2,7 +2,7 @@ import { Readable } from "node:stream";
 import type { ReadableStream as NodeWebStream } from "node:stream/web";
 import type { z } from "zod";
 import { InvalidInputError } from "~/services/errors";
-import { describeIssue } from "./describe-issue";
+import { describeIssue } from "~/engine/describe-issue";
 
 /** The most that a JSON request may weigh: the largest map that the schema allows, and room to spare. */
 const JSON_BYTES = 1024 * 1024;
