@@ -20,7 +20,7 @@ export function NavigationRow({ items }: { items: NavigationItem[] }) {
                 "aria-[current=page]:text-ink aria-[current=page]:shadow-[inset_0_-3px_0_var(--color-copper)] focus-visible:-outline-offset-2"
               }
             >
-              <item.icon aria-hidden size={17} className="shrink-0" />
+              <item.icon aria-hidden size={17} className="shrink-0 max-lg:hidden" />
               {item.label}
               <Count of={item.count} />
             </NavLink>
@@ -89,7 +89,7 @@ export function NavigationBar({ items }: { items: NavigationItem[] }) {
 function Count({ of }: { of: number | undefined }) {
   if (!of) return null;
   return (
-    <span className="rounded-sm bg-copper px-1.5 text-xs font-semibold text-on-copper tabular-nums">
+    <span className="inline-flex rounded-sm bg-copper px-1.5 whitespace-nowrap text-xs font-semibold text-on-copper tabular-nums">
       {of > 99 ? "99+" : of}
       <span className="sr-only"> waiting</span>
     </span>

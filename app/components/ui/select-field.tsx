@@ -38,7 +38,7 @@ export function SelectField({
           {...initial}
           {...select}
           {...attributes}
-          className={`control-box -indent-1 ${controlSize[size]}`}
+          className={`control-box pl-2! ${controlSize[size]}`}
         >
           {placeholder === undefined ? null : <option value="">{placeholder}</option>}
           {options.map((option) => (
