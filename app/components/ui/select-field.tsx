@@ -34,12 +34,7 @@ export function SelectField({
   return (
     <Field {...{ field, label, hint, size, optional, hideLabel, className }}>
       {(attributes) => (
-        <select
-          {...initial}
-          {...select}
-          {...attributes}
-          className={`control-box pl-2! ${controlSize[size]}`}
-        >
+        <select {...initial} {...select} {...attributes} className={`control-box pl-2! ${controlSize[size]}`}>
           {placeholder === undefined ? null : <option value="">{placeholder}</option>}
           {options.map((option) => (
             <option key={option.value} value={option.value} disabled={option.disabled}>
