@@ -20,12 +20,19 @@ export default [
     // units
 
     // bench
+    route("bench", "routes/bench/queue.tsx"),
+    route("bench/:unit", "routes/bench/sheet.tsx"),
+    route("bench/:unit/check", "routes/bench/check.tsx"),
+    route("bench/:unit/changes", "routes/bench/changes.tsx"),
+    route("bench/:unit/close", "routes/bench/close.tsx"),
 
     // signing
 
     // archive
 
     // stewardship
+    route("people", "routes/stewardship/people.tsx"),
+    route("people/:person", "routes/stewardship/person.tsx"),
   ]),
 
   ...prefix("api", [
@@ -39,6 +46,7 @@ export default [
       route("files/:file/:size", "routes/api/file.ts"),
 
       // queues
+      route("queues", "routes/api/queues.ts"),
 
       // records
     ]),

@@ -1,6 +1,6 @@
 import type { CheckFamily, Limit } from "~/engine/bench-check";
 import type { Citation } from "~/engine/rule-set";
-import { figure } from "~/engine/verdict";
+import { figure } from "~/engine/figure";
 
 export const familyTitles: Record<CheckFamily, string> = {
   visual: "Visual and mechanical",

@@ -1,4 +1,4 @@
-import { figure } from "~/engine/verdict";
+import { figure } from "~/engine/figure";
 
 /** An observation as far as its text needs it. */
 export interface ReadingSource {

@@ -2,14 +2,7 @@ import { VerdictBadge } from "~/components/ui/verdict-badge";
 import { type Verdict, VerdictIcon } from "~/components/ui/verdict-icon";
 import type { LineVerdict } from "~/engine/bench-answer";
 
-const shapes: Record<LineVerdict, Verdict> = {
-  pass: "pass",
-  fail: "fail",
-  undecided: "undecided",
-  open: "unknown",
-  "not-applicable": "not_applicable",
-  "not-possible": "not_possible",
-};
+const shapeOf = (verdict: LineVerdict): Verdict => (verdict === "open" ? "unknown" : verdict);
 
 export const lineVerdictWords: Record<LineVerdict, string> = {
   pass: "Pass",
@@ -22,10 +15,10 @@ export const lineVerdictWords: Record<LineVerdict, string> = {
 
 /** Where a line of the bench sheet stands, as shape and word. */
 export function LineVerdictBadge({ verdict, size }: { verdict: LineVerdict; size?: "md" | "bench" }) {
-  return <VerdictBadge verdict={shapes[verdict]} size={size} label={lineVerdictWords[verdict]} />;
+  return <VerdictBadge verdict={shapeOf(verdict)} size={size} label={lineVerdictWords[verdict]} />;
 }
 
 /** The shape alone, for dense places that say the word elsewhere. */
 export function LineVerdictIcon({ verdict, size }: { verdict: LineVerdict; size?: number }) {
-  return <VerdictIcon verdict={shapes[verdict]} size={size} />;
+  return <VerdictIcon verdict={shapeOf(verdict)} size={size} />;
 }

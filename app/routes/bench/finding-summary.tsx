@@ -1,0 +1,52 @@
+import { Link } from "react-router";
+import { SeverityBadge } from "~/components/ui/severity-badge";
+import { checkHref } from "./check-href";
+import type { FindingView } from "~/services/bench/sheet-view";
+
+/** One finding in a few lines: how bad, what, on what, and how it stands. */
+export function FindingSummary({
+  finding,
+  lines,
+  checkBase,
+}: {
+  finding: FindingView;
+  lines: readonly { check: { key: string; title: string } }[];
+  /** The address of the unit on the bench. */
+  checkBase: string;
+}) {
+  const check = lines.find((line) => line.check.key === finding.checkKey)?.check;
+  return (
+    <div className="space-y-1 text-sm">
+      <p className="flex flex-wrap items-center gap-2">
+        <SeverityBadge severity={finding.severity} />
+        <span className="font-semibold">Finding {finding.number}</span>
+        <span className={finding.closing ? "text-ink-soft" : "font-semibold text-undecided"}>
+          {finding.closing ? "closed" : "open"}
+        </span>
+      </p>
+      <p className="whitespace-pre-line">{finding.text}</p>
+      <p className="text-ink-soft">
+        {check ? (
+          <Link to={checkHref(checkBase, check.key)} className="text-link">
+            {check.title}
+          </Link>
+        ) : (
+          (finding.elementId ?? "on the unit as a whole")
+        )}
+        {`, revision ${finding.revision}, ${finding.raisedBy}`}
+      </p>
+      {finding.answers.map((answer) => (
+        <p key={answer.id} className="border-l-2 border-rule-strong pl-2 whitespace-pre-line">
+          <span className="font-medium">{answer.answeredBy} answered: </span>
+          {answer.text}
+        </p>
+      ))}
+      {finding.closing ? (
+        <p className="border-l-2 border-pass pl-2 whitespace-pre-line">
+          <span className="font-medium">{finding.closing.by} closed it: </span>
+          {finding.closing.text}
+        </p>
+      ) : null}
+    </div>
+  );
+}

@@ -1,0 +1,222 @@
+import { Camera, CameraOff } from "lucide-react";
+import { Link, useSearchParams } from "react-router";
+import { familyTitles, limitSigns } from "~/components/bench-limit";
+import { readingText, uncertaintyText } from "~/components/bench-reading";
+import { LineVerdictBadge } from "~/components/bench-verdict";
+import { SeverityBadge } from "~/components/ui/severity-badge";
+import { withParams } from "~/components/ui/table-params";
+import { type CheckFamily, checkFamilies } from "~/engine/bench-check";
+import type { SheetLine } from "~/services/bench/sheet-view";
+import { checkHref } from "./check-href";
+import { isShown, type Show, shows, showWords } from "./sheet-filter";
+
+type Line = Omit<SheetLine, "history">;
+
+/**
+ * The whole sheet as one dense table, a row group a family; on a phone each row is a card. Every line links to its step.
+ *
+ * @param base the address of the unit on the bench
+ */
+export function SheetLines({
+  lines,
+  show,
+  base,
+  revision,
+}: {
+  lines: readonly Line[];
+  show: Show;
+  base: string;
+  revision: number;
+}) {
+  const shown = lines.filter((line) => isShown(line, show));
+  const families = checkFamilies.filter((family) => shown.some((line) => line.check.family === family));
+  return (
+    <>
+      <div className="flex flex-wrap items-center gap-x-6 gap-y-2 border-b border-rule px-3 py-2 print:hidden">
+        <ShowLinks lines={lines} show={show} />
+        <nav aria-label="Families" className="flex flex-wrap gap-x-3 text-sm">
+          {families.map((family) => (
+            <a
+              key={family}
+              href={`#family-${family}`}
+              className="text-link inline-flex min-h-9 items-center pointer-coarse:min-h-11"
+            >
+              {familyTitles[family]}
+            </a>
+          ))}
+        </nav>
+      </div>
+      {shown.length === 0 ? (
+        <p className="px-4 py-6 text-center text-ink-soft">No check of this kind.</p>
+      ) : (
+        <table role="table" className="w-full border-collapse text-sm max-md:block">
+          <caption className="sr-only">Checks of revision {revision} in working order</caption>
+          <thead role="rowgroup" className="max-md:sr-only">
+            <tr role="row" className="border-b-2 border-rule-strong bg-inset text-left">
+              <th scope="col" role="columnheader" className="px-3 py-2 font-semibold">
+                Check
+              </th>
+              <th scope="col" role="columnheader" className="px-3 py-2 font-semibold">
+                Limit
+              </th>
+              <th scope="col" role="columnheader" className="px-3 py-2 font-semibold">
+                Found
+              </th>
+              <th scope="col" role="columnheader" className="px-3 py-2 font-semibold">
+                Instrument
+              </th>
+              <th scope="col" role="columnheader" className="px-3 py-2 font-semibold">
+                Photo
+              </th>
+              <th scope="col" role="columnheader" className="px-3 py-2 font-semibold">
+                Verdict
+              </th>
+            </tr>
+          </thead>
+          {families.map((family) => (
+            <FamilyRows
+              key={family}
+              family={family}
+              lines={shown.filter((line) => line.check.family === family)}
+              base={base}
+            />
+          ))}
+        </table>
+      )}
+    </>
+  );
+}
+
+function ShowLinks({ lines, show }: { lines: readonly Line[]; show: Show }) {
+  const [search] = useSearchParams();
+  return (
+    <nav aria-label="Show" className="flex flex-wrap gap-1 text-sm">
+      {shows.map((one) => (
+        <Link
+          key={one}
+          to={withParams(search, { show: one === "all" ? null : one })}
+          preventScrollReset
+          aria-current={one === show ? "true" : undefined}
+          className="inline-flex min-h-9 items-center gap-1.5 rounded-sm border border-transparent px-2.5 hover:bg-inset aria-[current]:border-copper aria-[current]:bg-copper-wash pointer-coarse:min-h-11"
+        >
+          {showWords[one]}
+          <span className="text-ink-soft tabular-nums">
+            {lines.filter((line) => isShown(line, one)).length}
+          </span>
+        </Link>
+      ))}
+    </nav>
+  );
+}
+
+function FamilyRows({ family, lines, base }: { family: CheckFamily; lines: readonly Line[]; base: string }) {
+  return (
+    <tbody role="rowgroup" className="max-md:block">
+      <tr role="row" className="border-y border-rule-strong bg-inset max-md:block">
+        <th
+          role="rowheader"
+          scope="rowgroup"
+          colSpan={6}
+          id={`family-${family}`}
+          className="px-3 py-1.5 text-left text-sm font-semibold max-md:block"
+        >
+          {familyTitles[family]}
+        </th>
+      </tr>
+      {lines.map((line) => (
+        <LineRow key={line.check.key} line={line} href={checkHref(base, line.check.key)} />
+      ))}
+    </tbody>
+  );
+}
+
+const cell = "px-3 py-2 align-top max-md:px-0 max-md:py-0.5";
+
+function LineRow({ line, href }: { line: Line; href: string }) {
+  const { check, observation } = line;
+  const open = line.findings.filter((finding) => finding.closing === null);
+  return (
+    <tr
+      role="row"
+      className="relative border-b border-rule hover:bg-copper-wash/60 has-focus-visible:bg-copper-wash/60 max-md:flex max-md:flex-col max-md:px-3 max-md:py-3"
+    >
+      <th role="rowheader" scope="row" className={`${cell} text-left font-medium max-md:text-base`}>
+        <Link
+          to={href}
+          prefetch="intent"
+          className="underline-offset-4 after:absolute after:inset-0 hover:underline"
+        >
+          {check.title}
+        </Link>
+        {check.computed && check.computed.verdict !== "pass" ? (
+          <span className="block text-sm font-normal text-ink-soft">
+            {check.computed.verdict === "fail" ? "By the map alone: fails" : "By the map alone: not known"}
+          </span>
+        ) : null}
+        {open.map((finding) => (
+          <span key={finding.id} className="mt-1 mr-2 inline-block">
+            <SeverityBadge severity={finding.severity} label={`Finding ${finding.number}`} />
+          </span>
+        ))}
+      </th>
+      <td role="cell" className={`${cell} tabular-nums`}>
+        {check.asks.kind === "reading" ? (
+          <span className="whitespace-nowrap">{limitSigns(check.asks.limit)}</span>
+        ) : (
+          <span className="text-ink-soft">by eye and hand</span>
+        )}
+      </td>
+      <td role="cell" className={`${cell} tabular-nums`}>
+        {observation ? (
+          <>
+            <span className="font-medium">{readingText(observation)}</span>
+            {line.judged ? (
+              <span className="block text-ink-soft">
+                {uncertaintyText(
+                  line.judged.expandedUncertainty,
+                  check.asks.kind === "reading" ? check.asks.limit.unit : "",
+                )}
+              </span>
+            ) : null}
+            {observation.carried ? (
+              <span className="block text-ink-soft">carried over from revision {observation.revision}</span>
+            ) : null}
+            {observation.reason ? <span className="block text-ink-soft">{observation.reason}</span> : null}
+          </>
+        ) : (
+          <span className="text-ink-soft">
+            –<span className="sr-only">nothing yet</span>
+          </span>
+        )}
+      </td>
+      <td role="cell" className={`${cell} text-ink-soft`}>
+        {observation?.instrument ? `${observation.instrument.name}, ${observation.instrument.serial}` : null}
+      </td>
+      <td role="cell" className={`${cell} whitespace-nowrap`}>
+        <PhotoState line={line} />
+      </td>
+      <td role="cell" className={cell}>
+        <LineVerdictBadge verdict={line.verdict} />
+      </td>
+    </tr>
+  );
+}
+
+function PhotoState({ line }: { line: Line }) {
+  if (line.photoMissing) {
+    return (
+      <span className="inline-flex items-center gap-1.5 font-medium text-undecided">
+        <CameraOff aria-hidden size={16} /> missing
+      </span>
+    );
+  }
+  if (line.photos.length > 0) {
+    return (
+      <span className="inline-flex items-center gap-1.5">
+        <Camera aria-hidden size={16} /> {line.photos.length}
+        <span className="sr-only"> photos</span>
+      </span>
+    );
+  }
+  return <span className="text-ink-soft">{line.check.photo === "optional" ? "if useful" : ""}</span>;
+}
