@@ -1,5 +1,6 @@
 import { spawnSync } from "node:child_process";
-import { existsSync, mkdirSync, mkdtempSync, renameSync, rmSync, writeFileSync } from "node:fs";
+import { createHash } from "node:crypto";
+import { existsSync, lstatSync, mkdirSync, renameSync, rmSync, writeFileSync } from "node:fs";
 import { hostname, tmpdir } from "node:os";
 import { join } from "node:path";
 import mysql from "mysql2/promise";
@@ -204,7 +205,13 @@ function socketPath(folder: string): { path: string; remove(): void } {
   if (Buffer.byteLength(beside) <= LONGEST_SOCKET_PATH) {
     return { path: beside, remove: () => rmSync(beside, { force: true }) };
   }
-  const short = mkdtempSync(join(tmpdir(), "mg-"));
+  // The same name at every start, so that a killed run leaves nothing that is not used again.
+  const short = join(tmpdir(), `mg-${createHash("sha256").update(folder).digest("hex").slice(0, 16)}`);
+  mkdirSync(short, { recursive: true, mode: 0o700 });
+  const { uid, mode } = lstatSync(short);
+  if (uid !== process.getuid?.() || (mode & 0o7777) !== 0o700) {
+    throw new SetupError(`${short} belongs to somebody else; MariaDB's socket was to go there.`);
+  }
   return { path: join(short, "s"), remove: () => rmSync(short, { recursive: true, force: true }) };
 }
 
