@@ -45,6 +45,21 @@ function fontBytes(file: string): Promise<Uint8Array> {
   return bytes;
 }
 
+type Parsed = ReturnType<typeof fontkit.create>;
+const parsed = new WeakMap<Uint8Array, Parsed>();
+
+/** Parsing takes longer than setting a whole record; what is parsed holds no state of a document. */
+const parseOnce = {
+  create(bytes: Uint8Array): Parsed {
+    let font = parsed.get(bytes);
+    if (!font) {
+      font = fontkit.create(bytes);
+      parsed.set(bytes, font);
+    }
+    return font;
+  },
+};
+
 interface Face {
   font: PDFFont;
   holds: ReadonlySet<number>;
@@ -69,7 +84,7 @@ export interface Typeface {
 
 /** Embeds the fonts (each as a subset of what gets used) and returns what sets text in them. */
 export async function loadTypeface(document: PDFDocument): Promise<Typeface> {
-  document.registerFontkit(fontkit);
+  document.registerFontkit(parseOnce);
   const faces = {
     regular: await embedAll(document, files.regular),
     bold: await embedAll(document, files.bold),
@@ -95,8 +110,22 @@ export async function loadTypeface(document: PDFDocument): Promise<Typeface> {
     return found;
   }
 
+  const widths = new Map<PDFFont, Map<string, number>>();
+  /** Character by character and remembered: without ligatures and kerning the sum is the text's width. */
+  function runWidth(font: PDFFont, text: string): number {
+    let known = widths.get(font);
+    if (!known) widths.set(font, (known = new Map<string, number>()));
+    let sum = 0;
+    for (const character of text) {
+      let width = known.get(character);
+      if (width === undefined) known.set(character, (width = font.widthOfTextAtSize(character, 1)));
+      sum += width;
+    }
+    return sum;
+  }
+
   const width: Typeface["width"] = (text, { weight = "regular", size }) =>
-    runs(text, weight).reduce((sum, run) => sum + run.font.widthOfTextAtSize(run.text, size), 0);
+    runs(text, weight).reduce((sum, run) => sum + size * runWidth(run.font, run.text), 0);
 
   return {
     width,
@@ -105,7 +134,7 @@ export async function loadTypeface(document: PDFDocument): Promise<Typeface> {
       let at = x;
       for (const run of runs(text, weight)) {
         page.drawText(run.text, { x: at, y, size, font: run.font, color });
-        at += run.font.widthOfTextAtSize(run.text, size);
+        at += size * runWidth(run.font, run.text);
       }
     },
     replacedAny: () => replaced,
