@@ -33,6 +33,11 @@ export default [
     // stewardship
     route("people", "routes/stewardship/people.tsx"),
     route("people/:person", "routes/stewardship/person.tsx"),
+    route("licences", "routes/stewardship/licences.tsx"),
+    route("instruments", "routes/stewardship/instruments.tsx"),
+    route("instruments/new", "routes/stewardship/instrument-new.tsx"),
+    route("instruments/:instrument", "routes/stewardship/instrument.tsx"),
+    route("settings", "routes/stewardship/settings.tsx"),
   ]),
 
   ...prefix("api", [

@@ -1,0 +1,30 @@
+import { z } from "zod";
+
+const text = (missing: string, most: number) =>
+  z.string({ error: missing }).trim().min(1, missing).max(most, `At most ${most} characters.`);
+const day = (missing: string) => z.iso.date({ error: missing });
+
+export const addLicenceSchema = z
+  .object({
+    intent: z.literal("add"),
+    personId: z.number({ error: "Choose the electrician." }).int().positive(),
+    number: text("Enter the licence’s number.", 60),
+    authority: text("Enter who issued it.", 120),
+    validFrom: day("Enter the first day on which it counts."),
+    validTo: day("Enter the last day on which it counts."),
+    maxSupplyVolts: z
+      .number({ error: "Enter a whole number of volts, such as 230." })
+      .int("Enter a whole number of volts.")
+      .min(1, "Enter a voltage above zero.")
+      .max(1000, "Mainsgate is for equipment up to 1000 V."),
+    coversBatteries: z.boolean().default(false),
+  })
+  .refine(({ validFrom, validTo }) => validFrom <= validTo, {
+    path: ["validTo"],
+    error: "The last day lies before the first.",
+  });
+
+export const revokeLicenceSchema = z.object({
+  intent: z.literal("revoke"),
+  licence: z.number().int().positive(),
+});
