@@ -72,6 +72,10 @@ function runToEnd(
 ): Promise<{ failed: boolean; text: string }> {
   return new Promise((resolve, reject) => {
     const child = spawn(command, args, { cwd, env: { ...process.env, ...variables } });
+    // A build must not go on by itself and change the folder under the next start.
+    const end = () => child.kill();
+    process.once("exit", end);
+    child.once("exit", () => process.off("exit", end));
     let text = "";
     child.stdout.on("data", (chunk) => (text += chunk));
     child.stderr.on("data", (chunk) => (text += chunk));

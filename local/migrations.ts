@@ -74,3 +74,15 @@ export async function isEmptyDatabase(ownerUrl: string): Promise<boolean> {
     await connection.end();
   }
 }
+
+/** Throws all tables away. Only for a database that the start command made and nobody has worked in. */
+export async function recreateDatabase(ownerUrl: string): Promise<void> {
+  const name = mysql.escapeId(new URL(ownerUrl).pathname.slice(1));
+  const connection = await mysql.createConnection({ uri: ownerUrl });
+  try {
+    await connection.query(`DROP DATABASE ${name}`);
+    await connection.query(`CREATE DATABASE ${name}`);
+  } finally {
+    await connection.end();
+  }
+}

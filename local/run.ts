@@ -1,7 +1,7 @@
-import { mkdirSync } from "node:fs";
+import { existsSync, mkdirSync, rmSync, writeFileSync } from "node:fs";
 import { join, resolve as resolvePath } from "node:path";
 import { buildIsCurrent, buildProduct } from "./build";
-import { applyMigrations, isEmptyDatabase } from "./migrations";
+import { applyMigrations, isEmptyDatabase, recreateDatabase } from "./migrations";
 import { freePort, type RunningProcess, startChild } from "./processes";
 import { takeRunLock } from "./run-lock";
 import { seed } from "./run-seed";
@@ -22,29 +22,29 @@ export async function runMainsgate({ root, mode }: { root: string; mode: RunMode
   const folder = given ? resolvePath(given) : join(root, ".data");
   const uploadsFolder = given ? join(folder, "uploads") : join(root, "uploads-local");
   const lock = takeDataFolder(folder);
-  const stopping = new Promise<string>((resolve) => {
-    for (const signal of ["SIGINT", "SIGTERM", "SIGHUP"] as const) process.on(signal, () => resolve(signal));
+  const stopRequested = new Promise<never>((_, reject) => {
+    for (const signal of ["SIGINT", "SIGTERM", "SIGHUP"] as const) {
+      process.on(signal, () => reject(new StopRequested()));
+    }
   });
+  // Nobody may be waiting for it yet when it comes.
+  stopRequested.catch(() => undefined);
+  const orStop = <T>(work: Promise<T>): Promise<T> => Promise.race([work, stopRequested]);
+
   let services: BackingServices | undefined;
   let server: RunningProcess | undefined;
   try {
     const begin = performance.now();
+    // Not cut short: what was half started could not be stopped.
     services = await startBackingServices({
       root,
       folder,
       uploadsFolder,
       ports: { mailPage: PREFERRED_MAIL_PAGE_PORT },
     });
-    const ownerUrl = services.mariadb.ownerUrl();
-    await step(
-      "Apply migrations",
-      () => applyMigrations(root, ownerUrl),
-      (count) => `${count} new`,
-    );
-
     const port = await freePort(process.env.PORT ? Number(process.env.PORT) : PREFERRED_PORT);
     const address = `http://localhost:${port}`;
-    const env: NodeJS.ProcessEnv = {
+    const variables: NodeJS.ProcessEnv = {
       APP_URL: address,
       DEMO_MAIL_URL: services.mail.webAddress,
       ...services.variables,
@@ -52,40 +52,61 @@ export async function runMainsgate({ root, mode }: { root: string; mode: RunMode
       PORT: String(port),
       NODE_ENV: mode === "dev" ? "development" : "production",
     };
-    const childEnv = { ...process.env, ...env };
-    if (await isEmptyDatabase(ownerUrl)) await step("Put in the demo workshop", () => seed(root, childEnv));
-    if (mode === "serve" && !buildIsCurrent(root, "build"))
-      await step("Build", () => buildProduct(root, "build"));
+    const env = { ...process.env, ...variables };
+    await orStop(prepareDatabase(root, folder, services.mariadb.ownerUrl(), env));
+    if (mode === "serve" && !buildIsCurrent(root, "build")) {
+      await orStop(step("Build", () => buildProduct(root, "build")));
+    }
     if (mode === "services") {
       lock.tellAddress("(services only)");
-      console.log(
-        `\n${Object.entries(env)
-          .map(([name, value]) => `${name}='${value}'`)
-          .join("\n")}\n`,
-      );
-    } else {
-      server = await step(
-        "Start the server",
-        () => serve(root, childEnv, mode === "dev"),
-        () => address,
-      );
-      lock.tellAddress(address);
-      console.log(`  Ready after ${((performance.now() - begin) / 1000).toFixed(1)} s\n`);
-      printWelcome(address, services.mail.webAddress);
+      for (const [name, value] of Object.entries(variables)) console.log(`${name}='${value}'`);
+      await stopRequested;
     }
-    const ended = server?.exited.then((how) => ({ how }));
-    const why = await (ended ? Promise.race([stopping, ended]) : stopping);
-    if (typeof why !== "string")
-      throw new SetupError(`The server ended by itself (${why.how}). Everything else stops too.`);
-    console.log("\nStopping");
+    server = await step(
+      "Start the server",
+      () => serve(root, env, mode === "dev"),
+      () => address,
+    );
+    lock.tellAddress(address);
+    console.log(`  Ready after ${((performance.now() - begin) / 1000).toFixed(1)} s\n`);
+    printWelcome(address, services.mail.webAddress);
+    const how = await orStop(server.exited);
+    throw new SetupError(`The server ended by itself (${how}). Everything else stops too.`);
   } catch (error) {
-    reportFailure(error);
+    if (error instanceof StopRequested) console.log("\nStopping");
+    else reportFailure(error);
   } finally {
     if (server !== undefined) await step("Stop the server", () => server?.stop());
     if (services !== undefined) await step("Stop mail, S3 and MariaDB", () => services?.stop());
     lock.release();
   }
   process.exit();
+}
+
+class StopRequested extends Error {}
+
+/**
+ * Applies the migrations, and puts the demo into a database in which nobody has worked yet. A note in the data
+ * folder tells a demo that was cut off half-way: it is then started over.
+ */
+async function prepareDatabase(
+  root: string,
+  folder: string,
+  ownerUrl: string,
+  env: NodeJS.ProcessEnv,
+): Promise<void> {
+  const halfSeeded = join(folder, "demo-is-being-put-in");
+  if (existsSync(halfSeeded)) await step("Clear a half-made demo", () => recreateDatabase(ownerUrl));
+  await step(
+    "Apply migrations",
+    () => applyMigrations(root, ownerUrl),
+    (count) => `${count} new`,
+  );
+  if (await isEmptyDatabase(ownerUrl)) {
+    writeFileSync(halfSeeded, "");
+    await step("Put in the demo workshop", () => seed(root, env));
+  }
+  rmSync(halfSeeded, { force: true });
 }
 
 function takeDataFolder(folder: string) {

@@ -2,6 +2,8 @@
 // that it calls read the environment once.
 import { seedDemo } from "./seed";
 
+// Without the parent nobody would learn how it went.
+process.once("disconnect", () => process.exit(1));
 await seedDemo();
 process.send?.({ ready: true });
 process.exit(0);
