@@ -1,16 +1,17 @@
 /**
- * A button that asks before it does something that cannot be taken back. The form is yours: a fetcher's, or one that
- * goes to another page.
+ * A button that asks before it does something that cannot be taken back. It stays open with the action's sentences
+ * when that refuses (./refusal tells the shapes), and closes when it was done or led elsewhere.
  *   <ConfirmDialog trigger="Withdraw the record" title="Withdraw record R-0007?" confirm="Withdraw"
  *     action="/records/7/withdraw" fields={{ intent: "withdraw", version: "3" }}>
  *     The label's page will say at once that this unit must not be plugged in.
  *   </ConfirmDialog>
  */
-import { useEffect, useId, useState, type ReactNode } from "react";
+import { useEffect, useId, useRef, useState, type ReactNode } from "react";
 import { useFetcher } from "react-router";
 import { Button, type ButtonSize, type ButtonVariant } from "./button";
 import { Dialog } from "./dialog";
 import type { IconType } from "./icon-type";
+import { refusalsIn } from "./refusal";
 
 export interface ConfirmDialogProps {
   trigger: ReactNode;
@@ -41,15 +42,20 @@ export function ConfirmDialog({
   children,
 }: ConfirmDialogProps) {
   const [open, setOpen] = useState(false);
-  const fetcher = useFetcher<{ message?: string }>();
   const formId = useId();
+  const [attempt, setAttempt] = useState(0);
+  // A fetcher for each opening, so that an old refusal is not shown again.
+  const fetcher = useFetcher<unknown>({ key: `${formId} ${attempt}` });
   const pending = fetcher.state !== "idle";
-  // An action answers a refusal with data that has a message; anything else means that it was done.
-  const message = fetcher.data?.message;
+  const refusals = pending ? [] : refusalsIn(fetcher.data);
+  const refused = refusals.length > 0;
+  const wasPending = useRef(false);
 
   useEffect(() => {
-    if (fetcher.state === "idle" && fetcher.data !== undefined && message === undefined) setOpen(false);
-  }, [fetcher.state, fetcher.data, message]);
+    // Done when it comes to rest without a refusal; after a redirect there is no answer at all.
+    if (wasPending.current && !pending && !refused) setOpen(false);
+    wasPending.current = pending;
+  }, [pending, refused]);
 
   return (
     <>
@@ -58,7 +64,10 @@ export function ConfirmDialog({
         variant={triggerVariant}
         size={triggerSize}
         icon={triggerIcon}
-        onClick={() => setOpen(true)}
+        onClick={() => {
+          setAttempt(attempt + 1);
+          setOpen(true);
+        }}
       >
         {trigger}
       </Button>
@@ -82,10 +91,12 @@ export function ConfirmDialog({
             <input key={name} type="hidden" name={name} value={value} />
           ))}
           {children}
-          {message && !pending ? (
-            <p role="alert" className="font-medium text-fail">
-              {message}
-            </p>
+          {refused ? (
+            <ul role="alert" className="space-y-1 font-medium text-fail">
+              {refusals.map((sentence) => (
+                <li key={sentence}>{sentence}</li>
+              ))}
+            </ul>
           ) : null}
         </fetcher.Form>
       </Dialog>
