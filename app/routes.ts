@@ -47,6 +47,7 @@ export default [
       route("maps/evaluate", "routes/api/evaluate-map.ts"),
       route("units", "routes/api/units.ts"),
       route("units/:unit", "routes/api/unit.ts"),
+      route("units/:unit/map", "routes/api/unit-map.ts"),
       route("units/:unit/files", "routes/api/unit-files.ts"),
       route("files/:file/:size", "routes/api/file.ts"),
 

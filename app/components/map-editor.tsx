@@ -1,0 +1,421 @@
+/**
+ * The energy map as rows to edit, with its drawing and the engine's answers beside them, computed in the browser while
+ * the builder types. It saves itself; see use-map-draft.
+ */
+import { Download, Plus, Redo2, Undo2 } from "lucide-react";
+import { useCallback, useDeferredValue, useEffect, useMemo, useState } from "react";
+import { useBlocker } from "react-router";
+import { analyse } from "~/engine/analyse";
+import type { Statement } from "~/engine/analysis";
+import { elementKinds, elementKindList } from "~/engine/elements";
+import type { ElementKind } from "~/engine/energy-map";
+import type { Problem } from "~/engine/problem";
+import type { RuleSet } from "~/engine/rule-set";
+import type { UnitFacts } from "~/engine/unit-facts";
+import { AddConductor, ConductorRow, focusSoon } from "./map-editor-conductor";
+import { ElementRow } from "./map-editor-element";
+import { isTaken, nextElementId, nextId } from "./map-editor-state";
+import { MapDiagram } from "./map-diagram";
+import { MapConflict, MapSaveLine } from "./map-save-line";
+import { ImportButton, MapStart } from "./map-start";
+import { StatementList } from "./statement-list";
+import { useMapDraft, type MapDraftOptions } from "./use-map-draft";
+import { Button } from "./ui/button";
+import { Sheet } from "./ui/sheet";
+import { Time } from "./ui/time";
+
+export interface MapEditorProps extends MapDraftOptions {
+  facts: UnitFacts;
+  ruleSet: RuleSet;
+  /** Name of the exported file, without its ending. */
+  exportName: string;
+  /** Leads on once everything is saved. */
+  onContinue: () => void;
+}
+
+const groups: { group: string; title: string }[] = [
+  { group: "source", title: "Sources" },
+  { group: "change", title: "Change of voltage" },
+  { group: "protect", title: "Protection" },
+  { group: "switch", title: "Switches" },
+  { group: "use", title: "Use" },
+  { group: "suppress", title: "Suppression and discharge" },
+  { group: "earth", title: "Earth and touchable parts" },
+];
+
+const noProblems: readonly Problem[] = [];
+
+export function MapEditor({ facts, ruleSet, exportName, onContinue, ...draftOptions }: MapEditorProps) {
+  const draft = useMapDraft(draftOptions);
+  const { state, act, save } = draft;
+  const { map } = state;
+  const [open, setOpen] = useState<ReadonlySet<string>>(new Set());
+  const [begun, setBegun] = useState(map.elements.length > 0);
+  const [pointed, setPointed] = useState<Statement | null>(null);
+
+  // The rows answer at once; the drawing and the engine follow when the browser has a moment.
+  const deferred = useDeferredValue(map);
+  const analysis = useMemo(() => analyse(deferred, ruleSet, facts), [deferred, ruleSet, facts]);
+  const problems = useMemo(() => byRow(analysis.problems), [analysis.problems]);
+  const sources = useMemo(
+    () =>
+      map.elements
+        .filter((element) => ["source", "change"].includes(elementKinds[element.kind].group))
+        .map((element) => element.id),
+    [map.elements],
+  );
+  const taken = useCallback((id: string) => isTaken(map, id), [map]);
+  const toggle = useCallback((id: string) => setOpen((before) => toggled(before, id)), []);
+
+  const unsaved = save.kind === "unsaved" || save.kind === "saving";
+  useSaveBeforeLeaving(unsaved, draft.flush);
+
+  const jumpTo = useCallback((id: string, field: string | null = null) => {
+    setOpen((before) => new Set(before).add(id));
+    focusRow(id, field);
+  }, []);
+
+  useEffect(() => {
+    const target = /^#(?:element|conductor)-([A-Za-z0-9_-]{1,16}?)(?:-([A-Za-z][A-Za-z0-9]*))?$/.exec(
+      location.hash,
+    );
+    if (target?.[1]) jumpTo(target[1], target[2] ?? null);
+  }, [jumpTo]);
+
+  function addElement(kind: ElementKind) {
+    const id = nextElementId(map, kind);
+    act({ type: "add-element", kind, id });
+    setOpen((before) => new Set(before).add(id));
+    focusSoon(`element-${id}-label`);
+  }
+
+  if (!begun && map.elements.length === 0) {
+    return (
+      <div className="space-y-4">
+        <KeptNotice draft={draft} onTaken={() => setBegun(true)} />
+        <MapStart
+          onStart={(started, what) => {
+            act({ type: "replace", map: started, what });
+            setBegun(true);
+          }}
+          onBlank={() => setBegun(true)}
+        />
+      </div>
+    );
+  }
+
+  const lastStep = state.past.at(-1);
+  const blocking = analysis.problems.filter((problem) => problem.blocking);
+  return (
+    <div
+      className="grid items-start gap-5 xl:grid-cols-[minmax(0,1fr)_27rem]"
+      onKeyDown={(event) => {
+        // Inside a text field the keys belong to the text.
+        if (!(event.ctrlKey || event.metaKey) || event.key.toLowerCase() !== "z") return;
+        if (event.target instanceof HTMLInputElement || event.target instanceof HTMLTextAreaElement) return;
+        event.preventDefault();
+        act({ type: event.shiftKey ? "redo" : "undo" });
+      }}
+    >
+      <div className="min-w-0 space-y-4">
+        <KeptNotice draft={draft} onTaken={() => setBegun(true)} />
+        {save.kind === "conflict" ? <MapConflict message={save.message} onChoose={draft.choose} /> : null}
+        <div className="sticky top-0 z-10 flex flex-wrap items-center justify-between gap-2 border border-rule bg-sheet px-3 py-2">
+          <MapSaveLine state={save} />
+          <div className="flex flex-wrap items-center gap-2">
+            <Button
+              type="button"
+              icon={Undo2}
+              disabled={!lastStep}
+              title={lastStep ? `Undo: ${lastStep.what}` : "Nothing to undo"}
+              onClick={() => act({ type: "undo" })}
+            >
+              Undo
+            </Button>
+            <Button
+              type="button"
+              icon={Redo2}
+              disabled={state.future.length === 0}
+              onClick={() => act({ type: "redo" })}
+            >
+              Redo
+            </Button>
+            <Button
+              type="button"
+              variant="primary"
+              onClick={async () => {
+                await draft.flush();
+                onContinue();
+              }}
+            >
+              Review and submit
+            </Button>
+          </div>
+        </div>
+        <p role="status" className="sr-only">
+          {lastStep?.what}
+        </p>
+
+        <Sheet
+          title={`Elements (${map.elements.length})`}
+          lead="Where energy comes from, what it passes and where it ends."
+          flush
+        >
+          {map.elements.length === 0 ? (
+            <p className="px-4 py-4 text-ink-soft">No element yet. Begin with where the energy enters.</p>
+          ) : (
+            <ol>
+              {map.elements.map((element) => (
+                <ElementRow
+                  key={element.id}
+                  element={element}
+                  open={open.has(element.id)}
+                  problems={problems.get(element.id) ?? noProblems}
+                  sources={sources}
+                  taken={taken}
+                  onToggle={toggle}
+                  onAct={act}
+                  onDuplicate={(original) => {
+                    const as = nextElementId(map, original.kind);
+                    act({ type: "duplicate", subject: "element", id: original.id, as });
+                    setOpen((before) => new Set(before).add(as));
+                    focusSoon(`element-${as}-label`);
+                  }}
+                />
+              ))}
+            </ol>
+          )}
+          <AddElement onAdd={addElement} />
+        </Sheet>
+
+        <Sheet
+          title={`Connections (${map.conductors.length})`}
+          lead="Each conductor from terminal to terminal, with what limits its current."
+          flush
+        >
+          <ol>
+            {map.conductors.map((conductor) => (
+              <ConductorRow
+                key={conductor.id}
+                conductor={conductor}
+                elements={map.elements}
+                problems={problems.get(conductor.id) ?? noProblems}
+                taken={taken}
+                onAct={act}
+                onDuplicate={(original) => {
+                  const as = nextId(map, "W");
+                  act({ type: "duplicate", subject: "conductor", id: original.id, as });
+                  focusSoon(`conductor-${as}-from`);
+                }}
+              />
+            ))}
+          </ol>
+          <AddConductor map={map} onAct={act} />
+        </Sheet>
+
+        <div className="flex flex-wrap gap-2">
+          <ImportButton
+            onImport={(imported) => act({ type: "replace", map: imported, what: "Imported a map" })}
+          />
+          <Button
+            type="button"
+            icon={Download}
+            onClick={() => exportMap(JSON.stringify(map, null, 2), exportName)}
+          >
+            Export JSON
+          </Button>
+        </div>
+        <details className="border border-rule bg-sheet px-4 py-3">
+          <summary className="font-medium">Begin again from a starter</summary>
+          <div className="pt-3">
+            <MapStart onStart={(started, what) => act({ type: "replace", map: started, what })} />
+          </div>
+        </details>
+      </div>
+
+      <div className="min-w-0 space-y-4 xl:sticky xl:top-4 xl:max-h-[calc(100dvh-2rem)] xl:overflow-y-auto">
+        <Sheet title="Drawing" headingLevel={2} flush>
+          <MapDiagram map={deferred} analysis={analysis} highlight={pointed} />
+        </Sheet>
+        <Sheet
+          title={
+            blocking.length === 0
+              ? "Nothing stands against submitting"
+              : `Before submitting: ${blocking.length}`
+          }
+          lead={
+            blocking.length === 0
+              ? "The map is complete. What the engine says of it is below; the bench decides."
+              : "The map can be submitted once these are filled in or put right."
+          }
+        >
+          <ProblemList problems={analysis.problems} onJump={jumpTo} />
+        </Sheet>
+        <Sheet
+          title="What the engine says"
+          lead={`Computed from this map by “${ruleSet.title}”. It advises; measuring and local codes decide.`}
+        >
+          <StatementList statements={analysis.statements} onPoint={setPointed} onJump={(id) => jumpTo(id)} />
+        </Sheet>
+      </div>
+    </div>
+  );
+}
+
+function KeptNotice({ draft, onTaken }: { draft: ReturnType<typeof useMapDraft>; onTaken: () => void }) {
+  if (!draft.kept) return null;
+  return (
+    <div role="alert" className="space-y-3 border-l-4 border-undecided bg-undecided-wash px-4 py-3">
+      <p>
+        <span className="font-semibold">This device holds changes that did not reach the server</span>, typed{" "}
+        <Time at={draft.kept.at} />.
+      </p>
+      <div className="flex flex-wrap gap-2">
+        <Button
+          type="button"
+          variant="primary"
+          onClick={() => {
+            draft.decideKept("take");
+            onTaken();
+          }}
+        >
+          Bring them back
+        </Button>
+        <Button type="button" onClick={() => draft.decideKept("drop")}>
+          Leave them out
+        </Button>
+      </div>
+    </div>
+  );
+}
+
+function AddElement({ onAdd }: { onAdd: (kind: ElementKind) => void }) {
+  const [kind, setKind] = useState<ElementKind | "">("");
+  return (
+    <form
+      className="flex flex-wrap items-end gap-2 px-3 py-3"
+      onSubmit={(event) => {
+        event.preventDefault();
+        if (kind !== "") onAdd(kind);
+      }}
+    >
+      <div className="min-w-44 flex-1">
+        <label htmlFor="new-element-kind" className="block text-xs font-medium text-ink-soft">
+          New element
+        </label>
+        <select
+          id="new-element-kind"
+          value={kind}
+          onChange={(event) =>
+            setKind(elementKindList.find((each) => each === event.currentTarget.value) ?? "")
+          }
+          className="control-box min-h-9 px-2 py-1 text-sm pointer-coarse:min-h-11"
+        >
+          <option value="">Choose a kind</option>
+          {groups.map(({ group, title }) => (
+            <optgroup key={group} label={title}>
+              {elementKindList
+                .filter((each) => elementKinds[each].group === group)
+                .map((each) => (
+                  <option key={each} value={each}>
+                    {elementKinds[each].label}
+                  </option>
+                ))}
+            </optgroup>
+          ))}
+        </select>
+      </div>
+      <Button type="submit" icon={Plus} disabled={kind === ""}>
+        Add element
+      </Button>
+    </form>
+  );
+}
+
+function ProblemList({
+  problems,
+  onJump,
+}: {
+  problems: readonly Problem[];
+  onJump: (id: string, field: string | null) => void;
+}) {
+  const sorted = [...problems].sort((a, b) => Number(b.blocking) - Number(a.blocking));
+  if (sorted.length === 0) return <p className="text-sm text-ink-soft">Every datum is filled in.</p>;
+  return (
+    <ul className="max-h-72 space-y-1 overflow-y-auto text-sm" tabIndex={0} aria-label="What is missing">
+      {sorted.map((problem) => {
+        const { subject } = problem;
+        return (
+          <li key={`${subject?.id ?? ""} ${problem.field ?? ""} ${problem.text}`} className="flex gap-2">
+            <span className={`shrink-0 ${problem.blocking ? "font-semibold text-defect" : "text-ink-soft"}`}>
+              {problem.blocking ? "Needed" : "Better"}
+            </span>
+            {subject ? (
+              <button
+                type="button"
+                className="text-link min-w-0 text-left"
+                onClick={() => onJump(subject.id, problem.field)}
+              >
+                {problem.text}
+              </button>
+            ) : (
+              <span>{problem.text}</span>
+            )}
+          </li>
+        );
+      })}
+    </ul>
+  );
+}
+
+/** Stays on the page until what was typed is on the server; when it can't be reached, the browser keeps it. */
+function useSaveBeforeLeaving(unsaved: boolean, flush: () => Promise<boolean>) {
+  const blocker = useBlocker(
+    ({ currentLocation, nextLocation }) => unsaved && currentLocation.pathname !== nextLocation.pathname,
+  );
+  useEffect(() => {
+    if (blocker.state !== "blocked") return;
+    void flush().then(() => blocker.proceed());
+  }, [blocker, flush]);
+}
+
+function byRow(problems: readonly Problem[]): Map<string, Problem[]> {
+  const rows = new Map<string, Problem[]>();
+  for (const problem of problems) {
+    if (!problem.subject) continue;
+    const row = rows.get(problem.subject.id);
+    if (row) row.push(problem);
+    else rows.set(problem.subject.id, [problem]);
+  }
+  return rows;
+}
+
+function toggled(open: ReadonlySet<string>, id: string): ReadonlySet<string> {
+  const next = new Set(open);
+  if (!next.delete(id)) next.add(id);
+  return next;
+}
+
+/** Looks for the field, then for the row itself; a row may be an element's or a connection's. */
+function focusRow(id: string, field: string | null) {
+  requestAnimationFrame(() => {
+    const target =
+      (field === null
+        ? null
+        : (document.getElementById(`element-${id}-${field}`) ??
+          document.getElementById(`conductor-${id}-${field}`))) ??
+      document.getElementById(`element-${id}-open`) ??
+      document.getElementById(`conductor-${id}-from`);
+    target?.focus();
+    target?.scrollIntoView({ block: "center" });
+  });
+}
+
+function exportMap(json: string, name: string) {
+  const url = URL.createObjectURL(new Blob([json], { type: "application/json" }));
+  const link = document.createElement("a");
+  link.href = url;
+  link.download = `${name}.json`;
+  link.click();
+  URL.revokeObjectURL(url);
+}
