@@ -1,0 +1,63 @@
+import { desc, eq } from "drizzle-orm";
+import { type Database, tables } from "~/db/client.server";
+import type { SigningConditions } from "~/db/schema/decisions";
+import { dayIn } from "~/services/context.server";
+import { recordCautions } from "~/services/records/record-format";
+import { type UnitState, validity, type Validity } from "~/workflow/states";
+
+const { decisions, records, units, workshops } = tables;
+
+/** What anybody may see who scans a unit's code: how it stands and under which conditions. No person is named. */
+export interface PublicRecord {
+  unitNumber: number;
+  unitName: string;
+  workshopName: string;
+  demo: boolean;
+  state: UnitState;
+  validity: Validity;
+  conditions: SigningConditions | null;
+  /** The day of the decision, in the workshop's calendar. */
+  decidedOn: string;
+  cautions: readonly string[];
+}
+
+/** The public face of the record behind a code; null when there is none. */
+export async function findPublicRecord(db: Database, code: string, now: Date): Promise<PublicRecord | null> {
+  if (!/^[a-z0-9]{8,32}$/.test(code)) return null;
+  const [row] = await db
+    .select({
+      recordId: records.id,
+      unitId: units.id,
+      unitNumber: units.number,
+      unitName: units.name,
+      state: units.state,
+      workshopName: workshops.name,
+      demo: workshops.isDemo,
+      timeZone: workshops.timeZone,
+      conditions: decisions.conditions,
+      recheckOn: decisions.recheckOn,
+      decidedAt: decisions.decidedAt,
+    })
+    .from(records)
+    .innerJoin(decisions, eq(decisions.id, records.decisionId))
+    .innerJoin(units, eq(units.id, records.unitId))
+    .innerJoin(workshops, eq(workshops.id, records.workshopId))
+    .where(eq(records.publicCode, code));
+  if (!row) return null;
+  const [latest] = await db
+    .select({ id: records.id })
+    .from(records)
+    .where(eq(records.unitId, row.unitId))
+    .orderBy(desc(records.id))
+    .limit(1);
+  const { recordId, unitId: _, timeZone, recheckOn, decidedAt, ...shown } = row;
+  // An earlier record of a unit that was decided on again says nothing about it any more.
+  const state = latest?.id === recordId ? row.state : "superseded";
+  return {
+    ...shown,
+    state,
+    validity: validity(state, recheckOn, dayIn(timeZone, now)),
+    decidedOn: dayIn(timeZone, decidedAt),
+    cautions: recordCautions,
+  };
+}
