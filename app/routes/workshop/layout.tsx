@@ -1,3 +1,4 @@
+import type { ReactNode } from "react";
 import { data, isRouteErrorResponse, Outlet, useMatches, useRouteError } from "react-router";
 import { AppShell } from "~/components/shell/app-shell";
 import { ErrorPage } from "~/components/shell/error-page";
@@ -10,6 +11,7 @@ import { listWorkshops } from "~/services/people/workshops.server";
 import { roleTitles } from "~/workflow/roles";
 import type { Route } from "./+types/layout";
 import { navigationFor } from "./navigation";
+import { useQueueCounts, type WaitingCounts } from "./use-queue-counts";
 
 export const middleware: Route.MiddlewareFunction[] = [workshopMiddleware];
 
@@ -28,9 +30,10 @@ export const meta: Route.MetaFunction = ({ loaderData }) => [
 ];
 
 export default function WorkshopLayout({ loaderData }: Route.ComponentProps) {
+  const counts = useQueueCounts(loaderData.workshop.slug);
   return (
-    <Shell {...loaderData}>
-      <Outlet />
+    <Shell {...loaderData} counts={counts}>
+      <Outlet context={counts} />
     </Shell>
   );
 }
@@ -46,7 +49,7 @@ export function ErrorBoundary({ loaderData }: Route.ErrorBoundaryProps) {
     );
   }
   return (
-    <Shell {...loaderData}>
+    <Shell {...loaderData} counts={null}>
       {isRouteErrorResponse(error) ? <title>{`Error ${error.status} · Mainsgate`}</title> : null}
       <ErrorPage error={error} homeHref={`/w/${loaderData.workshop.slug}`} />
     </Shell>
@@ -58,8 +61,9 @@ function Shell({
   workshop,
   workshops,
   flash,
+  counts,
   children,
-}: Route.ComponentProps["loaderData"] & { children: React.ReactNode }) {
+}: Route.ComponentProps["loaderData"] & { counts: WaitingCounts | null; children: ReactNode }) {
   const focus = useMatches().some(({ handle }) => asksForFocus(handle));
   return (
     <AppShell
@@ -67,7 +71,7 @@ function Shell({
       workshop={workshop}
       workshops={workshops}
       roleWords={workshop.roles.map((role) => roleTitles[role]).join(", ")}
-      navigation={navigationFor(workshop, person.id)}
+      navigation={navigationFor(workshop, person.id, counts)}
       flash={flash}
       focus={focus}
     >
