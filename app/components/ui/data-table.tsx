@@ -57,6 +57,7 @@ export function DataTable<Row>({
   empty,
 }: DataTableProps<Row>) {
   const params = new URLSearchParams(useLocation().search);
+  const sortable = columns.some((column) => column.sortable);
   if (rows.length === 0 && empty) return <>{empty}</>;
   return (
     // Explicit roles: the phone layout changes `display`, which would take a table's meaning away in some browsers.
@@ -69,7 +70,7 @@ export function DataTable<Row>({
         <thead role="rowgroup" className="max-sm:block">
           <tr
             role="row"
-            className="border-b-2 border-rule-strong bg-inset text-left max-sm:flex max-sm:flex-wrap max-sm:gap-x-4 max-sm:border-b max-sm:px-3"
+            className={`border-b-2 border-rule-strong bg-inset text-left max-sm:flex max-sm:flex-wrap max-sm:gap-x-4 max-sm:px-3 ${sortable ? "max-sm:border-b" : "max-sm:border-0"}`}
           >
             {columns.map((column) => {
               const current = sort?.by === column.id ? sort.direction : null;

@@ -59,7 +59,7 @@ export function CursorPagination({ before, after, label = "Pages", children }: C
 
 function PageNavigation({ label, children }: { label: string; children: ReactNode }) {
   return (
-    <nav aria-label={label} className="flex items-center justify-between gap-3 print:hidden">
+    <nav aria-label={label} className="flex items-center justify-between gap-3 px-3 py-2 print:hidden">
       {children}
     </nav>
   );
