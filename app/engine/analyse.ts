@@ -1,7 +1,14 @@
 import type { Analysis } from "./analysis";
+import { circuitOf } from "./circuit";
 import type { EnergyMap } from "./energy-map";
+import { analyseFusing } from "./fusing";
+import { analyseInsulation } from "./insulation";
+import { analyseIsolation } from "./isolation";
+import { viewOf } from "./map-view";
 import { mapProblems } from "./problems";
+import { analyseReverse } from "./reverse";
 import type { RuleSet } from "./rule-set";
+import { statementsOf } from "./statements";
 import type { UnitFacts } from "./unit-facts";
 
 export type { Analysis, Statement, StatementFamily, StatementLevel } from "./analysis";
@@ -9,22 +16,18 @@ export type { Problem } from "./problem";
 export type { UnitFacts } from "./unit-facts";
 
 /** Everything the engine can say of a map by itself. Never throws on a map that fits the schema. */
-export function analyse(map: EnergyMap, _ruleSet: RuleSet, facts: UnitFacts): Analysis {
+export function analyse(map: EnergyMap, ruleSet: RuleSet, facts: UnitFacts): Analysis {
+  const circuit = circuitOf(viewOf(map));
+  const { joins, ...isolation } = analyseIsolation(circuit);
+  const results = {
+    isolation,
+    reverse: analyseReverse(circuit),
+    fusing: analyseFusing(circuit, facts),
+    insulation: analyseInsulation(circuit, ruleSet, facts),
+  };
   return {
     problems: mapProblems(map, facts),
-    isolation: { sources: [], switches: [], whenOff: [], combinations: [], combinationsComplete: false },
-    reverse: { paths: [], falseIndications: [], blockingParts: [] },
-    fusing: { conductors: [], devices: [] },
-    insulation: { barriers: [] },
-    statements: [
-      {
-        id: "not-computed",
-        family: "isolation",
-        level: "unknown",
-        text: "The engine's computations are not in place yet: nothing is known of this map.",
-        elements: [],
-        conductors: [],
-      },
-    ],
+    ...results,
+    statements: statementsOf(circuit, results, joins, ruleSet, facts),
   };
 }

@@ -68,8 +68,10 @@ export interface SwitchReport {
 export interface SwitchCombination {
   /** State of each switch by id. */
   states: Record<string, "on" | "off">;
-  /** Conductors that carry a live potential, by source. */
+  /** Conductors that carry a live potential, sure or not, by source. */
   live: Record<string, string[]>;
+  /** How many combinations come to the same; the states are those of the one with fewest switches on. */
+  alike: number;
 }
 
 export interface IsolationResult {
@@ -77,7 +79,7 @@ export interface IsolationResult {
   switches: SwitchReport[];
   /** With every switch off. */
   whenOff: LiveConductor[];
-  /** Worked out one by one while there are at most eight switches; else only all off, all on and each alone. */
+  /** Every different outcome. With more than eight switches only some combinations are worked out. */
   combinations: SwitchCombination[];
   combinationsComplete: boolean;
 }
@@ -138,6 +140,8 @@ export interface DeviceReport {
   smallestAmpacityAmps: number | null;
   /** The next standard rating that would suit, A; `null`: none or not known. */
   proposedAmps: number | null;
+  /** The largest standard rating that its conductors allow, A. */
+  largestAmps: number | null;
   prospectiveAmps: number | null;
   breakingAmps: number | null;
   loadVerdict: Verdict3;
@@ -146,9 +150,18 @@ export interface DeviceReport {
   texts: string[];
 }
 
+export interface ContactReport {
+  switch: string;
+  source: string;
+  loadAmps: number | null;
+  verdict: Verdict3;
+  text: string;
+}
+
 export interface FusingResult {
   conductors: ConductorProtection[];
   devices: DeviceReport[];
+  contacts: ContactReport[];
 }
 
 export interface InsulationBarrier {
@@ -157,8 +170,9 @@ export interface InsulationBarrier {
   between: string;
   elements: string[];
   grade: "basic" | "reinforced";
-  clearanceMm: number;
-  creepageMm: number;
+  /** `null` outside the tables. */
+  clearanceMm: number | null;
+  creepageMm: number | null;
   minimumMegohms: number;
   testVolts: number;
   verdict: Verdict3;

@@ -36,7 +36,7 @@ const backupSinglePole = extended(
 const indicatorBackfed = extended(
   without(backup, "W15"),
   [],
-  [wire("W15", "S2.1a", "H1.1", "elv", 0.5, 0.2)],
+  [wire("W15", "S2.1a", "H1.1", "elv", 1.5, 0.2), wire("W16", "CH1.-", "H1.2", "elv", 1.5, 0.2)],
 );
 
 /** A 10 A fuse before wire for 3 A. */

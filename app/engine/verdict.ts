@@ -1,4 +1,5 @@
 import type { ComputedAnswer, Limit } from "./bench-check";
+import { figure } from "./figure";
 
 /** ± (percent of reading + digits of the last place), the last place being worth `resolution` in the reading's unit. */
 export interface Accuracy {
@@ -34,13 +35,6 @@ export interface Judgement {
 
 /** Share taken off an over-range reading for a minimum limit: IEC 61557-2 allows an operating uncertainty of 30 %. */
 const overRangeMargin = 0.3;
-
-/** A number as a person would write it on a record: four significant figures, no exponent in usual ranges. */
-export function figure(value: number): string {
-  if (value === 0) return "0";
-  const text = Number(value.toPrecision(4));
-  return Math.abs(text) >= 1e-4 && Math.abs(text) < 1e7 ? String(text) : value.toExponential(3);
-}
 
 /** Expanded uncertainty U (k = 2) of a reading from the instrument's accuracy. */
 export function expandedUncertainty(value: number, accuracy: Accuracy, policy: UncertaintyPolicy): number {

@@ -1,0 +1,168 @@
+import type { Circuit } from "./circuit";
+
+/** Stands for "no device limits it" in sums of flows. */
+const UNLIMITED = 1e12;
+
+export interface FlowQuestion {
+  start: number;
+  end: number;
+  /** For each link how it conducts: 0 not, 1 from a to b, 2 both ways. */
+  conducts: Uint8Array;
+  /** Currents pass through loads, lamps and batteries too. */
+  throughLoads: boolean;
+  /** Element whose own link is left out: the source that asks. */
+  exceptElement: string;
+  /** Held by the hot or the return pole: a load passes current on from any but a return node, to any but a hot one. */
+  isHot: (node: number) => boolean;
+  isReturn: (node: number) => boolean;
+  /** A link that is taken out. */
+  skip: number;
+  /** What each protective device lets through, A; a device that is not named lets everything through. */
+  capacities: ReadonlyMap<string, number>;
+}
+
+export interface Flow {
+  /** Largest current that no device stops, A; may be `Infinity`. */
+  amps: number;
+  /** Devices that together set it. */
+  devices: string[];
+}
+
+/** Largest flow between two nodes with devices as bottlenecks (augmenting shortest paths), and the smallest cut. */
+export function largestFlow(circuit: Circuit, question: FlowQuestion): Flow {
+  const { start, end } = question;
+  if (start < 0 || end < 0) return { amps: 0, devices: [] };
+  if (start === end) return { amps: Infinity, devices: [] };
+  const { ahead, back } = capacitiesOf(circuit, question);
+  const flow = new Float64Array(circuit.links.length);
+  let total = 0;
+  for (let round = 0; round < 1000; round++) {
+    const came = search(circuit, start, ahead, back, flow);
+    if ((came[end] ?? -1) < 0) return { amps: total, devices: crossing(circuit, came, ahead, back) };
+    const step = smallestResidual(circuit, came, start, end, ahead, back, flow);
+    total += step;
+    if (total >= UNLIMITED) return { amps: Infinity, devices: [] };
+    push(circuit, came, start, end, flow, step);
+  }
+  return { amps: Infinity, devices: [] };
+}
+
+function capacitiesOf(circuit: Circuit, question: FlowQuestion) {
+  const ahead = new Float64Array(circuit.links.length);
+  const back = new Float64Array(circuit.links.length);
+  circuit.links.forEach((link, index) => {
+    if (index === question.skip) return;
+    const isLoad = link.kind === "consumer";
+    if (
+      isLoad
+        ? !question.throughLoads || link.element === question.exceptElement
+        : question.conducts[index] === 0
+    )
+      return;
+    const amps = link.element === null ? UNLIMITED : (question.capacities.get(link.element) ?? UNLIMITED);
+    const passesOn = (from: number, to: number) => !question.isReturn(from) && !question.isHot(to);
+    const isAhead = isLoad ? passesOn(link.a, link.b) : true;
+    const isBack = isLoad ? passesOn(link.b, link.a) : question.conducts[index] === 2;
+    ahead[index] = isAhead ? Math.min(amps, UNLIMITED) : 0;
+    back[index] = isBack ? Math.min(amps, UNLIMITED) : 0;
+  });
+  return { ahead, back };
+}
+
+/** For each node the link it was reached by, -1 not reached, -2 the start. */
+function search(
+  circuit: Circuit,
+  start: number,
+  ahead: Float64Array,
+  back: Float64Array,
+  flow: Float64Array,
+): Int32Array {
+  const came = new Int32Array(circuit.view.nodeCount).fill(-1);
+  came[start] = -2;
+  const reached = new Uint8Array(circuit.view.nodeCount);
+  reached[start] = 1;
+  const queue = [start];
+  for (let head = 0; head < queue.length; head++) {
+    const node = queue[head];
+    if (node === undefined) break;
+    for (const index of circuit.linksAt[node] ?? []) {
+      const link = circuit.links[index];
+      if (link === undefined || residual(link.a === node, index, ahead, back, flow) <= 1e-9) continue;
+      const next = link.a === node ? link.b : link.a;
+      if (reached[next] === 1) continue;
+      reached[next] = 1;
+      came[next] = index;
+      queue.push(next);
+    }
+  }
+  return came;
+}
+
+function residual(
+  fromA: boolean,
+  index: number,
+  ahead: Float64Array,
+  back: Float64Array,
+  flow: Float64Array,
+): number {
+  const carried = flow[index] ?? 0;
+  return fromA ? (ahead[index] ?? 0) - carried : (back[index] ?? 0) + carried;
+}
+
+function stepsBack(
+  circuit: Circuit,
+  came: Int32Array,
+  start: number,
+  end: number,
+  each: (index: number, fromA: boolean) => void,
+) {
+  let at = end;
+  for (let guard = 0; at !== start && guard < came.length; guard++) {
+    const index = came[at] ?? -1;
+    const link = circuit.links[index];
+    if (link === undefined) return;
+    const fromA = link.b === at;
+    each(index, fromA);
+    at = fromA ? link.a : link.b;
+  }
+}
+
+function smallestResidual(
+  circuit: Circuit,
+  came: Int32Array,
+  start: number,
+  end: number,
+  ahead: Float64Array,
+  back: Float64Array,
+  flow: Float64Array,
+): number {
+  let step = UNLIMITED;
+  stepsBack(circuit, came, start, end, (index, fromA) => {
+    step = Math.min(step, residual(fromA, index, ahead, back, flow));
+  });
+  return step;
+}
+
+function push(
+  circuit: Circuit,
+  came: Int32Array,
+  start: number,
+  end: number,
+  flow: Float64Array,
+  step: number,
+) {
+  stepsBack(circuit, came, start, end, (index, fromA) => {
+    flow[index] = (flow[index] ?? 0) + (fromA ? step : -step);
+  });
+}
+
+function crossing(circuit: Circuit, came: Int32Array, ahead: Float64Array, back: Float64Array): string[] {
+  const inside = (node: number) => came[node] !== -1;
+  const devices = circuit.links.flatMap((link, index) => {
+    const cut = inside(link.a)
+      ? !inside(link.b) && (ahead[index] ?? 0) > 0
+      : inside(link.b) && (back[index] ?? 0) > 0;
+    return cut && link.element !== null ? [link.element] : [];
+  });
+  return [...new Set(devices)];
+}

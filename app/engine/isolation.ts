@@ -1,0 +1,157 @@
+import type {
+  IsolationResult,
+  PoleReport,
+  SourceIsolation,
+  SwitchCombination,
+  SwitchReport,
+} from "./analysis";
+import type { Circuit, Supply } from "./circuit";
+import { joinsUnder, type Join } from "./joins";
+import { conduction, configurations, energise, isReached, walk, type Position } from "./energise";
+import { liveConductors, liveSets } from "./live";
+
+/** Up to this many switches every combination is worked out. */
+const completeUpTo = 8;
+
+/** What each source still reaches as switches are moved, which switches part its poles, and which circuits share a switch. */
+export function analyseIsolation(circuit: Circuit): IsolationResult & { joins: Join[] } {
+  const { combinations, complete, joins } = goThroughCombinations(circuit);
+  return {
+    sources: circuit.sources.map((source) => isolationOf(circuit, source)),
+    switches: circuit.switches.map(({ id }) => switchReport(circuit, id)),
+    whenOff: liveConductors(circuit, allAt(circuit, "off")),
+    combinations,
+    combinationsComplete: complete,
+    joins,
+  };
+}
+
+/** Every switch in the same position. */
+export function allAt(circuit: Circuit, position: Position): Map<string, Position> {
+  return new Map(circuit.switches.map(({ id }) => [id, position]));
+}
+
+const usingKinds = new Set([
+  "load",
+  "fan",
+  "outlet",
+  "isolated-supply",
+  "transformer",
+  "charger",
+  "converter",
+]);
+
+/** Nodes where energy is used or passed on. Lamps are left out: one before a switch does not undo what the switch does. */
+function usingNodes(circuit: Circuit): number[] {
+  return circuit.links
+    .filter(({ kind, element }) => {
+      const found = element === null ? undefined : circuit.view.elements.get(element);
+      return kind === "consumer" && found !== undefined && usingKinds.has(found.kind);
+    })
+    .flatMap(({ a, b }) => [a, b]);
+}
+
+function isolationOf(circuit: Circuit, source: Supply): SourceIsolation {
+  const poles = [poleReport(circuit, source, "hot"), poleReport(circuit, source, "ret")];
+  const used = poles.filter(({ inUse }) => inUse);
+  return {
+    source: source.element,
+    poles: poles.map(({ report }) => report),
+    allPoleSwitches:
+      used.length === 0
+        ? []
+        : circuit.switches
+            .map(({ id }) => id)
+            .filter((id) => used.every(({ report }) => report.brokenBy.includes(id))),
+  };
+}
+
+function poleReport(
+  circuit: Circuit,
+  source: Supply,
+  pole: "hot" | "ret",
+): { report: PoleReport; inUse: boolean } {
+  const using = usingNodes(circuit);
+  const reaches = (positions: ReadonlyMap<string, Position>, includePossible: boolean) => {
+    const sense = source.domain === "dc" ? (pole === "hot" ? "with" : "against") : "either";
+    const reach = walk(circuit, conduction(circuit, { positions, includePossible }), source[pole], sense);
+    return using.some((node) => isReached(reach, node));
+  };
+  const inUse = configurations(circuit, () => null).some((positions) => reaches(positions, true));
+  const brokenBy = inUse
+    ? circuit.switches
+        .map(({ id }) => id)
+        .filter(
+          (off) =>
+            !configurations(circuit, (id) => (id === off ? "off" : null)).some((each) => reaches(each, true)),
+        )
+    : [];
+  const off = allAt(circuit, "off");
+  return {
+    inUse,
+    report: {
+      pole: source.domain === "mains" ? (pole === "hot" ? "L" : "N") : pole === "hot" ? "+" : "-",
+      brokenBy,
+      partedWhenAllOff: reaches(off, false) ? false : reaches(off, true) ? null : true,
+    },
+  };
+}
+
+function switchReport(circuit: Circuit, id: string): SwitchReport {
+  const byPole = new Map<number, Set<"mains" | "elv" | "earth">>();
+  for (const { from, to, circuit: belongs } of circuit.view.wired) {
+    for (const { element, terminal } of [from, to]) {
+      if (element !== id) continue;
+      const pole = Number.parseInt(terminal, 10);
+      byPole.set(pole, (byPole.get(pole) ?? new Set()).add(belongs));
+    }
+  }
+  const circuits = new Set([...byPole.values()].flatMap((each) => [...each]));
+  return {
+    element: id,
+    poles: [...byPole]
+      .sort(([a], [b]) => a - b)
+      .map(([pole, each]) => ({ pole, circuits: [...each].sort() })),
+    mixesMainsAndElv: circuits.has("mains") && circuits.has("elv"),
+    switchesEarth: circuits.has("earth"),
+  };
+}
+
+function goThroughCombinations(circuit: Circuit) {
+  const ids = circuit.switches.map(({ id }) => id);
+  const complete = ids.length <= completeUpTo;
+  const chosen = complete ? everyCombination(ids) : fewCombinations(ids);
+  const joins = new Map<string, Join>();
+  const seen = new Map<string, SwitchCombination>();
+  for (const on of chosen) {
+    const positions = new Map<string, Position>(ids.map((id) => [id, on.has(id) ? "on" : "off"]));
+    const wide = { positions, includePossible: true };
+    const wideConducts = conduction(circuit, wide);
+    const energised = circuit.sources.map((source) => energise(circuit, source, wide, wideConducts));
+    const live = liveSets(circuit, energised);
+    const states = Object.fromEntries(ids.map((id) => [id, on.has(id) ? ("on" as const) : ("off" as const)]));
+    const key = JSON.stringify(live);
+    const same = seen.get(key);
+    if (same === undefined) seen.set(key, { states, live, alike: 1 });
+    else same.alike += 1;
+    for (const join of joinsUnder(circuit, positions)) if (!joins.has(join.id)) joins.set(join.id, join);
+  }
+  return { combinations: [...seen.values()], complete, joins: [...joins.values()] };
+}
+
+/** All subsets, those with fewest switches on first, so that what is found is told in its simplest form. */
+function everyCombination(ids: string[]): Set<string>[] {
+  return Array.from(
+    { length: 2 ** ids.length },
+    (_, bits) => new Set(ids.filter((_id, index) => (bits >> index) & 1)),
+  ).sort((a, b) => a.size - b.size);
+}
+
+function fewCombinations(ids: string[]): Set<string>[] {
+  return [
+    new Set<string>(),
+    ...ids.map((id) => new Set([id])),
+    ...ids.map((off) => new Set(ids.filter((id) => id !== off))),
+    new Set(ids),
+  ];
+}

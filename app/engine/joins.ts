@@ -1,0 +1,75 @@
+import type { Certainty } from "./analysis";
+import type { Circuit } from "./circuit";
+import { conduction, energise, isReached, type Instance, type Position } from "./energise";
+
+/** Two things that must not be joined and are, in some position of the switches. */
+export interface Join {
+  id: string;
+  kind: "short" | "mains-to-elv" | "live-part" | "live-earth";
+  /** The source that is shorted or reaches where it must not. */
+  source: string;
+  /** What it reaches: an element, or the other source. */
+  other: string;
+  switchesOn: string[];
+  conductors: string[];
+  certainty: Certainty;
+}
+
+/** Shorts, mains joined with extra-low voltage, and live accessible parts or earth, in the given positions. */
+export function joinsUnder(circuit: Circuit, positions: ReadonlyMap<string, Position>): Join[] {
+  const sure = find(circuit, positions, false);
+  const known = new Set(sure.map(({ id }) => id));
+  const hasDoubt = circuit.links.some(({ certainty }) => certainty === "possible");
+  return hasDoubt ? [...sure, ...find(circuit, positions, true).filter(({ id }) => !known.has(id))] : sure;
+}
+
+function find(circuit: Circuit, positions: ReadonlyMap<string, Position>, includePossible: boolean): Join[] {
+  const { view } = circuit;
+  const condition = { positions, includePossible };
+  const conducts = conduction(circuit, condition);
+  const instances = circuit.sources.flatMap((source) =>
+    energise(circuit, source, condition, conducts).instances.map((instance) => ({
+      source: source.element,
+      instance,
+    })),
+  );
+  const switchesOn = [...positions].filter(([, position]) => position === "on").map(([id]) => id);
+  const certainty: Certainty = includePossible ? "possible" : "certain";
+  const joins: Join[] = [];
+  const add = (kind: Join["kind"], source: string, other: string, conductors: string[] = []) =>
+    joins.push({ id: `${kind} ${source} ${other}`, kind, source, other, switchesOn, conductors, certainty });
+
+  for (const { source, instance } of instances) {
+    const { hot, ret, supply } = instance;
+    if (isReached(hot, supply.ret))
+      add(
+        "short",
+        source,
+        supply.element,
+        view.wired
+          .filter(({ from }) => both(instance, view.nodeOf(from.element, from.terminal)))
+          .map(({ id }) => id),
+      );
+    for (const part of view.ofKind("accessible-part")) {
+      const node = view.nodeOf(part.id, "surface");
+      if (isReached(hot, node) || (supply.domain === "mains" && isReached(ret, node)))
+        add("live-part", source, part.id);
+    }
+    for (const earth of view.ofKind("earth-terminal")) {
+      const node = view.nodeOf(earth.id, "PE");
+      if (supply.domain === "mains" ? isReached(hot, node) || isReached(ret, node) : false)
+        add("live-earth", source, earth.id);
+    }
+    if (supply.domain !== "mains") continue;
+    for (const other of instances) {
+      if (other.instance.supply.domain === "mains") continue;
+      if (holds(instance, other.instance.supply.hot) || holds(instance, other.instance.supply.ret)) {
+        add("mains-to-elv", source, other.instance.supply.element);
+      }
+    }
+  }
+  return joins;
+}
+
+const holds = ({ hot, ret }: Instance, node: number) => isReached(hot, node) || isReached(ret, node);
+const both = ({ hot, ret }: Instance, node: number) => isReached(hot, node) && isReached(ret, node);
