@@ -29,8 +29,7 @@ export function finishSheet(context: ServiceContext, input: UnitActInput): Promi
       const signers = (await listRoleHolders(tx, context.workshop.id, "electrician")).filter(
         ({ id }) => id !== unit.builderId && id !== context.person.id && !unit.inspectorIds.includes(id),
       );
-      const failed =
-        byVerdict.fail === 0 ? "No check failed." : `${byVerdict.fail} checks failed; see the review page.`;
+      const failed = failedWords(byVerdict.fail);
       const common = { workshopId: context.workshop.id, from: mailFrom(context), at };
       await enqueueMails(tx, [
         ...signers.map((signer) => ({
@@ -65,6 +64,11 @@ export function finishSheet(context: ServiceContext, input: UnitActInput): Promi
       return { result: undefined, detail: { verdicts: byVerdict } };
     },
   });
+}
+
+function failedWords(count: number): string {
+  if (count === 0) return "No check failed.";
+  return `${count} ${count === 1 ? "check" : "checks"} failed.`;
 }
 
 /**
