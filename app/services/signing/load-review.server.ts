@@ -77,5 +77,6 @@ function ownLicences(db: Reader, workshopId: number, personId: number): Promise<
     .from(licences)
     .where(and(eq(licences.workshopId, workshopId), eq(licences.personId, personId)))
     .orderBy(desc(licences.validTo), desc(licences.id))
-    .for("share");
+    // MariaDB has no "for share", and drizzle no "lock in share mode".
+    .for("update");
 }
