@@ -151,9 +151,16 @@ export function processesWithArgument(argument: string): number[] {
   return otherProcesses().filter((pid) => commandLineOf(pid)?.includes(argument));
 }
 
-/** Processes that name something below `folder` in their arguments. */
-export function processesBelow(folder: string): number[] {
-  return otherProcesses().filter((pid) => commandLineOf(pid)?.some((part) => part.includes(`${folder}/`)));
+/** Processes that were started with this variable in their environment, such as all descendants of a test run. */
+export function processesWithVariable(name: string, value: string): number[] {
+  const wanted = `${name}=${value}`;
+  return otherProcesses().filter((pid) => {
+    try {
+      return readFileSync(`/proc/${pid}/environ`, "utf8").split("\0").includes(wanted);
+    } catch {
+      return false; // Gone in the meantime, or another user's.
+    }
+  });
 }
 
 function otherProcesses(): number[] {

@@ -1,13 +1,16 @@
 import { type ChildProcess, spawn } from "node:child_process";
 import { existsSync, mkdtempSync, readFileSync, realpathSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
-import { join } from "node:path";
+import { basename, join } from "node:path";
 import { z } from "zod";
-import { birthOf, commandLineOf, processesBelow } from "./processes";
+import { birthOf, commandLineOf, processesWithVariable } from "./processes";
 import { SetupError } from "./steps.mjs";
 
 const parts = ["typecheck", "lint", "unit", "integration", "e2e"] as const;
 type Part = (typeof parts)[number];
+
+/** Names the folder to every process of a run. */
+const FOLDER_VARIABLE = "MAINSGATE_TEST_ROOT";
 
 const reportSchema = z.object({
   numPassedTests: z.int(),
@@ -85,7 +88,7 @@ async function runPart(
     const child = spawn(command, args, {
       cwd: root,
       stdio: "inherit",
-      env: { ...process.env, MAINSGATE_TEST_ROOT: folder, TMPDIR: folder },
+      env: { ...process.env, [FOLDER_VARIABLE]: folder, TMPDIR: folder },
     });
     started(child);
     child.once("error", reject);
@@ -107,17 +110,18 @@ function vitestArguments(part: string, report: string): string[] {
   return ["run", "--project", part, "--reporter=default", "--reporter=json", `--outputFile.json=${report}`];
 }
 
-/** Ends what a part left running below the folder, and removes the folder. */
+/** Ends what the parts left running, and removes the folder. */
 async function sweep(folder: string): Promise<void> {
-  for (const pid of processesBelow(folder)) {
-    console.log(`Ending what was left over: ${commandLineOf(pid)?.[0]} (process ${pid})`);
+  for (const pid of processesWithVariable(FOLDER_VARIABLE, folder)) {
     const birth = birthOf(pid);
+    if (birth === null) continue;
+    console.log(`Ending what was left over: ${basename(commandLineOf(pid)?.[0] ?? "")} (process ${pid})`);
     try {
       process.kill(pid, "SIGKILL");
     } catch {
       continue; // It ended by itself.
     }
-    while (birth !== null && birthOf(pid) === birth) await new Promise((resolve) => setTimeout(resolve, 20));
+    while (birthOf(pid) === birth) await new Promise((resolve) => setTimeout(resolve, 20));
   }
   rmSync(folder, { recursive: true, force: true, maxRetries: 5, retryDelay: 100 });
 }

@@ -1,3 +1,4 @@
+import { readFileSync } from "node:fs";
 import { createServer, request as httpRequest } from "node:http";
 import { expect, onTestFinished, test } from "vitest";
 import { freePort } from "../../local/processes";
@@ -65,6 +66,14 @@ test("built files may be kept for good, pages may not, and a missing file is no 
   expect(await cacheOf(asset)).toEqual([200, "public, max-age=31536000, immutable"]);
   expect(await cacheOf("/sign-in")).toEqual([200, "private, no-cache"]);
   expect((await cacheOf("/assets/gone-12345678.js"))[0]).toBe(404);
+});
+
+test("the server's bundle holds react-router's production build, and loads no other", () => {
+  const bundle = readFileSync(".data/build-for-tests/server/index.js", "utf8");
+  expect(bundle).toContain("node_modules/react-router/dist/production/");
+  expect(bundle).not.toMatch(
+    /node_modules\/react-router\/dist\/development\/|(from|import) "(react-router|@react-router)/,
+  );
 });
 
 test("a form from another site is refused, on pages and on resource routes", async () => {
