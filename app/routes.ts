@@ -18,6 +18,12 @@ export default [
   route("w/:workshop", "routes/workshop/layout.tsx", [
     index("routes/workshop/overview.tsx"),
     // units
+    route("units", "routes/units/list.tsx"),
+    route("units/new", "routes/units/new.tsx"),
+    route("units/:unit", "routes/units/overview.tsx"),
+    route("units/:unit/facts", "routes/units/facts.tsx"),
+    route("units/:unit/map", "routes/units/map.tsx"),
+    route("units/:unit/rework", "routes/units/rework.tsx"),
 
     // bench
     route("bench", "routes/bench/queue.tsx"),
@@ -27,6 +33,8 @@ export default [
     route("bench/:unit/close", "routes/bench/close.tsx"),
 
     // signing
+    route("signing", "routes/signing/queue.tsx"),
+    route("signing/:unit", "routes/signing/review.tsx"),
 
     // archive
 
@@ -48,6 +56,7 @@ export default [
       route("units", "routes/api/units.ts"),
       route("units/:unit", "routes/api/unit.ts"),
       route("units/:unit/map", "routes/api/unit-map.ts"),
+      route("units/:unit/findings/:finding/answer", "routes/api/finding-answer.ts"),
       route("units/:unit/files", "routes/api/unit-files.ts"),
       route("files/:file/:size", "routes/api/file.ts"),
 
