@@ -24,8 +24,7 @@ const insulations = [
   { value: "none", label: "None: bare" },
 ];
 
-const grid =
-  "grid grid-cols-2 items-start gap-x-2 gap-y-2 sm:grid-cols-4 2xl:grid-cols-[4.5rem_minmax(7rem,1fr)_minmax(7rem,1fr)_12.5rem_8.5rem_6.5rem_7.5rem]";
+const grid = "grid grid-cols-2 items-start gap-x-2 gap-y-2 sm:grid-cols-4";
 
 export interface ConductorRowProps {
   conductor: Conductor;
@@ -81,7 +80,6 @@ export const ConductorRow = memo(function ConductorRow({
             const circuit = circuitOf(value);
             if (circuit) change({ circuit });
           }}
-          className="2xl:order-last"
         />
         <TerminalCell
           id={`${prefix}-from`}
@@ -165,7 +163,7 @@ function AreaCell({
   const value = area === null ? null : "awg" in area ? area.awg : area.mm2;
   const make = (amount: number): Conductor["area"] => (shown === "awg" ? { awg: amount } : { mm2: amount });
   return (
-    <div className="col-span-2 flex min-w-0 items-start gap-1 2xl:col-span-1">
+    <div className="col-span-2 flex min-w-0 items-start gap-1">
       <NumberCell
         id={id}
         label="Cross-section"

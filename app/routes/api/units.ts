@@ -6,14 +6,14 @@ import type { Route } from "./+types/units";
 /** GET: the workshop's units, a page at a time, by the same parameters as the page with the list. */
 export async function loader({ url, context }: Route.LoaderArgs) {
   const { db, person, workshop } = authorise(context, "unit.list");
-  const { text, states, mine, sort, page } = readUnitQuery(url.searchParams);
-  const { units, total } = await listUnits(db, {
+  const query = readUnitQuery(url.searchParams);
+  const { units, total, page } = await listUnits(db, {
     workshopId: workshop.id,
-    text,
-    states,
-    builderId: mine ? person.id : undefined,
-    sort,
-    page,
+    text: query.text,
+    states: query.states,
+    builderId: query.mine ? person.id : undefined,
+    sort: query.sort,
+    page: query.page,
   });
   return Response.json({ page, perPage: UNITS_PER_PAGE, total, units });
 }

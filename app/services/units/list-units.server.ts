@@ -31,13 +31,15 @@ export interface UnitListItem {
   changedAt: Date;
 }
 
-/** One page of a workshop's units, with how many there are in all. */
+/** One page of a workshop's units, with how many there are in all. A page beyond the last one is the last one. */
 export async function listUnits(
   db: Reader,
   query: UnitQuery,
-): Promise<{ units: UnitListItem[]; total: number }> {
+): Promise<{ units: UnitListItem[]; total: number; page: number }> {
   const where = conditionsOf(query);
   const [found] = await db.select({ total: count() }).from(units).where(where);
+  const total = found?.total ?? 0;
+  const page = Math.min(query.page, Math.max(1, Math.ceil(total / UNITS_PER_PAGE)));
   const order = query.sort.direction === "asc" ? asc : desc;
   const rows = await db
     .select({
@@ -57,8 +59,8 @@ export async function listUnits(
     .where(where)
     .orderBy(order(sortColumns[query.sort.by]), desc(units.number))
     .limit(UNITS_PER_PAGE)
-    .offset((query.page - 1) * UNITS_PER_PAGE);
-  return { units: rows, total: found?.total ?? 0 };
+    .offset((page - 1) * UNITS_PER_PAGE);
+  return { units: rows, total, page };
 }
 
 const sortColumns = {

@@ -1,0 +1,44 @@
+import type { UnitState } from "~/workflow/states";
+
+/** What happens next with a unit and whose turn it is, in two sentences. */
+export function nextStepFor(unit: { state: UnitState; isOwn: boolean }): { what: string; who: string } {
+  switch (unit.state) {
+    case "draft":
+      return {
+        what: "Being described.",
+        who: unit.isOwn
+          ? "Complete its energy map, add photos and submit it."
+          : "Its builder completes the energy map and submits it.",
+      };
+    case "submitted":
+      return {
+        what: "Waits for the bench.",
+        who: "An inspector who did not build it takes it. Until it is signed it must not be plugged in elsewhere.",
+      };
+    case "on_bench":
+      return { what: "On the bench.", who: "Its inspector works the bench sheet." };
+    case "awaiting_signature":
+      return {
+        what: "Waits for a signature.",
+        who: "A licensed electrician who neither built nor inspected it reviews the sheet and decides.",
+      };
+    case "sent_back":
+      return {
+        what: "Sent back with findings.",
+        who: unit.isOwn
+          ? "Answer each finding, change the map where the unit changed, and submit it again."
+          : "Its builder answers the findings and submits it again.",
+      };
+    case "signed":
+      return {
+        what: "Signed.",
+        who: "It may be used under the conditions of its record, until its recheck date. Any change to it ends that.",
+      };
+    case "refused":
+      return { what: "Refused.", who: "It must not be plugged in. The record says why." };
+    case "withdrawn":
+      return { what: "The signature was withdrawn.", who: "It must not be plugged in. The record says why." };
+    case "superseded":
+      return { what: "Superseded.", who: "A newer record stands in the place of this one." };
+  }
+}
