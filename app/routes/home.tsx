@@ -21,7 +21,11 @@ export const meta: Route.MetaFunction = () => [{ title: "Workshops · Mainsgate"
 export default function Home({ loaderData: { person, workshops } }: Route.ComponentProps) {
   return (
     <PlainShell>
-      <Sheet title="Your workshops" headingLevel={2} lead={`Signed in as ${person.name} (${person.email}).`}>
+      <Sheet>
+        <h1 className="text-2xl">Your workshops</h1>
+        <p className="mt-1 mb-4 text-sm text-ink-soft">
+          Signed in as {person.name} ({person.email}).
+        </p>
         {workshops.length === 0 ? (
           <p>
             You belong to no workshop at present. A workshop’s steward can invite you; the invitation comes by

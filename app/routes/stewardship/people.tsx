@@ -71,7 +71,7 @@ export default function People({ loaderData, actionData }: Route.ComponentProps)
   return (
     <>
       <PageHeader title="People" lead="Who holds which role in this workshop, and who is invited." />
-      <div className="grid items-start gap-5 lg:grid-cols-[minmax(0,2fr)_minmax(18rem,1fr)]">
+      <div className="grid items-start gap-5 lg:grid-cols-[minmax(0,5fr)_minmax(18rem,2fr)]">
         <div className="grid gap-5">
           <Sheet
             flush
@@ -135,6 +135,6 @@ const columns: Column<MemberRow>[] = [
       </span>
     ),
   },
-  { id: "email", header: "Mail", cell: (member) => <span className="break-all">{member.email}</span> },
+  { id: "email", header: "Mail", cell: (member) => <span className="wrap-anywhere">{member.email}</span> },
   { id: "since", header: "Since", nowrap: true, cell: (member) => <Time at={member.since} style="date" /> },
 ];

@@ -28,7 +28,8 @@ const columns: Column<{ name: string; value: RuleValue }>[] = [
   {
     id: "source",
     header: "Source",
-    cell: ({ value: { citation } }) => `${citation.standard}, ${citation.clause} (${citation.edition})`,
+    cell: ({ value: { citation } }) =>
+      `${citation.standard}, ${citation.clause}; edition: ${citation.edition}`,
   },
   { id: "mark", header: "How sure", cell: ({ value: { citation } }) => marks[citation.mark] },
 ];
@@ -38,6 +39,8 @@ function words(name: string): string {
   const spaced = name
     .replace(/([a-z])([A-Z])/g, "$1 $2")
     .toLowerCase()
-    .replace(".", ": ");
+    .replace(".", ": ")
+    .replace(/\b(ac|dc|elv|i|ii)\b/g, (abbreviation) => abbreviation.toUpperCase())
+    .replace("class iheating", "class I heating");
   return spaced.charAt(0).toUpperCase() + spaced.slice(1);
 }
