@@ -44,7 +44,7 @@ export function Sheet({
         <div className="flex flex-wrap items-start justify-between gap-x-4 gap-y-2 border-b border-rule px-4 py-3">
           <div className="min-w-0">
             {title ? (
-              <Heading id={headingId} className="text-lg">
+              <Heading id={headingId} className={headingLevel === 1 ? "text-2xl" : "text-lg"}>
                 {title}
               </Heading>
             ) : null}
