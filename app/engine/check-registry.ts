@@ -1,4 +1,34 @@
 import type { CheckDefinition } from "./bench-check";
+import { battery } from "./checks/battery";
+import { doublePoleIsolation } from "./checks/double-pole-isolation";
+import { fusing } from "./checks/fusing";
+import { heat } from "./checks/heat";
+import { insulation } from "./checks/insulation";
+import { leakage } from "./checks/leakage";
+import { marking } from "./checks/marking";
+import { operation } from "./checks/operation";
+import { protectiveEarth } from "./checks/protective-earth";
+import { reverseCurrent } from "./checks/reverse-current";
+import { storedCharge } from "./checks/stored-charge";
+import { visualOutside } from "./checks/visual-outside";
+import { visualWiring } from "./checks/visual-wiring";
 
-/** Every check, in the order in which a bench is worked: eyes first, dead tests before live ones, function last. */
-export const checkRegistry: CheckDefinition[] = [];
+/**
+ * Every check, in the order in which a bench is worked: eyes first, then with the plug pulled, then live, function last.
+ * To add one, write a file in `checks/` and put it here where it belongs.
+ */
+export const checkRegistry: CheckDefinition[] = [
+  visualOutside,
+  visualWiring,
+  marking,
+  fusing,
+  battery,
+  protectiveEarth,
+  insulation,
+  doublePoleIsolation,
+  storedCharge,
+  reverseCurrent,
+  leakage,
+  heat,
+  operation,
+];

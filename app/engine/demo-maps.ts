@@ -34,7 +34,7 @@ const backupSinglePole = extended(
 
 /** The "mains" lamp sits behind the blocking stage, so the battery lights it. */
 const indicatorBackfed = extended(
-  without(backup, "W15"),
+  without(backup, "W15", "W16"),
   [],
   [wire("W15", "S2.1a", "H1.1", "elv", 1.5, 0.2), wire("W16", "CH1.-", "H1.2", "elv", 1.5, 0.2)],
 );

@@ -1,0 +1,72 @@
+import type { CheckDefinition } from "../bench-check";
+import { because, caution, keyOf } from "../check-parts";
+import type { Citation } from "../rule-set";
+
+const touchLimit = (value: number, mark: Citation["mark"]) => ({
+  value,
+  citation: {
+    standard: "IEC 62368-1",
+    clause: "Table 38, touched 1 to 10 s",
+    edition: "not checked",
+    mark,
+    note: "Judged at 25 °C of air.",
+  } satisfies Citation,
+});
+
+/** Surfaces that people touch, after the unit has run warm. */
+export const heat: CheckDefinition = {
+  id: "heat",
+  family: "heat",
+  derive(view) {
+    const working = [
+      ...view.ofKind("load"),
+      ...view.ofKind("outlet"),
+      ...view.ofKind("converter"),
+      ...view.ofKind("transformer"),
+      ...view.ofKind("isolated-supply"),
+      ...view.ofKind("charger"),
+    ];
+    if (working.length === 0) return [];
+    const metal = view.ofKind("accessible-part").map(({ id }) => id);
+    const limit = metal.length > 0 ? touchLimit(60, "M") : touchLimit(77, "V");
+    const ids = [...metal, ...working.map(({ id }) => id)];
+    return [
+      {
+        key: keyOf("heat-surface"),
+        family: "heat",
+        title: "Surfaces that are touched",
+        why: [
+          because(
+            "What burns a hand or softens a case shows only after the unit has run warm, with its covers on.",
+            ids,
+          ),
+        ],
+        method: [
+          "Run the unit at its largest load with all covers on until the hottest place rises by less than 1 K in half an hour.",
+          `Measure the hottest ${metal.length > 0 ? "metal" : "plastic"} surface that a hand touches for a few seconds.`,
+          "Add nothing for a warmer room; note the air's temperature.",
+        ],
+        cautions: [
+          caution.live,
+          "Stay with the unit. Smoke, smell or a softening case ends the test: pull the plug.",
+        ],
+        computed: null,
+        asks: {
+          kind: "reading",
+          quantity: "Temperature of the hottest touched surface",
+          unit: "°C",
+          limit: { kind: "at-most", value: limit.value, unit: "°C", citation: limit.citation },
+          instrument: { kind: "thermometer", range: "0 to 150 °C, contact probe" },
+          conditions: [
+            metal.length > 0 ? "Metal, touched 1 to 10 s" : "Plastic, touched 1 to 10 s",
+            "Air at 25 °C",
+            "Largest load, covers on, settled",
+          ],
+        },
+        photo: "optional",
+        citations: [limit.citation],
+        subjects: { elements: ids, conductors: [] },
+      },
+    ];
+  },
+};
