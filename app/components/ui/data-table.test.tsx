@@ -62,4 +62,12 @@ test("pages: the first has no previous, the last no next, and page 1 needs no pa
   const last = render(<Pagination page={3} pageSize={20} total={41} />);
   expect(last).not.toContain('rel="next"');
   expect(last).toContain("41 to 41 of 41");
+  expect(render(<Pagination page={1} pageSize={20} total={0} />)).toBe("");
+});
+
+test("a page after the last one leads back to the last", () => {
+  const beyond = render(<Pagination page={9} pageSize={20} total={41} />, "/queue?page=9");
+  expect(beyond).toContain('href="/queue?page=3"');
+  expect(beyond).toContain("There are 41 in all");
+  expect(beyond).not.toContain('rel="next"');
 });

@@ -132,7 +132,7 @@ function TableRow<Row>({ row, columns, href }: { row: Row; columns: Column<Row>[
               key={column.id}
               role="rowheader"
               scope="row"
-              className={`${cellClass} text-left font-semibold max-sm:text-base`}
+              className={`${cellClass} text-left font-semibold max-sm:text-base sm:min-w-32`}
             >
               {href ? (
                 // The stretched pseudo-element makes the whole row a target; the link's name stays short.

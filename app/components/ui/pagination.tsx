@@ -20,15 +20,17 @@ export interface PaginationProps {
 
 export function Pagination({ page, pageSize, total, param = "page", label = "Pages" }: PaginationProps) {
   const params = new URLSearchParams(useLocation().search);
-  const pages = Math.max(1, Math.ceil(total / pageSize));
-  const first = total === 0 ? 0 : (page - 1) * pageSize + 1;
+  const pages = Math.ceil(total / pageSize);
+  // An empty list says so itself.
+  if (total === 0) return null;
+  const first = (page - 1) * pageSize + 1;
   const last = Math.min(page * pageSize, total);
   const href = (to: number) => withParams(params, { [param]: to === 1 ? null : String(to) });
   return (
     <PageNavigation label={label}>
-      <PageLink direction="previous" to={page > 1 ? href(page - 1) : null} />
+      <PageLink direction="previous" to={page > 1 ? href(Math.min(page - 1, pages)) : null} />
       <p className="text-sm text-ink-soft tabular-nums">
-        {total === 0 ? "None" : `${first} to ${last} of ${total}`}
+        {first > total ? `There are ${total} in all` : `${first} to ${last} of ${total}`}
         {pages > 1 ? <span className="max-sm:hidden">{` · page ${page} of ${pages}`}</span> : null}
       </p>
       <PageLink direction="next" to={page < pages ? href(page + 1) : null} />
