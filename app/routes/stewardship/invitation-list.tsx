@@ -46,7 +46,7 @@ const columns: Column<InvitationRow>[] = [
     id: "email",
     header: "Mail",
     primary: true,
-    cell: (row) => <span className="break-all">{row.email}</span>,
+    cell: (row) => <span className="wrap-anywhere">{row.email}</span>,
   },
   { id: "roles", header: "As", cell: (row) => row.roles.map((role) => roleTitles[role]).join(", ") },
   { id: "sent", header: "Sent", nowrap: true, cell: (row) => <Time at={row.createdAt} style="date" /> },
