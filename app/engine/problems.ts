@@ -84,8 +84,9 @@ function duplicateProblems(map: EnergyMap): Problem[] {
 const optionalFields: Partial<Record<Element["kind"], string[]>> = {
   "mains-inlet": ["prospectiveAmps"],
   battery: ["maxDischargeAmps", "internalMilliohms"],
-  "isolated-supply": ["leakageMilliamps"],
-  charger: ["leakageMilliamps"],
+  "isolated-supply": ["leakageMilliamps", "conductsBackwards"],
+  charger: ["leakageMilliamps", "conductsBackwards"],
+  converter: ["conductsBackwards"],
   fuse: ["breakingAmps", "breakingLetter", "speed"],
   breaker: ["breakingAmps", "curve"],
   bms: ["underVoltsPerCell", "tripAmps", "coldChargeCutoff"],
