@@ -250,6 +250,7 @@ export function tellStories(workshop: DemoWorkshop): Step[] {
       {
         name: "Charger for the cargo-bike pack",
         purpose: "Charges the spare pack overnight in the yard shed",
+        protectionClass: "II",
       },
       starter("battery-charger"),
     )
