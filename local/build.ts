@@ -1,7 +1,7 @@
 import { spawn } from "node:child_process";
 import { createHash } from "node:crypto";
-import { existsSync, readdirSync, readFileSync, writeFileSync } from "node:fs";
-import { join } from "node:path";
+import { existsSync, readdirSync, readFileSync, statSync, writeFileSync } from "node:fs";
+import { join, relative } from "node:path";
 import { SetupError } from "./steps.mjs";
 
 /** What a build is made from. */
@@ -39,7 +39,7 @@ function stampFile(root: string, folder: BuildFolder): string {
 }
 
 /** A hash over the content of all sources: times of files tell little after a checkout. */
-function sourceHash(root: string): string {
+export function sourceHash(root: string): string {
   const hash = createHash("sha256");
   for (const source of SOURCES) {
     for (const file of filesBelow(root, source)) {
@@ -52,15 +52,14 @@ function sourceHash(root: string): string {
   return hash.digest("hex");
 }
 
+/** The files of a folder, or the file itself, as paths from the root in a fixed order; none when it is not there. */
 function filesBelow(root: string, path: string): string[] {
-  if (!existsSync(join(root, path))) return [];
-  const entries = path.includes(".")
-    ? []
-    : readdirSync(join(root, path), { recursive: true, withFileTypes: true });
-  if (entries.length === 0) return path.includes(".") ? [path] : [];
-  return entries
+  const full = join(root, path);
+  if (!existsSync(full)) return [];
+  if (statSync(full).isFile()) return [path];
+  return readdirSync(full, { recursive: true, withFileTypes: true })
     .filter((entry) => entry.isFile() && !/\.test\.tsx?$/.test(entry.name))
-    .map((entry) => join(entry.parentPath, entry.name).slice(root.length + 1))
+    .map((entry) => relative(root, join(entry.parentPath, entry.name)))
     .sort();
 }
 

@@ -13,6 +13,8 @@ import { reportFailure, step } from "./steps.mjs";
 
 const root = dirname(dirname(fileURLToPath(import.meta.url)));
 process.chdir(root);
+// The S3 client would say at every start that its next versions want a newer Node.
+process.env.AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED ??= "true";
 
 try {
   requireNode();
