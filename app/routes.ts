@@ -14,6 +14,7 @@ export default [
   route("invitation/:token", "routes/auth/invitation.tsx"),
   route("account", "routes/account/account.tsx"),
   route("theme", "routes/theme.ts"),
+  route("r/:code", "routes/public-record.tsx"),
 
   route("w/:workshop", "routes/workshop/layout.tsx", [
     index("routes/workshop/overview.tsx"),
@@ -37,6 +38,10 @@ export default [
     route("signing/:unit", "routes/signing/review.tsx"),
 
     // archive
+    route("archive", "routes/archive/search.tsx"),
+    route("archive/:unit", "routes/archive/record.tsx"),
+    route("archive/:unit/trail", "routes/archive/trail.tsx"),
+    route("archive/:unit/withdraw", "routes/archive/withdraw.tsx"),
 
     // stewardship
     route("people", "routes/stewardship/people.tsx"),
@@ -64,6 +69,7 @@ export default [
       route("queues", "routes/api/queues.ts"),
 
       // records
+      route("records/:unit/:form", "routes/api/record.ts"),
     ]),
   ]),
 ] satisfies RouteConfig;

@@ -1,0 +1,37 @@
+import { stateTitles, type Validity } from "~/workflow/states";
+
+export interface ValidityWords {
+  title: string;
+  text: string;
+  tone: "pass" | "undecided" | "fail";
+}
+
+/** What a person who stands before the unit must know, in a line and a sentence. */
+export function validityWords(validity: Validity): ValidityWords {
+  switch (validity.kind) {
+    case "may-be-used":
+      return {
+        title: "May be plugged in",
+        text: "Under the conditions stated here and as long as nothing on the unit was changed.",
+        tone: "pass",
+      };
+    case "recheck-due":
+      return {
+        title: "May be plugged in, recheck due",
+        text: "Under the conditions stated here, but it must be checked again soon.",
+        tone: "undecided",
+      };
+    case "lapsed":
+      return {
+        title: "Must not be plugged in: lapsed",
+        text: "The day of its recheck has passed. Have it examined again.",
+        tone: "fail",
+      };
+    case "must-not-be-used":
+      return {
+        title: `Must not be plugged in: ${stateTitles[validity.because].toLowerCase()}`,
+        text: "Unplug it and mark it, so that nobody uses it.",
+        tone: "fail",
+      };
+  }
+}
