@@ -18,9 +18,8 @@ export type { UnitFacts } from "./unit-facts";
 /** Everything the engine can say of a map by itself. Never throws on a map that fits the schema. */
 export function analyse(map: EnergyMap, ruleSet: RuleSet, facts: UnitFacts): Analysis {
   const circuit = circuitOf(viewOf(map));
-  const { joins, ...isolation } = analyseIsolation(circuit);
   const results = {
-    isolation,
+    isolation: analyseIsolation(circuit),
     reverse: analyseReverse(circuit),
     fusing: analyseFusing(circuit, facts),
     insulation: analyseInsulation(circuit, ruleSet, facts),
@@ -28,6 +27,6 @@ export function analyse(map: EnergyMap, ruleSet: RuleSet, facts: UnitFacts): Ana
   return {
     problems: mapProblems(map, facts),
     ...results,
-    statements: statementsOf(circuit, results, joins, ruleSet, facts),
+    statements: statementsOf(circuit, results, ruleSet, facts),
   };
 }

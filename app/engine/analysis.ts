@@ -74,6 +74,20 @@ export interface SwitchCombination {
   alike: number;
 }
 
+/** Two things that must not be joined and are, in some position of the switches. */
+export interface Join {
+  id: string;
+  kind: "short" | "mains-to-elv" | "live-part" | "live-earth";
+  /** The source that is shorted or reaches where it must not. */
+  source: string;
+  /** What it reaches: an element, or the other source. */
+  other: string;
+  /** In the simplest case; the other switches are off. */
+  switchesOn: string[];
+  conductors: string[];
+  certainty: Certainty;
+}
+
 export interface IsolationResult {
   sources: SourceIsolation[];
   switches: SwitchReport[];
@@ -81,6 +95,7 @@ export interface IsolationResult {
   whenOff: LiveConductor[];
   /** Every different outcome. With more than eight switches only some combinations are worked out. */
   combinations: SwitchCombination[];
+  joins: Join[];
   combinationsComplete: boolean;
 }
 

@@ -1,5 +1,6 @@
 import type { CheckDefinition } from "./bench-check";
 import { battery } from "./checks/battery";
+import { circuitsApart } from "./checks/circuits-apart";
 import { doublePoleIsolation } from "./checks/double-pole-isolation";
 import { fusing } from "./checks/fusing";
 import { heat } from "./checks/heat";
@@ -24,6 +25,7 @@ export const checkRegistry: CheckDefinition[] = [
   fusing,
   battery,
   protectiveEarth,
+  circuitsApart,
   insulation,
   doublePoleIsolation,
   storedCharge,

@@ -1,12 +1,13 @@
 import type {
   IsolationResult,
+  Join,
   PoleReport,
   SourceIsolation,
   SwitchCombination,
   SwitchReport,
 } from "./analysis";
 import type { Circuit, Supply } from "./circuit";
-import { joinsUnder, type Join } from "./joins";
+import { joinsUnder } from "./joins";
 import { conduction, configurations, energise, isReached, walk, type Position } from "./energise";
 import { liveConductors, liveSets } from "./live";
 
@@ -14,7 +15,7 @@ import { liveConductors, liveSets } from "./live";
 const completeUpTo = 8;
 
 /** What each source still reaches as switches are moved, which switches part its poles, and which circuits share a switch. */
-export function analyseIsolation(circuit: Circuit): IsolationResult & { joins: Join[] } {
+export function analyseIsolation(circuit: Circuit): IsolationResult {
   const { combinations, complete, joins } = goThroughCombinations(circuit);
   return {
     sources: circuit.sources.map((source) => isolationOf(circuit, source)),

@@ -1,19 +1,8 @@
-import type { Certainty } from "./analysis";
+import type { Certainty, Join } from "./analysis";
 import type { Circuit } from "./circuit";
+import type { MapView } from "./map-view";
+import { list } from "./wording";
 import { conduction, energise, isReached, type Instance, type Position } from "./energise";
-
-/** Two things that must not be joined and are, in some position of the switches. */
-export interface Join {
-  id: string;
-  kind: "short" | "mains-to-elv" | "live-part" | "live-earth";
-  /** The source that is shorted or reaches where it must not. */
-  source: string;
-  /** What it reaches: an element, or the other source. */
-  other: string;
-  switchesOn: string[];
-  conductors: string[];
-  certainty: Certainty;
-}
 
 /** Shorts, mains joined with extra-low voltage, and live accessible parts or earth, in the given positions. */
 export function joinsUnder(circuit: Circuit, positions: ReadonlyMap<string, Position>): Join[] {
@@ -73,3 +62,24 @@ function find(circuit: Circuit, positions: ReadonlyMap<string, Position>, includ
 
 const holds = ({ hot, ret }: Instance, node: number) => isReached(hot, node) || isReached(ret, node);
 const both = ({ hot, ret }: Instance, node: number) => isReached(hot, node) && isReached(ret, node);
+
+/** A sentence for a join. */
+export function joinText(view: MapView, join: Join): string {
+  const when =
+    join.switchesOn.length === 0
+      ? "With every switch off"
+      : `With ${list(join.switchesOn.map((id) => view.name(id)))} on`;
+  const may = join.certainty === "possible" ? "may be" : "is";
+  const source = view.name(join.source);
+  const other = view.name(join.other);
+  switch (join.kind) {
+    case "short":
+      return `${when}, ${other} ${may} short-circuited.`;
+    case "mains-to-elv":
+      return `${when}, mains from ${source} ${may} joined with the extra-low voltage of ${other}.`;
+    case "live-part":
+      return `${when}, ${other}, which can be touched, ${may} live from ${source}.`;
+    case "live-earth":
+      return `${when}, a pole of ${source} ${may} joined with the protective earth at ${other}.`;
+  }
+}

@@ -1,3 +1,4 @@
+import { circuitContradictions } from "./contradictions";
 import { elementKinds, terminalsOf, type FieldDescriptor } from "./elements";
 import type { Element, EnergyMap } from "./energy-map";
 import type { Problem } from "./problem";
@@ -10,6 +11,7 @@ export function mapProblems(map: EnergyMap, facts: UnitFacts): Problem[] {
     ...duplicateProblems(map),
     ...map.elements.flatMap((element) => elementProblems(element, map)),
     ...map.conductors.flatMap((conductor) => conductorProblems(conductor, map)),
+    ...circuitContradictions(map),
   ];
 }
 

@@ -1,4 +1,4 @@
-import type { Analysis, Statement, StatementFamily, StatementLevel, Verdict3 } from "./analysis";
+import type { Analysis, Join, Statement, StatementFamily, StatementLevel, Verdict3 } from "./analysis";
 import { isHazardous, judgeLamp, lampText, pathText, verdictOf } from "./backfeed";
 import { analyseBatteries } from "./battery-analysis";
 import type { Reason } from "./bench-check";
@@ -6,7 +6,7 @@ import type { Circuit } from "./circuit";
 import { bondingOf, devicesInEarth } from "./earthing";
 import { figure } from "./figure";
 import { hasMains } from "./insulation";
-import type { Join } from "./joins";
+import { joinText } from "./joins";
 import { leakageSum } from "./leakage";
 import { judgeMainsIsolation, mixedBody, stillLive } from "./mains-isolation";
 import type { RuleSet } from "./rule-set";
@@ -18,12 +18,11 @@ import { list } from "./wording";
 export function statementsOf(
   circuit: Circuit,
   analysis: Omit<Analysis, "statements" | "problems">,
-  joins: Join[],
   ruleSet: RuleSet,
   facts: UnitFacts,
 ): Statement[] {
   const all = [
-    ...joins.map((join) => joinStatement(circuit, join)),
+    ...analysis.isolation.joins.map((join) => joinStatement(circuit, join)),
     ...isolationStatements(circuit, analysis, ruleSet),
     ...earthStatements(circuit, facts),
     ...reverseStatements(circuit, analysis),
@@ -68,25 +67,12 @@ const fromReason = (
 ) => say(family, id, level, text, elements, conductors);
 
 function joinStatement({ view }: Circuit, join: Join): Statement {
-  const when =
-    join.switchesOn.length === 0
-      ? "With every switch off"
-      : `With ${list(join.switchesOn.map((id) => view.name(id)))} on`;
-  const may = join.certainty === "possible" ? "may be" : "is";
-  const source = view.name(join.source);
-  const other = view.name(join.other);
-  const texts: Record<Join["kind"], string> = {
-    short: `${when}, ${other} ${may} short-circuited.`,
-    "mains-to-elv": `${when}, mains from ${source} ${may} joined with the extra-low voltage of ${other}.`,
-    "live-part": `${when}, ${other}, which can be touched, ${may} live from ${source}.`,
-    "live-earth": `${when}, a pole of ${source} ${may} joined with the protective earth at ${other}.`,
-  };
   const level: StatementLevel = join.certainty === "possible" ? "unknown" : "danger";
   return say(
     "isolation",
     join.id,
     level,
-    texts[join.kind],
+    joinText(view, join),
     [join.source, join.other, ...join.switchesOn],
     join.conductors,
   );
@@ -135,6 +121,19 @@ function isolationStatements(
   }
   for (const battery of view.ofKind("battery")) {
     const live = stillLive(isolation, battery.id);
+    const atMains = live.filter((id) => view.conductors.get(id)?.circuit === "mains");
+    if (atMains.length > 0) {
+      statements.push(
+        say(
+          "isolation",
+          `inverter ${battery.id}`,
+          "danger",
+          `With every switch off and the plug pulled, ${list(atMains)} stay at mains voltage, made from ${view.name(battery.id)}.`,
+          [battery.id],
+          atMains,
+        ),
+      );
+    }
     if (live.length > 0) {
       statements.push(
         say(

@@ -1,10 +1,11 @@
-import type { Verdict3 } from "../analysis";
+import type { IsolationResult, Verdict3 } from "../analysis";
 import type { BenchCheck, CheckDefinition } from "../bench-check";
 import { answer, because, caution, examination, keyOf, practice, worstVerdict } from "../check-parts";
 import { figure } from "../figure";
 import { judgeMainsIsolation, mixedBody, type MainsIsolation } from "../mains-isolation";
 import type { MapView } from "../map-view";
 import type { RuleSet } from "../rule-set";
+import { list } from "../wording";
 
 /** Off means off: all poles of mains broken together, far enough apart, by contacts rated for it. */
 export const doublePoleIsolation: CheckDefinition = {
@@ -67,7 +68,7 @@ export const doublePoleIsolation: CheckDefinition = {
         },
       };
     });
-    return [...inlets, ...bodies];
+    return [...inlets, ...inverterChecks(view, analysis.isolation), ...bodies];
   },
 };
 
@@ -142,6 +143,53 @@ function poleCheck(view: MapView, ruleSet: RuleSet, inlet: string, pole: string)
       conductors: view.wired.filter(({ circuit }) => circuit === "mains").map(({ id }) => id),
     },
   };
+}
+
+/** Where an inverter makes mains voltage from a battery, off must end it. */
+function inverterChecks(view: MapView, isolation: IsolationResult): BenchCheck[] {
+  if (!view.ofKind("converter").some(({ output }) => output === "mains")) return [];
+  return view.ofKind("battery").map(({ id }): BenchCheck => {
+    const live = isolation.whenOff.flatMap(({ conductor, from }) =>
+      view.conductors.get(conductor)?.circuit === "mains"
+        ? from.filter(({ source }) => source === id).map(({ certainty }) => ({ conductor, certainty }))
+        : [],
+    );
+    const conductors = live.map(({ conductor }) => conductor);
+    const verdict: Verdict3 = live.some(({ certainty }) => certainty === "certain")
+      ? "fail"
+      : live.length > 0
+        ? "unknown"
+        : "pass";
+    return {
+      key: keyOf("inverter-off", id),
+      family: "double-pole-isolation",
+      title: `Off ends the mains voltage made from ${view.name(id)}`,
+      why: [
+        because("An outlet that an inverter feeds is as dangerous as mains, with the plug pulled too.", [id]),
+      ],
+      method: [
+        "Pull the plug, put every switch off and measure between the poles of each outlet and from each pole to earth.",
+      ],
+      cautions: [caution.live, caution.battery],
+      computed: answer(verdict, [
+        verdict === "pass"
+          ? because(`With every switch off ${view.name(id)} feeds no conductor at mains voltage.`, [id])
+          : because(
+              `With every switch off ${list(conductors)} stay at mains voltage, made from ${view.name(id)}.`,
+              [id],
+              conductors,
+            ),
+      ]),
+      asks: examination(
+        "Is every outlet dead with the switches off and the plug pulled?",
+        "Dead",
+        "Voltage found",
+      ),
+      photo: "none",
+      citations: [practice("off ends what an inverter feeds")],
+      subjects: { elements: [id, ...view.ofKind("converter").map((each) => each.id)], conductors },
+    };
+  });
 }
 
 function plugCheck(

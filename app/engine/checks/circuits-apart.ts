@@ -1,0 +1,66 @@
+import type { BenchCheck, CheckDefinition } from "../bench-check";
+import { answer, because, caution, examination, keyOf, worstVerdict } from "../check-parts";
+import { joinText } from "../joins";
+
+/** Nothing is joined that must be apart, in any position of the switches: mains and the rest, poles, parts that are touched. */
+export const circuitsApart: CheckDefinition = {
+  id: "circuits-apart",
+  family: "insulation",
+  derive(view, ruleSet, _facts, analysis) {
+    const { joins, combinationsComplete } = analysis.isolation;
+    const sources = [
+      ...view.ofKind("mains-inlet"),
+      ...view.ofKind("dc-inlet"),
+      ...view.ofKind("battery"),
+    ].map(({ id }) => id);
+    const parts = view.ofKind("accessible-part").map(({ id }) => id);
+    const reasons = joins.map((join) =>
+      because(joinText(view, join), [join.source, join.other, ...join.switchesOn], join.conductors),
+    );
+    const verdicts = joins.map(({ certainty }) =>
+      certainty === "certain" ? ("fail" as const) : ("unknown" as const),
+    );
+    const gone = combinationsComplete
+      ? {
+          verdict: "pass" as const,
+          text: "In no position of the switches is a source short-circuited, mains joined with another circuit, or a part that is touched live.",
+        }
+      : {
+          verdict: "unknown" as const,
+          text: "There are more switches than all combinations can be worked out for; those worked out show nothing joined.",
+        };
+    const check: BenchCheck = {
+      key: keyOf("circuits-apart"),
+      family: "insulation",
+      title: "Circuits that must be apart are apart",
+      why: [
+        because("One wrong joint puts mains on what people touch, or shorts a source.", [
+          ...sources,
+          ...parts,
+        ]),
+      ],
+      method: [
+        "With the plug pulled and the battery's fuse out, test for continuity between mains pins and each output, and between the poles of each source.",
+        "Repeat in every position of every switch.",
+      ],
+      cautions: [
+        caution.unplug,
+        caution.charge,
+        ...(view.ofKind("battery").length > 0 ? [caution.battery] : []),
+      ],
+      computed:
+        joins.length > 0
+          ? answer(worstVerdict(verdicts), reasons)
+          : answer(gone.verdict, [because(gone.text, sources)]),
+      asks: examination(
+        "Is there no continuity where there must be none?",
+        "None found",
+        "Something is joined",
+      ),
+      photo: "none",
+      citations: [ruleSet.values.insulationMainsToElv.citation],
+      subjects: { elements: [...sources, ...parts], conductors: [] },
+    };
+    return sources.length === 0 ? [] : [check];
+  },
+};
