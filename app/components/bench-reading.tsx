@@ -23,7 +23,9 @@ export function readingText({ kind, value, bound, unit, conforms }: ReadingSourc
   }
 }
 
-/** "± 0.02 Ω (k = 2)", or that it isn't known. */
+/** "± 0.02 Ω (k = 2)", or that it isn't known. Two figures: more would claim to know the uncertainty better than anybody does. */
 export function uncertaintyText(expanded: number | null, unit: string): string {
-  return expanded === null ? "uncertainty not known" : `± ${figure(expanded)} ${unit} (k = 2)`;
+  return expanded === null
+    ? "uncertainty not known"
+    : `± ${figure(Number(expanded.toPrecision(2)))} ${unit} (k = 2)`;
 }

@@ -111,7 +111,7 @@ export function lineVerdict(
   if (computed === "unknown" && measured === "pass") {
     return {
       verdict,
-      because: `${bench} But the map leaves something unknown, so this decides nothing yet.`,
+      because: `${bench} But the map leaves something unknown, so this decides nothing yet: it must be filled in, or the step answered as not possible with a reason.`,
     };
   }
   return { verdict, because: bench };

@@ -13,7 +13,7 @@ import type { SheetLine } from "~/services/bench/sheet-view";
 import type { AnswerDraft } from "./answer-draft";
 import { checkHref } from "./check-href";
 import { judgeDraft } from "./live-verdict";
-import { ReadingFields } from "./reading-fields";
+import { ConditionsField, ReadingFields } from "./reading-fields";
 import { useStepFetcher } from "./step-fetcher";
 import { VerdictBox } from "./verdict-box";
 
@@ -115,6 +115,17 @@ export function AnswerForm({
           onChange={(event) => change({ reason: event.currentTarget.value })}
         />
       ) : null}
+      <div aria-live="polite" className="min-h-24 border-y border-rule py-4">
+        {live.kind === "verdict" ? (
+          <VerdictBox {...live} unit={check.asks.kind === "reading" ? check.asks.limit.unit : ""} />
+        ) : (
+          <p className="text-ink-soft">{live.hint}</p>
+        )}
+      </div>
+
+      {kind === "measured" && check.asks.kind === "reading" ? (
+        <ConditionsField asks={check.asks} values={values} change={change} errors={errors} />
+      ) : null}
       <TextareaField
         field={{ name: "note", errors: errors.note }}
         label="Note"
@@ -125,14 +136,6 @@ export function AnswerForm({
         value={values.note}
         onChange={(event) => change({ note: event.currentTarget.value })}
       />
-
-      <div aria-live="polite" className="min-h-24 border-t border-rule pt-4">
-        {live.kind === "verdict" ? (
-          <VerdictBox {...live} unit={check.asks.kind === "reading" ? check.asks.limit.unit : ""} />
-        ) : (
-          <p className="text-ink-soft">{live.hint}</p>
-        )}
-      </div>
 
       <div className="flex flex-wrap gap-2">
         <Button

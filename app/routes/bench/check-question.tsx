@@ -3,16 +3,13 @@ import { Caution } from "~/components/ui/caution";
 import { Sheet } from "~/components/ui/sheet";
 import { VerdictBadge } from "~/components/ui/verdict-badge";
 import type { BenchCheck, Reason } from "~/engine/bench-check";
+import type { Citation } from "~/engine/rule-set";
 
-/** What the step is about: cautions first, then why it is there, how it is done, its limit with the source, and the engine's own answer. */
-export function CheckQuestion({
-  check,
-  elements,
-}: {
-  check: BenchCheck;
-  elements: readonly { id: string; label: string }[];
-}) {
+/** What the step is about: cautions first, then how it is done and its limit with the source. */
+export function CheckQuestion({ check }: { check: BenchCheck }) {
   const { asks } = check;
+  const limitSource = asks.kind === "reading" ? placeOf(asks.limit.citation) : null;
+  const sources = check.citations.filter((citation) => placeOf(citation) !== limitSource);
   return (
     <div className="space-y-5">
       {check.cautions.length > 0 ? (
@@ -51,12 +48,12 @@ export function CheckQuestion({
         ) : (
           <p className="text-lg">{asks.question}</p>
         )}
-        {check.citations.length > 0 ? (
+        {sources.length > 0 ? (
           <>
             <h3 className="legend-text mt-4">Sources</h3>
             <ul className="space-y-1 text-sm">
-              {check.citations.map((citation) => (
-                <li key={`${citation.standard} ${citation.clause}`}>
+              {sources.map((citation) => (
+                <li key={placeOf(citation)}>
                   <CitationText citation={citation} />
                 </li>
               ))}
@@ -64,6 +61,20 @@ export function CheckQuestion({
           </>
         ) : null}
       </Sheet>
+    </div>
+  );
+}
+
+/** Why the step is on the sheet, and what the engine already knows about it from the map. */
+export function CheckBackground({
+  check,
+  elements,
+}: {
+  check: BenchCheck;
+  elements: readonly { id: string; label: string }[];
+}) {
+  return (
+    <div className="space-y-5">
       <Sheet title="Why this step is here">
         <Reasons reasons={check.why} elements={elements} />
       </Sheet>
@@ -78,6 +89,10 @@ export function CheckQuestion({
       ) : null}
     </div>
   );
+}
+
+function placeOf({ standard, clause, edition }: Citation): string {
+  return `${standard} ${clause} ${edition}`;
 }
 
 function Reasons({

@@ -18,7 +18,7 @@ import type { z } from "zod";
 import type { Route } from "./+types/check";
 import { AnswerPanel } from "./answer-panel";
 import { CheckFindings } from "./check-findings";
-import { CheckQuestion } from "./check-question";
+import { CheckBackground, CheckQuestion } from "./check-question";
 import { closingSchema, findingSchema, observeSchema } from "./check.schema";
 import { StepBar } from "./step-bar";
 
@@ -184,9 +184,10 @@ export default function CheckPage({ loaderData, params }: Route.ComponentProps) 
           </LinkButton>
         </div>
       </header>
-      <div className="grid items-start gap-5 lg:grid-cols-2">
-        <CheckQuestion check={check} elements={loaderData.elements} />
-        <div className="space-y-5">
+      {/* On a tablet the answer comes right after the question; on a desk it stands beside both. */}
+      <div className="grid items-start gap-5 lg:grid-cols-2 lg:grid-rows-[auto_1fr]">
+        <CheckQuestion check={check} />
+        <div className="space-y-5 lg:row-span-2">
           <AnswerPanel
             // Another check or another latest answer is another form.
             key={`${check.key} ${line.observation?.id ?? 0}`}
@@ -238,6 +239,7 @@ export default function CheckPage({ loaderData, params }: Route.ComponentProps) 
             draftKey={draftKey}
           />
         </div>
+        <CheckBackground check={check} elements={loaderData.elements} />
       </div>
       <StepBar
         base={base}

@@ -1,65 +1,38 @@
 import { useState } from "react";
-import { SeverityBadge } from "~/components/ui/severity-badge";
+import { MapDiagram } from "~/components/map-diagram";
+import { byLevel, StatementList } from "~/components/statement-list";
 import { Sheet } from "~/components/ui/sheet";
-import type { Analysis, Statement, StatementLevel } from "~/engine/analysis";
+import type { Analysis, Statement } from "~/engine/analysis";
 import type { EnergyMap } from "~/engine/energy-map";
 
-const order: StatementLevel[] = ["danger", "defect", "unknown", "caution", "good"];
-
-/** What the engine says of the map before anybody has measured, worst first; a statement can be shown in the diagram. */
+/** The diagram and what the engine says of it before anybody has measured: what is wrong or unknown first, the rest on request. */
 export function EngineAnswers({ map, analysis }: { map: EnergyMap; analysis: Analysis }) {
-  const [chosen, setChosen] = useState<string | null>(null);
-  const statements = [...analysis.statements].sort((a, b) => order.indexOf(a.level) - order.indexOf(b.level));
+  const [pointed, setPointed] = useState<Statement | null>(null);
+  const statements = [...analysis.statements].sort(byLevel);
+  const notable = statements.filter(({ level }) => level !== "good");
+  const good = statements.filter(({ level }) => level === "good");
   return (
     <Sheet
       title="What the map says beforehand"
       lead="Computed from the energy map alone; nothing here was measured."
     >
-      {statements.length === 0 ? (
-        <p className="text-ink-soft">The engine has nothing to say about this map. That is no pass.</p>
-      ) : (
-        <ul className="space-y-2">
-          {statements.map((statement) => (
-            <StatementLine
-              key={statement.id}
-              statement={statement}
-              map={map}
-              chosen={chosen === statement.id}
-              onChoose={() => setChosen(chosen === statement.id ? null : statement.id)}
-            />
-          ))}
-        </ul>
-      )}
+      <div className="space-y-4">
+        <MapDiagram map={map} analysis={analysis} highlight={pointed} />
+        {statements.length === 0 ? (
+          <p className="text-ink-soft">The engine has nothing to say about this map. That is no pass.</p>
+        ) : null}
+        {notable.length > 0 ? <StatementList statements={notable} onPoint={setPointed} /> : null}
+        {good.length > 0 ? (
+          <details>
+            <summary className="min-h-11 py-2 font-medium">
+              {good.length === 1
+                ? "1 thing that it finds right"
+                : `${good.length} things that it finds right`}
+            </summary>
+            <StatementList statements={good} onPoint={setPointed} />
+          </details>
+        ) : null}
+      </div>
     </Sheet>
-  );
-}
-
-function StatementLine({
-  statement,
-  map,
-  chosen,
-  onChoose,
-}: {
-  statement: Statement;
-  map: EnergyMap;
-  chosen: boolean;
-  onChoose: () => void;
-}) {
-  const names = statement.elements.map(
-    (id) => map.elements.find((element) => element.id === id)?.label ?? id,
-  );
-  return (
-    <li className="grid gap-x-3 gap-y-1 sm:grid-cols-[6.5rem_1fr]">
-      <span>
-        <SeverityBadge severity={statement.level} />
-      </span>
-      <span>
-        {statement.text}
-        {names.length > 0 ? <span className="block text-sm text-ink-soft">{names.join(", ")}</span> : null}
-        <button type="button" hidden aria-pressed={chosen} onClick={onChoose}>
-          Show in the diagram
-        </button>
-      </span>
-    </li>
   );
 }

@@ -8,7 +8,9 @@ import { relatedUnits } from "~/engine/scaled-units";
 import type { BenchInstrument } from "~/services/bench/load-check.server";
 import { type AnswerDraft, isUsable } from "./answer-draft";
 
-/** Value, unit, over-range, instrument and conditions of a reading, for gloved hands. */
+type ReadingAsk = Extract<Ask, { kind: "reading" }>;
+
+/** Value, unit, over-range and instrument of a reading, for gloved hands. */
 export function ReadingFields({
   asks,
   values,
@@ -16,7 +18,7 @@ export function ReadingFields({
   instruments,
   errors,
 }: {
-  asks: Extract<Ask, { kind: "reading" }>;
+  asks: ReadingAsk;
   values: AnswerDraft;
   change: (changes: Partial<AnswerDraft>) => void;
   instruments: readonly BenchInstrument[];
@@ -77,30 +79,46 @@ export function ReadingFields({
         value={values.instrumentId}
         onChange={(event) => change({ instrumentId: event.currentTarget.value })}
       />
-      <div>
-        <TextareaField
-          field={{ name: "conditions", errors: errors.conditions }}
-          label="Conditions as they were"
-          hint="Test voltage, polarity, switch position"
-          optional
-          size="bench"
-          rows={1}
-          maxLength={500}
-          value={values.conditions}
-          onChange={(event) => change({ conditions: event.currentTarget.value })}
-        />
-        {asks.conditions.length > 0 ? (
-          <Button
-            type="button"
-            variant="quiet"
-            className="mt-1"
-            onClick={() => change({ conditions: asks.conditions.join("; ") })}
-          >
-            As asked: {asks.conditions.join("; ")}
-          </Button>
-        ) : null}
-      </div>
     </>
+  );
+}
+
+/** How it was measured, with what the check asks for ready to be taken over. */
+export function ConditionsField({
+  asks,
+  values,
+  change,
+  errors,
+}: {
+  asks: ReadingAsk;
+  values: AnswerDraft;
+  change: (changes: Partial<AnswerDraft>) => void;
+  errors: Record<string, string[] | undefined>;
+}) {
+  return (
+    <div>
+      <TextareaField
+        field={{ name: "conditions", errors: errors.conditions }}
+        label="Conditions as they were"
+        hint="Test voltage, polarity, switch position"
+        optional
+        size="bench"
+        rows={1}
+        maxLength={500}
+        value={values.conditions}
+        onChange={(event) => change({ conditions: event.currentTarget.value })}
+      />
+      {asks.conditions.length > 0 ? (
+        <Button
+          type="button"
+          variant="quiet"
+          className="mt-1"
+          onClick={() => change({ conditions: asks.conditions.join("; ") })}
+        >
+          As asked: {asks.conditions.join("; ")}
+        </Button>
+      ) : null}
+    </div>
   );
 }
 
