@@ -2,7 +2,7 @@ import { Link } from "react-router";
 import { CircleCheck, OctagonAlert } from "lucide-react";
 import { Sheet } from "~/components/ui/sheet";
 import { checkHref } from "~/routes/bench/check-href";
-import type { GuardReason, ReviewGuard } from "~/services/signing/signing-guards.server";
+import type { GuardReason, ReviewGuard } from "~/services/signing/review-guards";
 
 const titles: Record<ReviewGuard, string> = {
   independent: "You neither built nor inspected it",

@@ -72,11 +72,13 @@ export function listTurns(db: Reader, unitId: number): Promise<BenchTurnView[]> 
 
 /** A person's licences in a workshop, the one that lasts longest first; locked against a revocation meanwhile. */
 function ownLicences(db: Reader, workshopId: number, personId: number): Promise<LicenceRow[]> {
-  return db
-    .select()
-    .from(licences)
-    .where(and(eq(licences.workshopId, workshopId), eq(licences.personId, personId)))
-    .orderBy(desc(licences.validTo), desc(licences.id))
-    // MariaDB has no "for share", and drizzle no "lock in share mode".
-    .for("update");
+  return (
+    db
+      .select()
+      .from(licences)
+      .where(and(eq(licences.workshopId, workshopId), eq(licences.personId, personId)))
+      .orderBy(desc(licences.validTo), desc(licences.id))
+      // MariaDB has no "for share", and drizzle no "lock in share mode".
+      .for("update")
+  );
 }
