@@ -12,7 +12,7 @@ import { IconButton } from "./ui/icon-button";
 
 const circuits = [
   { value: "mains", label: "Mains" },
-  { value: "elv", label: "Extra-low voltage" },
+  { value: "elv", label: "ELV" },
   { value: "earth", label: "Earth" },
 ];
 const insulations = [
@@ -24,7 +24,26 @@ const insulations = [
   { value: "none", label: "None: bare" },
 ];
 
-const grid = "grid grid-cols-2 items-start gap-x-2 gap-y-2 sm:grid-cols-4";
+/** On a wide page one line a connection, under {@link ConductorHeader}; else two, each field with its own label. */
+const grid =
+  "grid grid-cols-2 items-start gap-x-1.5 gap-y-2 sm:grid-cols-4 xl:grid-cols-[4rem_minmax(0,1fr)_minmax(0,1fr)_5.25rem_10.75rem_7.5rem_5.5rem]";
+
+/** The headings of the one-line rows; the fields keep their own labels for assistive technology. */
+export function ConductorHeader() {
+  return (
+    <div
+      aria-hidden
+      className="flex gap-1 border-b border-rule bg-inset px-3 py-1.5 text-xs font-medium max-xl:hidden"
+    >
+      <div className={`${grid} min-w-0 flex-1`}>
+        {["Id", "From", "To", "Circuit", "Cross-section", "Length", "Insulation"].map((heading) => (
+          <span key={heading}>{heading}</span>
+        ))}
+      </div>
+      <span className="w-18" />
+    </div>
+  );
+}
 
 export interface ConductorRowProps {
   conductor: Conductor;
@@ -60,7 +79,7 @@ export const ConductorRow = memo(function ConductorRow({
         onAct({ type: "move", subject: "conductor", id, by: event.key === "ArrowUp" ? -1 : 1 });
       }}
     >
-      <div className={`${grid} min-w-0 flex-1`}>
+      <div className={`${grid} min-w-0 flex-1 xl:[&_label]:sr-only`}>
         <TextCell
           id={`${prefix}-id`}
           label="Id"
@@ -69,17 +88,6 @@ export const ConductorRow = memo(function ConductorRow({
           commitOnBlur
           check={(text) => idProblem(text, id, taken)}
           onChange={(to) => onAct({ type: "rename", subject: "conductor", id, to })}
-        />
-        <ChoiceCell
-          id={`${prefix}-circuit`}
-          label="Circuit"
-          remark={remarkOf(of("circuit"), false)}
-          value={conductor.circuit}
-          choices={circuits}
-          onChange={(value) => {
-            const circuit = circuitOf(value);
-            if (circuit) change({ circuit });
-          }}
         />
         <TerminalCell
           id={`${prefix}-from`}
@@ -96,6 +104,18 @@ export const ConductorRow = memo(function ConductorRow({
           elements={elements}
           value={conductor.to}
           onChange={(to) => change({ to })}
+        />
+        <ChoiceCell
+          id={`${prefix}-circuit`}
+          label="Circuit"
+          hint="ELV is extra-low voltage: batteries and the output sides of supplies."
+          remark={remarkOf(of("circuit"), false)}
+          value={conductor.circuit}
+          choices={circuits}
+          onChange={(value) => {
+            const circuit = circuitOf(value);
+            if (circuit) change({ circuit });
+          }}
         />
         <AreaCell
           id={`${prefix}-area`}
@@ -125,7 +145,7 @@ export const ConductorRow = memo(function ConductorRow({
           }}
         />
       </div>
-      <span className="flex flex-col pt-3 sm:flex-row">
+      <span className="flex flex-col pt-3 sm:flex-row xl:pt-0">
         <IconButton icon={Copy} label={`Duplicate ${id}`} onClick={() => onDuplicate(conductor)} />
         <IconButton
           icon={Trash2}
@@ -163,7 +183,7 @@ function AreaCell({
   const value = area === null ? null : "awg" in area ? area.awg : area.mm2;
   const make = (amount: number): Conductor["area"] => (shown === "awg" ? { awg: amount } : { mm2: amount });
   return (
-    <div className="col-span-2 flex min-w-0 items-start gap-1">
+    <div className="col-span-2 flex min-w-0 items-start gap-1 xl:col-span-1">
       <NumberCell
         id={id}
         label="Cross-section"
@@ -175,7 +195,7 @@ function AreaCell({
         onChange={(amount) => onChange(amount === null ? null : make(amount))}
         className="flex-1"
       />
-      <div className="w-19 shrink-0">
+      <div className="w-15 shrink-0">
         <label htmlFor={`${id}-unit`} className="sr-only">
           Unit of the cross-section
         </label>
@@ -187,7 +207,7 @@ function AreaCell({
             // 18 in one unit is nothing like 18 in the other: the number has to be entered anew.
             if (area !== null) onChange(null);
           }}
-          className="control-box mt-4 min-h-9 px-1 py-1 text-sm pointer-coarse:min-h-11"
+          className="control-box mt-4 min-h-9 px-1 py-1 text-sm xl:mt-0 pointer-coarse:min-h-11"
         >
           <option value="mm2">mm²</option>
           <option value="awg">AWG</option>

@@ -12,7 +12,7 @@ import type { ElementKind } from "~/engine/energy-map";
 import type { Problem } from "~/engine/problem";
 import type { RuleSet } from "~/engine/rule-set";
 import type { UnitFacts } from "~/engine/unit-facts";
-import { AddConductor, ConductorRow, focusSoon } from "./map-editor-conductor";
+import { AddConductor, ConductorHeader, ConductorRow, focusSoon } from "./map-editor-conductor";
 import { ElementRow } from "./map-editor-element";
 import { isTaken, nextElementId, nextId } from "./map-editor-state";
 import { MapDiagram } from "./map-diagram";
@@ -108,7 +108,7 @@ export function MapEditor({ facts, ruleSet, exportName, onContinue, ...draftOpti
   const blocking = analysis.problems.filter((problem) => problem.blocking);
   return (
     <div
-      className="grid items-start gap-5 xl:grid-cols-[minmax(0,1fr)_27rem]"
+      className="grid items-start gap-5 xl:grid-cols-[minmax(0,1fr)_22rem]"
       onKeyDown={(event) => {
         // Inside a text field the keys belong to the text.
         if (!(event.ctrlKey || event.metaKey) || event.key.toLowerCase() !== "z") return;
@@ -193,6 +193,7 @@ export function MapEditor({ facts, ruleSet, exportName, onContinue, ...draftOpti
           lead="Each conductor from terminal to terminal, with what limits its current."
           flush
         >
+          {map.conductors.length > 0 ? <ConductorHeader /> : null}
           <ol>
             {map.conductors.map((conductor) => (
               <ConductorRow
