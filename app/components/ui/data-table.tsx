@@ -81,7 +81,7 @@ export function DataTable<Row>({
                   scope="col"
                   aria-sort={current === null ? undefined : current === "asc" ? "ascending" : "descending"}
                   className={
-                    `px-3 py-2 align-bottom font-semibold ${column.numeric ? "text-right" : ""} ` +
+                    `px-2 py-2 align-bottom lg:px-3 font-semibold ${column.numeric ? "text-right" : ""} ` +
                     (column.sortable ? "max-sm:px-0 max-sm:py-0" : "max-sm:sr-only")
                   }
                 >
@@ -124,7 +124,7 @@ function TableRow<Row>({ row, columns, href }: { row: Row; columns: Column<Row>[
       {columns.map((column) => {
         const content = column.cell(row);
         const cellClass =
-          `px-3 py-2 align-middle ${column.numeric ? "text-right tabular-nums max-sm:text-left" : ""} ` +
+          `px-2 py-2 align-middle lg:px-3 ${column.numeric ? "text-right tabular-nums max-sm:text-left" : ""} ` +
           `${column.nowrap ? "whitespace-nowrap" : ""} max-sm:flex max-sm:gap-3 max-sm:px-0 max-sm:py-1`;
         if (column.primary) {
           return (
@@ -132,7 +132,7 @@ function TableRow<Row>({ row, columns, href }: { row: Row; columns: Column<Row>[
               key={column.id}
               role="rowheader"
               scope="row"
-              className={`${cellClass} text-left font-semibold max-sm:text-base sm:min-w-32`}
+              className={`${cellClass} text-left font-semibold max-sm:text-base ${column.numeric || column.nowrap ? "" : "sm:min-w-32"}`}
             >
               {href ? (
                 // The stretched pseudo-element makes the whole row a target; the link's name stays short.
