@@ -1,19 +1,35 @@
-/** The drawing of a map beside the editor and on the cards of starters. */
-import type { Analysis } from "~/engine/analysis";
+/** The drawing of a map, with what a statement names picked out in the statement's own tone. */
+import type { Analysis, Statement, StatementLevel } from "~/engine/analysis";
 import type { EnergyMap } from "~/engine/energy-map";
+import { EnergyDiagram } from "./energy-diagram";
 
 export interface MapDiagramProps {
   map: EnergyMap;
   analysis?: Analysis;
-  highlight?: { conductors: string[]; elements?: string[] } | null;
-  /** Only the lines, for a small card. */
-  tiny?: boolean;
+  /** The statement under pointer or focus. */
+  highlight?: Statement | null;
 }
 
-export function MapDiagram({ map }: MapDiagramProps) {
+const tones: Record<StatementLevel, "danger" | "defect" | "caution" | "note"> = {
+  danger: "danger",
+  defect: "defect",
+  caution: "caution",
+  unknown: "caution",
+  good: "note",
+};
+
+export function MapDiagram({ map, analysis, highlight = null }: MapDiagramProps) {
   return (
-    <span className="text-sm text-ink-soft">
-      {map.elements.length} elements, {map.conductors.length} connections
-    </span>
+    <EnergyDiagram
+      map={map}
+      analysis={analysis}
+      highlight={
+        highlight && {
+          conductors: highlight.conductors,
+          elements: highlight.elements,
+          tone: tones[highlight.level],
+        }
+      }
+    />
   );
 }
