@@ -105,6 +105,7 @@ export async function action({ request, context, params }: Route.ActionArgs) {
   const { services, unit } = await authoriseUnit(context, "signing.queue", params.unit);
   const form = await request.formData();
   const act = decisionKindSchema.parse(form.get("act"));
+  if (unit.state === "awaiting_signature") await authoriseUnit(context, `signing.${act}`, params.unit);
   const common = { unitNumber: unit.number, address: context.get(clientAddressContext) };
   const archive = `/w/${params.workshop}/archive/${unit.number}`;
 
