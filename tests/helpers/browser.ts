@@ -74,7 +74,7 @@ export function useBrowser(): TestBrowser {
         timezoneId: "Europe/Berlin",
       });
       const page = await context.newPage();
-      page.setDefaultTimeout(15_000);
+      page.setDefaultTimeout(30_000);
       page.on("console", (message) => {
         if (message.type() === "error")
           problems.push(`${page.url()}: ${message.text()} ${message.location().url}`);
