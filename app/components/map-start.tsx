@@ -3,7 +3,7 @@ import { FileJson, Plus } from "lucide-react";
 import { useId, useState } from "react";
 import type { EnergyMap } from "~/engine/energy-map";
 import { starterMaps } from "~/engine/starter-maps";
-import { MapDiagram } from "./map-diagram";
+import { EnergyDiagram } from "./energy-diagram";
 import { importMap } from "./map-import";
 import { Button } from "./ui/button";
 import { Dialog } from "./ui/dialog";
@@ -33,7 +33,7 @@ export function MapStart({ onStart, onBlank }: MapStartProps) {
                 aria-hidden
                 className="block h-32 w-full overflow-hidden border-b border-rule bg-paper p-2"
               >
-                <MapDiagram map={starter.map} tiny />
+                <EnergyDiagram map={starter.map} tiny />
               </span>
               <span className="block p-3">
                 <span className="block font-semibold">{starter.title}</span>

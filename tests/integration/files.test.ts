@@ -1,4 +1,5 @@
 import { createHash } from "node:crypto";
+import { readFileSync } from "node:fs";
 import { buffer } from "node:stream/consumers";
 import { S3Client } from "@aws-sdk/client-s3";
 import { eq } from "drizzle-orm";
@@ -139,6 +140,20 @@ describe("a photo", () => {
       upload(bytesOf(picture), `picture.${format}`),
     );
     expect(file).toMatchObject({ kind: "photo", contentType: "image/jpeg", width: 200, height: 100 });
+  });
+
+  test("may come as HEIC, as phones make it, though sharp alone can't decode that", async () => {
+    const { workshop, unit } = await setUp();
+    // Our own drawing of a disc, 96 × 64 pixels, encoded with libheif's heif-enc.
+    const heic = readFileSync(new URL("../fixtures/files/small.heic", import.meta.url));
+    const file = await receiveUpload(workshop.as("builder"), unit, upload(bytesOf(heic), "small.heic"));
+    expect(file).toMatchObject({ kind: "photo", contentType: "image/jpeg", width: 96, height: 64 });
+    const [row] = await db.select().from(tables.files).where(eq(tables.files.id, file.id));
+    const full = sharp(await read(objectStore(), row?.storageKey ?? null));
+    const disc = await full.extract({ left: 28, top: 30, width: 4, height: 4 }).stats();
+    // The disc's copper, not a black or green frame.
+    expect(disc.channels[0]?.mean).toBeGreaterThan(120);
+    expect(disc.channels[2]?.mean).toBeLessThan(60);
   });
 
   test("its name is kept for showing, without folders; its key is ours", async () => {
