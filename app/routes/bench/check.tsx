@@ -125,6 +125,10 @@ function answerOf(value: z.output<typeof observeSchema>): AnswerInput {
   }
 }
 
+// Shared by the page and its client action, which keeps the two in one chunk: an action in a chunk of its own would have to
+// be fetched at the very moment when the connection is lost.
+const KEPT = "What is typed here is kept on this device until it is saved.";
+
 /**
  * A lost connection or a server that is away must not replace the page: what is typed stays, and the form says what
  * happened. Refusals that the server put into words go on to the error page.
@@ -134,14 +138,14 @@ export async function clientAction({ serverAction }: Route.ClientActionArgs) {
     return await serverAction();
   } catch (error) {
     if (error instanceof Response || (isRouteErrorResponse(error) && error.status < 500)) throw error;
-    return {
-      error: {
-        "": [
-          "The server could not be reached or could not save this. What you typed is kept here; try again.",
-        ],
+    // The status keeps React Router from reading the page anew, which would fail in the same way.
+    return data(
+      {
+        error: { "": [`The server could not be reached, or could not save this. Try again. ${KEPT}`] },
+        conflict: null,
       },
-      conflict: null,
-    };
+      { status: 503 },
+    );
   }
 }
 
@@ -239,7 +243,10 @@ export default function CheckPage({ loaderData, params }: Route.ComponentProps) 
             draftKey={draftKey}
           />
         </div>
-        <CheckBackground check={check} elements={loaderData.elements} />
+        <div className="space-y-5">
+          <CheckBackground check={check} elements={loaderData.elements} />
+          {whyNot === null ? <p className="text-sm text-ink-soft print:hidden">{KEPT}</p> : null}
+        </div>
       </div>
       <StepBar
         base={base}

@@ -5,7 +5,7 @@ import { readingText, uncertaintyText } from "~/components/bench-reading";
 import { LineVerdictBadge } from "~/components/bench-verdict";
 import { SeverityBadge } from "~/components/ui/severity-badge";
 import { withParams } from "~/components/ui/table-params";
-import { type CheckFamily, checkFamilies } from "~/engine/bench-check";
+import type { CheckFamily } from "~/engine/bench-check";
 import type { SheetLine } from "~/services/bench/sheet-view";
 import { checkHref } from "./check-href";
 import { isShown, type Show, shows, showWords } from "./sheet-filter";
@@ -29,7 +29,8 @@ export function SheetLines({
   revision: number;
 }) {
   const shown = lines.filter((line) => isShown(line, show));
-  const families = checkFamilies.filter((family) => shown.some((line) => line.check.family === family));
+  // In the order in which the bench comes to them.
+  const families = [...new Set(shown.map((line) => line.check.family))];
   return (
     <>
       <div className="flex flex-wrap items-center gap-x-6 gap-y-2 border-b border-rule px-3 py-2 print:hidden">
