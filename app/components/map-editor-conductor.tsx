@@ -26,7 +26,7 @@ const insulations = [
 
 /** On a wide page one line a connection, under {@link ConductorHeader}; else two, each field with its own label. */
 const grid =
-  "grid grid-cols-2 items-start gap-x-1.5 gap-y-2 sm:grid-cols-4 xl:grid-cols-[4rem_minmax(0,1fr)_minmax(0,1fr)_5.25rem_10.75rem_7.5rem_5.5rem]";
+  "grid grid-cols-2 items-start gap-x-1.5 gap-y-2 sm:grid-cols-4 xl:grid-cols-[3.75rem_minmax(0,1fr)_minmax(0,1fr)_5rem_10rem_7.25rem_5.25rem]";
 
 /** The headings of the one-line rows; the fields keep their own labels for assistive technology. */
 export function ConductorHeader() {
@@ -264,7 +264,8 @@ export function TerminalCell({
             <optgroup key={element.id} label={nameOf(element)}>
               {terminalsOf(element).map((terminal) => (
                 <option key={terminal.name} value={`${element.id}.${terminal.name}`}>
-                  {element.id} · {terminal.label}
+                  {element.id} ·{" "}
+                  {terminal.name === terminal.label ? terminal.name : `${terminal.name} ${terminal.label}`}
                 </option>
               ))}
             </optgroup>

@@ -117,6 +117,13 @@ export function MapEditor({ facts, ruleSet, exportName, onContinue, ...draftOpti
         act({ type: event.shiftKey ? "redo" : "undo" });
       }}
     >
+      {map.elements.length > 0 ? (
+        <Sheet title="Drawing" className="xl:col-span-2" flush>
+          <div className="max-h-[45dvh] overflow-y-auto p-3">
+            <MapDiagram map={deferred} analysis={analysis} highlight={pointed} />
+          </div>
+        </Sheet>
+      ) : null}
       <div className="min-w-0 space-y-4">
         <KeptNotice draft={draft} onTaken={() => setBegun(true)} />
         {save.kind === "conflict" ? <MapConflict message={save.message} onChoose={draft.choose} /> : null}
@@ -235,9 +242,6 @@ export function MapEditor({ facts, ruleSet, exportName, onContinue, ...draftOpti
       </div>
 
       <div className="min-w-0 space-y-4 xl:sticky xl:top-4 xl:max-h-[calc(100dvh-2rem)] xl:overflow-y-auto">
-        <Sheet title="Drawing" headingLevel={2} flush>
-          <MapDiagram map={deferred} analysis={analysis} highlight={pointed} />
-        </Sheet>
         <Sheet
           title={
             blocking.length === 0

@@ -40,8 +40,8 @@ export function MapOverview({ map, ruleSet, facts, base, mayEdit }: MapOverviewP
     );
   }
   return (
-    <div className="grid items-start gap-5 lg:grid-cols-[3fr_2fr]">
-      <Sheet title="Energy map" flush>
+    <div className="space-y-5">
+      <Sheet title="Energy map">
         <MapDiagram map={map} analysis={analysis} highlight={pointed} />
       </Sheet>
       <Sheet
