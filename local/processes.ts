@@ -1,4 +1,5 @@
 import { type ChildProcess, spawn } from "node:child_process";
+import { randomInt } from "node:crypto";
 import { closeSync, existsSync, openSync, readdirSync, readFileSync } from "node:fs";
 import { createServer } from "node:net";
 import { SetupError } from "./steps.mjs";
@@ -104,23 +105,25 @@ export function lastLines(file: string | undefined, count = 12): string {
   return `\n${lines.map((line) => `    ${line}`).join("\n")}`;
 }
 
-/** A port that is free on the loopback now: `preferred` when it can be had. */
-export async function freePort(preferred = 0): Promise<number> {
-  const port = await tryPort(preferred);
-  if (port !== null) return port;
-  const other = await tryPort(0);
-  if (other === null) throw new SetupError("No free port was found on 127.0.0.1.");
-  return other;
+/**
+ * A port that is free on the loopback now: `preferred` when it can be had. Others are taken from below the range that
+ * the kernel gives to outgoing connections (from 32768): there, a client that tries to reach a service which is
+ * stopped for a moment could be given the service's own port.
+ */
+export async function freePort(preferred?: number): Promise<number> {
+  if (preferred !== undefined && (await isFree(preferred))) return preferred;
+  for (let tries = 0; tries < 200; tries++) {
+    const port = randomInt(20_000, 32_768);
+    if (await isFree(port)) return port;
+  }
+  throw new SetupError("No free port was found on 127.0.0.1.");
 }
 
-function tryPort(port: number): Promise<number | null> {
+function isFree(port: number): Promise<boolean> {
   return new Promise((resolve) => {
     const server = createServer();
-    server.once("error", () => resolve(null));
-    server.listen(port, "127.0.0.1", () => {
-      const address = server.address();
-      server.close(() => resolve(address !== null && typeof address === "object" ? address.port : null));
-    });
+    server.once("error", () => resolve(false));
+    server.listen(port, "127.0.0.1", () => server.close(() => resolve(true)));
   });
 }
 

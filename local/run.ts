@@ -1,4 +1,4 @@
-import { existsSync, mkdirSync, rmSync, writeFileSync } from "node:fs";
+import { chmodSync, existsSync, mkdirSync, rmSync, writeFileSync } from "node:fs";
 import { join, resolve as resolvePath } from "node:path";
 import { buildIsCurrent, buildProduct } from "./build";
 import { applyMigrations, isEmptyDatabase, recreateDatabase } from "./migrations";
@@ -111,7 +111,8 @@ async function prepareDatabase(
 
 function takeDataFolder(folder: string) {
   try {
-    mkdirSync(folder, { recursive: true, mode: 0o700 });
+    mkdirSync(folder, { recursive: true });
+    chmodSync(folder, 0o700);
     const lock = takeRunLock(folder);
     if (lock.taken) return lock;
     const where = lock.holder.address === null ? "is starting" : `runs at ${lock.holder.address}`;
@@ -119,7 +120,7 @@ function takeDataFolder(folder: string) {
       `Mainsgate already ${where} (process ${lock.holder.pid}). Stop that one first with Ctrl-C.`,
     );
   } catch (error) {
-    if (error instanceof Error && "code" in error && error.code === "EACCES") {
+    if (error instanceof Error && "code" in error && (error.code === "EACCES" || error.code === "EPERM")) {
       throw new SetupError(
         `The folder ${folder} belongs to another user, who started Mainsgate here before.`,
       );
