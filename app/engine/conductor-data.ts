@@ -135,7 +135,7 @@ export function ampacityOf(conductor: Conductor): Ampacity | null {
   };
 }
 
-const roundDown = (amps: number) => Math.floor(amps * 100) / 100;
+const roundDown = (amps: number) => Math.floor(amps * 100 + 1e-6) / 100;
 
 /** Factor for warm air; 1 when nothing is stated or it is 30 °C or cooler; `null` above the table. Next hotter row. */
 export function ambientFactor(celsius: number | null): number | null {
