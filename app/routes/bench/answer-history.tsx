@@ -1,5 +1,5 @@
 import { readingText } from "~/components/bench-reading";
-import { Time } from "~/components/ui/time";
+import { Day, Time } from "~/components/ui/time";
 import { figure } from "~/engine/figure";
 import type { ObservationView } from "~/services/bench/sheet-view";
 
@@ -43,7 +43,7 @@ function AnswerFacts({ observation }: { observation: ObservationView }) {
               {accuracy
                 ? `± (${figure(accuracy.percent)} % + ${figure(accuracy.digits)} digits of ${figure(accuracy.resolution)} ${observation.unit ?? ""})`
                 : "outside every stated range: accuracy not known"}
-              , calibrated until {instrument.calibrationDue}
+              , calibrated until <Day on={instrument.calibrationDue} />
             </span>
           </dd>
         </>

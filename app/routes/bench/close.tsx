@@ -1,6 +1,6 @@
 import { getFormProps, useForm } from "@conform-to/react";
 import { parseWithZod } from "@conform-to/zod/v4";
-import { CircleCheckBig, Undo2 } from "lucide-react";
+import { CameraOff, CircleCheckBig, Undo2 } from "lucide-react";
 import { data, Form, Link, useNavigation } from "react-router";
 import { LineVerdictBadge } from "~/components/bench-verdict";
 import { Breadcrumbs } from "~/components/shell/breadcrumbs";
@@ -193,14 +193,15 @@ function FinishPanel({
   const photoless = lines.filter((line) => line.photoMissing);
   const failed = lines.filter((line) => line.verdict === "fail");
   const ready = lines.length > 0 && undecided.length === 0 && photoless.length === 0;
+  // The server's sentences are the list below; only what the page doesn't know yet is told beside it.
+  const reasons = result?.error?.[""];
+  const refusals =
+    reasons && !ready ? ["What stands in the way is listed below, with links."] : (reasons ?? undefined);
   return (
     <Sheet title="Finish the sheet" lead="Hands the unit over for review and signature.">
       <div className="space-y-4">
         {result?.conflict ? <ConflictNotice message={result.conflict} reloadHref={`${base}/close`} /> : null}
-        <FormErrorSummary
-          form={{ errors: result?.error?.[""] ?? undefined }}
-          title="The sheet can’t be finished yet"
-        />
+        <FormErrorSummary form={{ errors: refusals }} title="The sheet can’t be finished yet" />
         {ready ? (
           <p>Every check is decided and every required photo is there.</p>
         ) : (
@@ -209,25 +210,22 @@ function FinishPanel({
             {lines.length === 0 ? <p>The map calls for no check, so nothing can be decided.</p> : null}
             <ul className="space-y-1.5">
               {undecided.map((line) => (
-                <li key={line.check.key} className="flex flex-wrap items-center gap-2">
-                  <LineVerdictBadge verdict={line.verdict} />
-                  <Link
-                    to={checkHref(base, line.check.key)}
-                    className="text-link inline-flex min-h-8 items-center pointer-coarse:min-h-11"
-                  >
-                    {line.check.title}
-                  </Link>
+                <li key={line.check.key} className="grid grid-cols-[8.5rem_1fr] items-center gap-2">
+                  <span>
+                    <LineVerdictBadge verdict={line.verdict} />
+                  </span>
+                  <CheckLink base={base} check={line.check} />
                 </li>
               ))}
               {photoless.map((line) => (
-                <li key={`photo ${line.check.key}`}>
-                  Photo missing:{" "}
-                  <Link
-                    to={checkHref(base, line.check.key)}
-                    className="text-link inline-flex min-h-8 items-center pointer-coarse:min-h-11"
-                  >
-                    {line.check.title}
-                  </Link>
+                <li
+                  key={`photo ${line.check.key}`}
+                  className="grid grid-cols-[8.5rem_1fr] items-center gap-2"
+                >
+                  <span className="inline-flex items-center gap-1.5 text-sm font-semibold">
+                    <CameraOff aria-hidden size={17} /> Photo missing
+                  </span>
+                  <CheckLink base={base} check={line.check} />
                 </li>
               ))}
             </ul>
@@ -265,6 +263,17 @@ function FinishPanel({
         </Form>
       </div>
     </Sheet>
+  );
+}
+
+function CheckLink({ base, check }: { base: string; check: { key: string; title: string } }) {
+  return (
+    <Link
+      to={checkHref(base, check.key)}
+      className="text-link inline-flex min-h-8 items-center pointer-coarse:min-h-11"
+    >
+      {check.title}
+    </Link>
   );
 }
 

@@ -6,7 +6,7 @@ import { LineVerdictBadge } from "~/components/bench-verdict";
 import { SeverityBadge } from "~/components/ui/severity-badge";
 import { withParams } from "~/components/ui/table-params";
 import type { CheckFamily } from "~/engine/bench-check";
-import type { SheetLine } from "~/services/bench/sheet-view";
+import type { ObservationView, SheetLine } from "~/services/bench/sheet-view";
 import { checkHref } from "./check-href";
 import { isShown, type Show, shows, showWords } from "./sheet-filter";
 
@@ -131,17 +131,24 @@ function FamilyRows({ family, lines, base }: { family: CheckFamily; lines: reado
   );
 }
 
-const cell = "px-3 py-2 align-top max-md:px-0 max-md:py-0.5";
+const cell = "px-3 py-2 align-top max-md:col-span-2 max-md:px-0 max-md:py-0.5";
+/** On a phone a datum that says nothing takes no line. */
+const silent = "max-md:hidden";
 
 function LineRow({ line, href }: { line: Line; href: string }) {
   const { check, observation } = line;
   const open = line.findings.filter((finding) => finding.closing === null);
+  const limit = check.asks.kind === "reading" ? check.asks.limit : null;
   return (
     <tr
       role="row"
-      className="relative border-b border-rule hover:bg-copper-wash/60 has-focus-visible:bg-copper-wash/60 max-md:flex max-md:flex-col max-md:px-3 max-md:py-3"
+      className="relative border-b border-rule hover:bg-copper-wash/60 has-focus-visible:bg-copper-wash/60 max-md:grid max-md:grid-cols-[1fr_auto] max-md:gap-x-3 max-md:px-3 max-md:py-2.5"
     >
-      <th role="rowheader" scope="row" className={`${cell} text-left font-medium max-md:text-base`}>
+      <th
+        role="rowheader"
+        scope="row"
+        className={`${cell} text-left font-medium max-md:col-span-1 max-md:text-base`}
+      >
         <Link
           to={href}
           prefetch="intent"
@@ -154,52 +161,61 @@ function LineRow({ line, href }: { line: Line; href: string }) {
             {check.computed.verdict === "fail" ? "By the map alone: fails" : "By the map alone: not known"}
           </span>
         ) : null}
-        {open.map((finding) => (
-          <span key={finding.id} className="mt-1 mr-2 inline-block">
-            <SeverityBadge severity={finding.severity} label={`Finding ${finding.number}`} />
+        {open.length > 0 ? (
+          <span className="mt-1 flex flex-wrap gap-2">
+            {open.map((finding) => (
+              <SeverityBadge
+                key={finding.id}
+                severity={finding.severity}
+                label={`Finding ${finding.number}`}
+              />
+            ))}
           </span>
-        ))}
+        ) : null}
       </th>
-      <td role="cell" className={`${cell} tabular-nums`}>
-        {check.asks.kind === "reading" ? (
-          <span className="whitespace-nowrap">{limitSigns(check.asks.limit)}</span>
-        ) : (
-          <span className="text-ink-soft">by eye and hand</span>
-        )}
+      <td role="cell" className={`${cell} whitespace-nowrap tabular-nums ${limit ? "" : silent}`}>
+        {limit ? limitSigns(limit) : <span className="text-ink-soft">by eye and hand</span>}
       </td>
-      <td role="cell" className={`${cell} tabular-nums`}>
-        {observation ? (
-          <>
-            <span className="font-medium">{readingText(observation)}</span>
-            {line.judged ? (
-              <span className="block text-ink-soft">
-                {uncertaintyText(
-                  line.judged.expandedUncertainty,
-                  check.asks.kind === "reading" ? check.asks.limit.unit : "",
-                )}
-              </span>
-            ) : null}
-            {observation.carried ? (
-              <span className="block text-ink-soft">carried over from revision {observation.revision}</span>
-            ) : null}
-            {observation.reason ? <span className="block text-ink-soft">{observation.reason}</span> : null}
-          </>
-        ) : (
-          <span className="text-ink-soft">
-            –<span className="sr-only">nothing yet</span>
-          </span>
-        )}
+      <td role="cell" className={`${cell} tabular-nums ${observation ? "" : silent}`}>
+        {observation ? <Found line={line} observation={observation} unit={limit?.unit ?? ""} /> : <Nothing />}
       </td>
-      <td role="cell" className={`${cell} text-ink-soft`}>
+      <td role="cell" className={`${cell} text-ink-soft ${observation?.instrument ? "" : silent}`}>
         {observation?.instrument ? `${observation.instrument.name}, ${observation.instrument.serial}` : null}
       </td>
-      <td role="cell" className={`${cell} whitespace-nowrap`}>
+      <td
+        role="cell"
+        className={`${cell} whitespace-nowrap ${line.photoMissing || line.photos.length > 0 ? "" : silent}`}
+      >
         <PhotoState line={line} />
       </td>
-      <td role="cell" className={cell}>
+      <td role="cell" className={`${cell} max-md:col-span-1 max-md:col-start-2 max-md:row-start-1`}>
         <LineVerdictBadge verdict={line.verdict} />
       </td>
     </tr>
+  );
+}
+
+function Nothing() {
+  return (
+    <span className="text-ink-soft">
+      <span aria-hidden>–</span>
+      <span className="sr-only">nothing yet</span>
+    </span>
+  );
+}
+
+function Found({ line, observation, unit }: { line: Line; observation: ObservationView; unit: string }) {
+  return (
+    <>
+      <span className="font-medium">{readingText(observation)}</span>
+      {line.judged ? (
+        <span className="block text-ink-soft">{uncertaintyText(line.judged.expandedUncertainty, unit)}</span>
+      ) : null}
+      {observation.carried ? (
+        <span className="block text-ink-soft">carried over from revision {observation.revision}</span>
+      ) : null}
+      {observation.reason ? <span className="block text-ink-soft">{observation.reason}</span> : null}
+    </>
   );
 }
 

@@ -1,4 +1,12 @@
-import { CircleCheckBig, ClipboardPen, GitCompareArrows, HandGrab, Printer, Undo2 } from "lucide-react";
+import {
+  ArrowDown,
+  CircleCheckBig,
+  ClipboardPen,
+  GitCompareArrows,
+  HandGrab,
+  Printer,
+  Undo2,
+} from "lucide-react";
 import { Form, Link } from "react-router";
 import { LineVerdictIcon, lineVerdictWords } from "~/components/bench-verdict";
 import { Breadcrumbs } from "~/components/shell/breadcrumbs";
@@ -131,6 +139,9 @@ export default function BenchSheet({ loaderData, params }: Route.ComponentProps)
                 </ConfirmDialog>
               </>
             ) : null}
+            <LinkButton to="#checks" variant="quiet" icon={ArrowDown} className="lg:hidden">
+              Checks
+            </LinkButton>
             <Button type="button" variant="quiet" icon={Printer} onClick={() => window.print()}>
               Print
             </Button>
@@ -145,54 +156,57 @@ export default function BenchSheet({ loaderData, params }: Route.ComponentProps)
           </Link>
         </p>
       ) : null}
-      <div className="grid items-start gap-5 xl:grid-cols-[1fr_22rem]">
-        <div className="min-w-0 space-y-5">
-          <TitleBlock
-            items={[
-              { label: "Builder", value: loaderData.builder },
-              { label: "Inspector", value: loaderData.inspector ?? "nobody yet" },
-              { label: "Submitted", value: <Time at={revision.submittedAt} />, numeric: true },
-              {
-                label: "Supply",
-                value: `${revision.facts.supplyVolts} V, ${revision.facts.supplyHertz} Hz`,
-                numeric: true,
-              },
-              { label: "Protection class", value: revision.facts.protectionClass },
-              { label: "Place of use", value: unit.placeOfUse },
-              { label: "Purpose", value: unit.purpose },
-              { label: "Judged by", value: revision.ruleSet },
-            ]}
-          />
-          <EngineAnswers map={revision.map} analysis={loaderData.analysis} />
-        </div>
-        <aside className="space-y-5">
-          <Paper title="Progress">
-            <Progress
-              label="Checks decided"
-              value={progress.decided}
-              max={progress.total}
-              detail={`${progress.decided} of ${progress.total}`}
-            />
-            <dl className="mt-3 grid grid-cols-2 gap-x-4 gap-y-1 text-sm">
-              {lineVerdicts
-                .filter((verdict) => progress.byVerdict[verdict] > 0)
-                .map((verdict) => (
-                  <div key={verdict} className="flex items-center justify-between gap-2">
-                    <dt className="flex items-center gap-1.5">
-                      <LineVerdictIcon verdict={verdict} size={16} />
-                      {lineVerdictWords[verdict]}
-                    </dt>
-                    <dd className="tabular-nums">{progress.byVerdict[verdict]}</dd>
+      <div className="space-y-5">
+        <TitleBlock
+          items={[
+            { label: "Builder", value: loaderData.builder },
+            { label: "Inspector", value: loaderData.inspector ?? "nobody yet" },
+            { label: "Submitted", value: <Time at={revision.submittedAt} />, numeric: true },
+            {
+              label: "Supply",
+              value: `${revision.facts.supplyVolts} V, ${revision.facts.supplyHertz} Hz`,
+              numeric: true,
+            },
+            { label: "Protection class", value: revision.facts.protectionClass },
+            { label: "Place of use", value: unit.placeOfUse },
+            { label: "Purpose", value: unit.purpose },
+            { label: "Judged by", value: revision.ruleSet },
+          ]}
+        />
+        <div className={`grid items-start gap-5 ${findings.length > 0 ? "lg:grid-cols-2" : ""}`}>
+          <div className={`grid items-start gap-5 ${findings.length > 0 ? "" : "lg:grid-cols-2"}`}>
+            <Paper title="Progress">
+              <Progress
+                label="Checks decided"
+                value={progress.decided}
+                max={progress.total}
+                detail={`${progress.decided} of ${progress.total}`}
+              />
+              <dl className="mt-3 grid grid-cols-2 gap-x-4 gap-y-1 text-sm">
+                {lineVerdicts
+                  .filter((verdict) => progress.byVerdict[verdict] > 0)
+                  .map((verdict) => (
+                    <div key={verdict} className="flex items-center justify-between gap-2">
+                      <dt className="flex items-center gap-1.5">
+                        <LineVerdictIcon verdict={verdict} size={16} />
+                        {lineVerdictWords[verdict]}
+                      </dt>
+                      <dd className="tabular-nums">{progress.byVerdict[verdict]}</dd>
+                    </div>
+                  ))}
+                {progress.photosMissing > 0 ? (
+                  <div className="flex items-center justify-between gap-2">
+                    <dt>Photos missing</dt>
+                    <dd className="tabular-nums">{progress.photosMissing}</dd>
                   </div>
-                ))}
-              {progress.photosMissing > 0 ? (
-                <div className="flex items-center justify-between gap-2">
-                  <dt>Photos missing</dt>
-                  <dd className="tabular-nums">{progress.photosMissing}</dd>
-                </div>
-              ) : null}
-            </dl>
-          </Paper>
+                ) : null}
+              </dl>
+            </Paper>
+            <Caution sign="voltage">
+              Dangerous voltages. The sheet advises; local codes and the judgement of the licensed person
+              prevail.
+            </Caution>
+          </div>
           {findings.length > 0 ? (
             <Paper title="Findings" flush>
               <ul className="divide-y divide-rule">
@@ -204,13 +218,10 @@ export default function BenchSheet({ loaderData, params }: Route.ComponentProps)
               </ul>
             </Paper>
           ) : null}
-          <Caution sign="voltage">
-            Dangerous voltages. The sheet advises; local codes and the judgement of the licensed person
-            prevail.
-          </Caution>
-        </aside>
+        </div>
+        <EngineAnswers map={revision.map} analysis={loaderData.analysis} />
       </div>
-      <Paper title="Checks in working order" className="mt-5" flush>
+      <Paper id="checks" title="Checks in working order" className="mt-5" flush>
         {lines.length === 0 ? (
           <div className="p-4">
             <EmptyState title="The map calls for no check">
