@@ -22,6 +22,8 @@ export function startWorker(): { stop(): Promise<void> } {
         if (String(error) !== lastError) console.error("The worker will try again:", error);
         lastError = String(error);
       }
+      // Asked to stop during the work above, when there was no pause to wake from.
+      if (stopping) return;
       await new Promise<void>((resolve) => {
         const timer = setTimeout(resolve, PAUSE_MS);
         wake = () => {
