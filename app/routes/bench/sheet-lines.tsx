@@ -5,6 +5,7 @@ import { readingText, uncertaintyText } from "~/components/bench-reading";
 import { LineVerdictBadge } from "~/components/bench-verdict";
 import { SeverityBadge } from "~/components/ui/severity-badge";
 import { withParams } from "~/components/ui/table-params";
+import { VerdictIcon } from "~/components/ui/verdict-icon";
 import type { CheckFamily } from "~/engine/bench-check";
 import type { ObservationView, SheetLine } from "~/services/bench/sheet-view";
 import { checkHref } from "./check-href";
@@ -147,7 +148,7 @@ function LineRow({ line, href }: { line: Line; href: string }) {
       <th
         role="rowheader"
         scope="row"
-        className={`${cell} text-left font-medium max-md:col-span-1 max-md:text-base`}
+        className={`${cell} text-left font-medium max-md:col-span-1 max-md:col-start-1 max-md:row-start-1 max-md:text-base`}
       >
         <Link
           to={href}
@@ -156,9 +157,15 @@ function LineRow({ line, href }: { line: Line; href: string }) {
         >
           {check.title}
         </Link>
-        {check.computed && check.computed.verdict !== "pass" ? (
-          <span className="block text-sm font-normal text-ink-soft">
-            {check.computed.verdict === "fail" ? "By the map alone: fails" : "By the map alone: not known"}
+        {check.computed?.verdict === "fail" ? (
+          <span className="flex items-center gap-1.5 text-sm font-semibold text-fail">
+            <VerdictIcon verdict="fail" size={15} className="shrink-0" />
+            The map alone fails it
+          </span>
+        ) : check.computed?.verdict === "unknown" ? (
+          <span className="flex items-center gap-1.5 text-sm font-normal text-unknown">
+            <VerdictIcon verdict="unknown" size={15} className="shrink-0" />
+            The map leaves it unknown
           </span>
         ) : null}
         {open.length > 0 ? (
