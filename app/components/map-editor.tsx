@@ -51,6 +51,7 @@ export function MapEditor({ facts, ruleSet, exportName, onContinue, ...draftOpti
   const { map } = state;
   const [open, setOpen] = useState<ReadonlySet<string>>(new Set());
   const [begun, setBegun] = useState(map.elements.length > 0);
+  const [target, setTarget] = useState<{ id: string; field: string | null } | null>(null);
   const [pointed, setPointed] = useState<Statement | null>(null);
 
   // The rows answer at once; the drawing and the engine follow when the browser has a moment.
@@ -72,14 +73,19 @@ export function MapEditor({ facts, ruleSet, exportName, onContinue, ...draftOpti
 
   const jumpTo = useCallback((id: string, field: string | null = null) => {
     setOpen((before) => new Set(before).add(id));
-    focusRow(id, field);
+    setTarget({ id, field });
   }, []);
 
+  // After the rendering in which the row has opened: before it the field isn't there.
   useEffect(() => {
-    const target = /^#(?:element|conductor)-([A-Za-z0-9_-]{1,16}?)(?:-([A-Za-z][A-Za-z0-9]*))?$/.exec(
+    if (target) focusRow(target.id, target.field);
+  }, [target]);
+
+  useEffect(() => {
+    const named = /^#(?:element|conductor)-([A-Za-z0-9_-]{1,16}?)(?:-([A-Za-z][A-Za-z0-9]*))?$/.exec(
       location.hash,
     );
-    if (target?.[1]) jumpTo(target[1], target[2] ?? null);
+    if (named?.[1]) jumpTo(named[1], named[2] ?? null);
   }, [jumpTo]);
 
   function addElement(kind: ElementKind) {
@@ -403,17 +409,14 @@ function toggled(open: ReadonlySet<string>, id: string): ReadonlySet<string> {
 
 /** Looks for the field, then for the row itself; a row may be an element's or a connection's. */
 function focusRow(id: string, field: string | null) {
-  requestAnimationFrame(() => {
-    const target =
-      (field === null
-        ? null
-        : (document.getElementById(`element-${id}-${field}`) ??
-          document.getElementById(`conductor-${id}-${field}`))) ??
-      document.getElementById(`element-${id}-open`) ??
-      document.getElementById(`conductor-${id}-from`);
-    target?.focus();
-    target?.scrollIntoView({ block: "center" });
-  });
+  const ids = [
+    ...(field === null ? [] : [`element-${id}-${field}`, `conductor-${id}-${field}`]),
+    `element-${id}-open`,
+    `conductor-${id}-from`,
+  ];
+  const element = ids.map((each) => document.getElementById(each)).find((each) => each !== null);
+  element?.focus();
+  element?.scrollIntoView({ block: "center" });
 }
 
 function exportMap(json: string, name: string) {
