@@ -75,7 +75,10 @@ test("after five wrong passwords even the right one is refused for a quarter of 
     status: 429,
     retryAfterSeconds: 840,
   });
-  await expect(authenticate(db, right, minutes(14))).rejects.toThrow(ThrottledError);
+  // Knocking on while it is closed doesn't keep it closed longer.
+  for (let i = 0; i < 6; i++) {
+    await expect(authenticate(db, right, minutes(14))).rejects.toThrow(ThrottledError);
+  }
   await expect(authenticate(db, right, minutes(16))).resolves.toEqual(person);
 });
 

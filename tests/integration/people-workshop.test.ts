@@ -224,6 +224,19 @@ test("two stewards who remove each other at the same moment leave one behind", a
   }
 });
 
+test("two stewards who leave at the same moment: one must stay", async () => {
+  for (let round = 0; round < 5; round++) {
+    const made = await makeWorkshop(db);
+    const second = await makeMember(db, made, ["steward"]);
+    const results = await Promise.allSettled([
+      removeMember(made.as("steward"), made.people.steward.id),
+      removeMember(made.asPerson(second, ["steward"]), second.id),
+    ]);
+    expect(results.map(({ status }) => status).sort()).toEqual(["fulfilled", "rejected"]);
+    expect(results.find((one) => one.status === "rejected")).toMatchObject({ reason: { status: 422 } });
+  }
+});
+
 test("a removed member sees the workshop no more; what they were stays in the trail", async () => {
   const { as, workshop, people } = await makeWorkshop(db);
   await removeMember(as("steward"), people.builder.id);
