@@ -34,7 +34,7 @@ export const ElementRow = memo(function ElementRow({
   const { id } = element;
   const bodyId = `element-${id}-fields`;
   const blocking = problems.filter((problem) => problem.blocking).length;
-  const fields: FieldDescriptor[] = kind.fields;
+  const fields = fieldsOf(element);
   const data: Record<string, unknown> = { ...element };
 
   function move(event: KeyboardEvent) {
@@ -169,6 +169,14 @@ export const ElementRow = memo(function ElementRow({
     </li>
   );
 });
+
+/** The fields that make sense for this very element: a switch moved by hand has no coil. */
+function fieldsOf(element: Element): FieldDescriptor[] {
+  const fields: FieldDescriptor[] = elementKinds[element.kind].fields;
+  return element.kind === "switch" && element.actuator === "hand"
+    ? fields.filter((field) => field.name !== "coilFedBy")
+    : fields;
+}
 
 function of(problems: readonly Problem[], field: string | null): Problem[] {
   return problems.filter((problem) => problem.field === field);

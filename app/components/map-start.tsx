@@ -31,7 +31,7 @@ export function MapStart({ onStart, onBlank }: MapStartProps) {
             >
               <span
                 aria-hidden
-                className="block h-32 w-full overflow-hidden border-b border-rule bg-paper p-2"
+                className="flex h-44 w-full items-center justify-center overflow-hidden border-b border-rule bg-paper p-2"
               >
                 <EnergyDiagram map={starter.map} tiny />
               </span>

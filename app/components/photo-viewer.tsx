@@ -1,5 +1,6 @@
 /** One photo large, with the next and the previous by arrow keys and buttons. */
 import { ChevronLeft, ChevronRight } from "lucide-react";
+import { useEffect } from "react";
 import { Button } from "./ui/button";
 import { Dialog } from "./ui/dialog";
 import { Time } from "./ui/time";
@@ -21,9 +22,21 @@ export interface PhotoViewerProps {
 
 export function PhotoViewer({ photos, shown, onShow }: PhotoViewerProps) {
   const photo = shown === null ? undefined : photos[shown];
+  const count = photos.length;
   const step = (by: number) => {
-    if (shown !== null) onShow((shown + by + photos.length) % photos.length);
+    if (shown !== null) onShow((shown + by + count) % count);
   };
+
+  useEffect(() => {
+    if (shown === null) return;
+    // Wherever the focus is inside the dialog; a modal one has the keyboard to itself.
+    const turn = (event: KeyboardEvent) => {
+      if (event.key === "ArrowLeft") onShow((shown - 1 + count) % count);
+      if (event.key === "ArrowRight") onShow((shown + 1) % count);
+    };
+    window.addEventListener("keydown", turn);
+    return () => window.removeEventListener("keydown", turn);
+  }, [shown, count, onShow]);
   return (
     <Dialog
       open={photo !== undefined}
@@ -44,19 +57,8 @@ export function PhotoViewer({ photos, shown, onShow }: PhotoViewerProps) {
       }
     >
       {photo ? (
-        <figure
-          // The arrow keys work wherever the focus is inside the dialog.
-          onKeyDown={(event) => {
-            if (event.key === "ArrowLeft") step(-1);
-            if (event.key === "ArrowRight") step(1);
-          }}
-        >
-          <img
-            src={photo.src}
-            alt={photo.alt}
-            tabIndex={photos.length > 1 ? 0 : undefined}
-            className="mx-auto max-h-[65dvh] object-contain"
-          />
+        <figure>
+          <img src={photo.src} alt={photo.alt} className="mx-auto max-h-[65dvh] object-contain" />
           <figcaption className="mt-2 text-sm">
             {photo.alt}
             <span className="block text-ink-soft">

@@ -108,6 +108,8 @@ function elementProblems(element: Element, map: EnergyMap): Problem[] {
   const fields: FieldDescriptor[] = elementKinds[element.kind].fields;
   for (const field of fields) {
     if (!isUnknown(data[field.name])) continue;
+    // A switch moved by hand has no coil.
+    if (field.name === "coilFedBy" && element.kind === "switch" && element.actuator === "hand") continue;
     const blocking = !(optionalFields[element.kind] ?? []).includes(field.name);
     about(field.name, `${nameOf(element)}: ${lowerFirst(field.label)} is not known.`, blocking);
   }
