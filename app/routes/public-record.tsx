@@ -49,7 +49,7 @@ export default function PublicRecordPage({ loaderData: record }: Route.Component
             <p className="font-medium text-copper">Demonstration: all data here are invented.</p>
           ) : null}
         </header>
-        <ValidityBanner validity={record.validity}>
+        <ValidityBanner validity={record.validity} departures={record.departures}>
           {"recheckOn" in record.validity ? (
             <p className="mt-1 font-medium">
               Recheck by <Day on={record.validity.recheckOn} />

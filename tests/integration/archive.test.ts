@@ -89,6 +89,7 @@ describe("the public page", () => {
         "conditions",
         "decidedOn",
         "demo",
+        "departures",
         "state",
         "unitName",
         "unitNumber",

@@ -1,3 +1,4 @@
+import type { ReactNode } from "react";
 import { Caution } from "~/components/ui/caution";
 import { Sheet } from "~/components/ui/sheet";
 import { Day, Time } from "~/components/ui/time";
@@ -10,21 +11,25 @@ export function RecordTerms({
   validity,
   decision,
   failed,
+  children,
 }: {
   validity: Validity;
   decision: UnitRecord["decision"];
   failed: readonly string[];
+  /** Between how it stands and what was stated: a withdrawal. */
+  children?: ReactNode;
 }) {
   const { signer } = decision;
   return (
     <>
-      <ValidityBanner validity={validity}>
+      <ValidityBanner validity={validity} departures={failed.length > 0}>
         {"recheckOn" in validity ? (
           <p className="mt-1 text-sm">
             Recheck by <Day on={validity.recheckOn} />.
           </p>
         ) : null}
       </ValidityBanner>
+      {children}
       {decision.kind === "signed" && failed.length > 0 ? (
         <Caution title="Signed although checks fail" items={failed}>
           <p className="mt-2 whitespace-pre-line">

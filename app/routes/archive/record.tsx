@@ -49,6 +49,10 @@ export async function loader({ context, params }: Route.LoaderArgs) {
   }
 }
 
+function counted(count: number, word: string): string {
+  return `${count === 0 ? "no" : count} ${word}${count === 1 ? "" : "s"}`;
+}
+
 /** The store's key is nobody's business outside. */
 function shownPdf(pdf: PdfState) {
   return pdf.ready ? { ready: true as const, bytes: pdf.bytes, sha256: pdf.sha256 } : pdf;
@@ -97,16 +101,17 @@ export default function RecordPage({ loaderData, params }: Route.ComponentProps)
             Its stored data no longer give its SHA-256. Don’t rely on it; tell the workshop’s steward.
           </Caution>
         )}
-        {stored.withdrawal ? (
-          <Sheet title="Withdrawn">
-            <p className="whitespace-pre-line">{stored.withdrawal.reason}</p>
-            <p className="mt-2 text-sm text-ink-soft">
-              {stored.withdrawal.by}, <Time at={stored.withdrawal.at} />. The record below stays as it was
-              made.
-            </p>
-          </Sheet>
-        ) : null}
-        <RecordTerms validity={stored.validity} decision={record.decision} failed={record.failed} />
+        <RecordTerms validity={stored.validity} decision={record.decision} failed={record.failed}>
+          {stored.withdrawal ? (
+            <Sheet title="Withdrawn">
+              <p className="whitespace-pre-line">{stored.withdrawal.reason}</p>
+              <p className="mt-2 text-sm text-ink-soft">
+                {stored.withdrawal.by}, <Time at={stored.withdrawal.at} />. The record below stays as it was
+                made.
+              </p>
+            </Sheet>
+          ) : null}
+        </RecordTerms>
         {record.decision.conditions ? (
           <RecordConditions conditions={record.decision.conditions} recheckOn={record.decision.recheckOn} />
         ) : null}
@@ -126,7 +131,7 @@ export default function RecordPage({ loaderData, params }: Route.ComponentProps)
             { label: "Checks", value: record.checks === "" ? "none" : record.checks },
             {
               label: "Findings and photos",
-              value: `${record.findings} findings (${record.openFindings} open), ${record.photos} photos`,
+              value: `${counted(record.findings, "finding")}${record.findings > 0 ? ` (${record.openFindings} open)` : ""}, ${counted(record.photos, "photo")}`,
             },
           ]}
         />

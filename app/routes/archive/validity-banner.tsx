@@ -10,8 +10,17 @@ const looks = {
 };
 
 /** Whether the unit may be plugged in today: sign, words and colour together. */
-export function ValidityBanner({ validity, children }: { validity: Validity; children?: ReactNode }) {
-  const { title, text, tone } = validityWords(validity);
+export function ValidityBanner({
+  validity,
+  departures,
+  children,
+}: {
+  validity: Validity;
+  /** It was signed although a check fails. */
+  departures: boolean;
+  children?: ReactNode;
+}) {
+  const { title, text, tone } = validityWords(validity, departures);
   const { box, word, Icon } = looks[tone];
   return (
     <div data-validity={validity.kind} className={`flex items-start gap-4 border-2 px-4 py-4 ${box}`}>

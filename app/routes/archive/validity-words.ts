@@ -6,10 +6,20 @@ export interface ValidityWords {
   tone: "pass" | "undecided" | "fail";
 }
 
-/** What a person who stands before the unit must know, in a line and a sentence. */
-export function validityWords(validity: Validity): ValidityWords {
+/**
+ * What a person who stands before the unit must know, in a line and a sentence. With departures (it was signed although
+ * a check fails) it is never told as plainly good.
+ */
+export function validityWords(validity: Validity, departures: boolean): ValidityWords {
   switch (validity.kind) {
     case "may-be-used":
+      if (departures) {
+        return {
+          title: "May be plugged in, with departures",
+          text: "Not every check passed; the signer allowed it under the conditions stated here.",
+          tone: "undecided",
+        };
+      }
       return {
         title: "May be plugged in",
         text: "Under the conditions stated here and as long as nothing on the unit was changed.",

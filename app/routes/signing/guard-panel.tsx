@@ -1,6 +1,7 @@
 import { Link } from "react-router";
 import { CircleCheck, OctagonAlert } from "lucide-react";
 import { Sheet } from "~/components/ui/sheet";
+import { Day } from "~/components/ui/time";
 import { checkHref } from "~/routes/bench/check-href";
 import type { GuardReason, ReviewGuard } from "~/services/signing/review-guards";
 
@@ -17,9 +18,12 @@ const titles: Record<ReviewGuard, string> = {
 /** Each guard of a signature, told as met or with what stops it and where that can be seen. */
 export function GuardPanel({
   guards,
+  licence,
   benchBase,
 }: {
   guards: readonly { guard: ReviewGuard; reasons: GuardReason[] }[];
+  /** The one that a decision would rest on. */
+  licence: { number: string; authority: string; validTo: string } | null;
   /** The address of the unit on the bench. */
   benchBase: string;
 }) {
@@ -49,6 +53,11 @@ export function GuardPanel({
                   {reasons.length === 0 ? "met" : "not met"}
                 </span>
               </p>
+              {guard === "licence-in-date" && licence ? (
+                <p className="text-sm text-ink-soft">
+                  {licence.number}, {licence.authority}, until <Day on={licence.validTo} />
+                </p>
+              ) : null}
               {reasons.length > 0 ? (
                 <ul className="mt-1 space-y-1 text-sm">
                   {reasons.map((reason) => (

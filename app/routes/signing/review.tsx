@@ -64,6 +64,11 @@ export async function loader({ context, params, url }: Route.LoaderArgs) {
       builder: review.builder,
       signer: person.name,
       guards: reviewGuards.map((guard) => ({ guard, reasons: report.guards[guard] })),
+      licence: report.licence && {
+        number: report.licence.number,
+        authority: report.licence.authority,
+        validTo: report.licence.validTo,
+      },
       failed: report.failed.map((line) => line.check.title),
       revision: {
         number: review.sheet.revision.number,
@@ -253,7 +258,7 @@ export default function Review({ loaderData, actionData, params }: Route.Compone
             },
           ]}
         />
-        <GuardPanel guards={guards} benchBase={benchBase} />
+        <GuardPanel guards={guards} licence={loaderData.licence} benchBase={benchBase} />
         <Sheet id="map" title="Energy map" lead="As described by the builder, and what follows from it.">
           <div className="space-y-5">
             <MapDiagram map={revision.map} analysis={loaderData.analysis} />
@@ -293,6 +298,7 @@ export default function Review({ loaderData, actionData, params }: Route.Compone
           version={unit.version}
           signer={loaderData.signer}
           failed={loaderData.failed}
+          openFindings={findings.filter((finding) => finding.closing === null).length}
           proposal={loaderData.proposal}
           reloadHref={`${base}/signing/${unit.number}`}
           barred={barred}

@@ -20,11 +20,20 @@ export interface SignFormProps {
   reloadHref: string;
   /** Titles of the checks that fail. */
   failed: readonly string[];
+  openFindings: number;
   proposal: { place: string; supply: string; recheckOn: string; earliest: string; latest: string };
 }
 
 /** States, sets the conditions and the recheck date, and signs. */
-export function SignForm({ version, signer, result, reloadHref, failed, proposal }: SignFormProps) {
+export function SignForm({
+  version,
+  signer,
+  result,
+  reloadHref,
+  failed,
+  openFindings,
+  proposal,
+}: SignFormProps) {
   const pending = useNavigation().formData?.get("act") === "sign";
   const [form, fields] = useForm({
     id: "sign",
@@ -48,18 +57,25 @@ export function SignForm({ version, signer, result, reloadHref, failed, proposal
       <input type="hidden" name="act" value="sign" />
       <input type="hidden" name="version" value={version} />
       {failed.length > 0 ? (
-        <Caution
-          title={failed.length === 1 ? "One check fails" : `${failed.length} checks fail`}
-          items={failed}
-        >
+        <div className="space-y-3">
+          <Caution
+            title={failed.length === 1 ? "One check fails" : `${failed.length} checks fail`}
+            items={failed}
+          />
           <TextareaField
             field={fields.departures}
             label="Why it may be used all the same"
             hint="Your own reasons and what limits the risk. They stand on the record’s first sheet."
             rows={3}
-            className="mt-3"
           />
-        </Caution>
+        </div>
+      ) : null}
+      {openFindings > 0 ? (
+        <p className="font-medium text-undecided">
+          {openFindings === 1
+            ? "One finding is open; it is no danger. The record will show it."
+            : `${openFindings} findings are open, none of them a danger. The record will show them.`}
+        </p>
       ) : null}
       <TextareaField field={fields.statement} label="What your signature states" rows={4} />
       <fieldset className="grid gap-4 md:grid-cols-2">

@@ -16,6 +16,8 @@ export interface PublicRecord {
   state: UnitState;
   validity: Validity;
   conditions: SigningConditions | null;
+  /** It was signed although a check fails. The reasons are the workshop's. */
+  departures: boolean;
   /** The day of the decision, in the workshop's calendar. */
   decidedOn: string;
   cautions: readonly string[];
@@ -35,6 +37,7 @@ export async function findPublicRecord(db: Database, code: string, now: Date): P
       demo: workshops.isDemo,
       timeZone: workshops.timeZone,
       conditions: decisions.conditions,
+      departures: decisions.departures,
       recheckOn: decisions.recheckOn,
       decidedAt: decisions.decidedAt,
     })
@@ -55,6 +58,7 @@ export async function findPublicRecord(db: Database, code: string, now: Date): P
   const state = latest?.id === recordId ? row.state : "superseded";
   return {
     ...shown,
+    departures: shown.departures !== null,
     state,
     validity: validity(state, recheckOn, dayIn(timeZone, now)),
     decidedOn: dayIn(timeZone, decidedAt),

@@ -96,6 +96,7 @@ function layOut(paper: Paper, map: EnergyMap, rankdir: "LR" | "TB"): Layout {
   const drawn = map.conductors.filter(({ from, to }) => known.has(from.element) && known.has(to.element));
   for (const { id, from, to } of drawn) graph.setEdge(from.element, to.element, {}, id);
   dagre.layout(graph);
+  const poleOf = polesOf(map);
   const { width = 1, height = 1 } = graph.graph();
   return {
     width,
@@ -106,21 +107,66 @@ function layOut(paper: Paper, map: EnergyMap, rankdir: "LR" | "TB"): Layout {
     }),
     edges: drawn.map((conductor) => ({
       id: conductor.id,
-      pole: poleOf(conductor, map),
+      pole: poleOf(conductor),
       points: graph.edge(conductor.from.element, conductor.to.element, conductor.id).points ?? [],
     })),
   };
 }
 
-/** Which pole a conductor belongs to, as far as one of its two terminals tells; else its circuit. */
-function poleOf({ circuit, from, to }: Conductor, map: EnergyMap): Pole {
-  if (circuit === "earth") return "earth";
-  for (const end of [from, to]) {
-    const element = map.elements.find((each) => each.id === end.element);
-    const role = element && terminalsOf(element).find((terminal) => terminal.name === end.terminal)?.role;
-    if (role && role !== "any") return role;
+/**
+ * Which pole each conductor belongs to, as far as a terminal of its net tells (a net passes through fuses, switches and
+ * diodes); else its circuit. For colours only.
+ */
+function polesOf(map: EnergyMap): (conductor: Conductor) => Pole {
+  const parents = new Map<string, string>();
+  const rootOf = (key: string): string => {
+    const parent = parents.get(key);
+    return parent === undefined ? key : rootOf(parent);
+  };
+  const join = (one: string, other: string) => {
+    const [a, b] = [rootOf(one), rootOf(other)];
+    if (a !== b) parents.set(a, b);
+  };
+  const keyOf = (element: string, terminal: string) => `${element} ${terminal}`;
+  for (const { from, to } of map.conductors) {
+    join(keyOf(from.element, from.terminal), keyOf(to.element, to.terminal));
   }
-  return circuit;
+  const roles = new Map<string, Set<Pole>>();
+  for (const element of map.elements) {
+    const terminals = terminalsOf(element);
+    if (passesThrough.has(element.kind)) {
+      for (const [one, other] of pairs(terminals.map((terminal) => terminal.name))) {
+        join(keyOf(element.id, one), keyOf(element.id, other));
+      }
+    }
+  }
+  for (const element of map.elements) {
+    for (const { name, role } of terminalsOf(element)) {
+      if (role === "any") continue;
+      const root = rootOf(keyOf(element.id, name));
+      roles.set(root, (roles.get(root) ?? new Set<Pole>()).add(role));
+    }
+  }
+  return ({ circuit, from }) => {
+    if (circuit === "earth") return "earth";
+    const found = [...(roles.get(rootOf(keyOf(from.element, from.terminal))) ?? [])];
+    const [only] = found;
+    return only !== undefined && found.length === 1 ? only : circuit;
+  };
+}
+
+const passesThrough = new Set(["fuse", "thermal-cutout", "breaker", "switch", "diode", "ideal-diode"]);
+
+/** Terminals of one pole: "1a" with "1b", and both ends of a part that has only two. */
+function pairs(names: readonly string[]): [string, string][] {
+  const [first, second, ...rest] = names;
+  if (first !== undefined && second !== undefined && rest.length === 0) return [[first, second]];
+  return names.flatMap((one, index) =>
+    names
+      .slice(index + 1)
+      .filter((other) => other.slice(0, -1) === one.slice(0, -1))
+      .map((other): [string, string] => [one, other]),
+  );
 }
 
 function drawEdge(

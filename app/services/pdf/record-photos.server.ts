@@ -66,7 +66,7 @@ async function prepare(paper: Paper, record: UnitRecord, { file, jpeg }: Printed
   const scale = Math.min(WIDTH / image.width, TALLEST / image.height);
   const captions = [
     {
-      text: `${subjectWords(record, file)}${file.caption === "" ? "" : `: ${file.caption}`}`,
+      text: captionWords(record, file),
       size: 7.8,
       color: undefined,
     },
@@ -84,6 +84,12 @@ async function prepare(paper: Paper, record: UnitRecord, { file, jpeg }: Printed
     captions,
     captionHeight: captions.reduce((sum, { height }) => sum + height, 0) + 6,
   };
+}
+
+/** What the photo shows; a caption that only says again what it is about is left out. */
+function captionWords(record: UnitRecord, file: RecordFile): string {
+  const subject = subjectWords(record, file);
+  return file.caption === "" || subject.endsWith(file.caption) ? subject : `${subject}: ${file.caption}`;
 }
 
 function subjectWords({ checks }: UnitRecord, file: RecordFile): string {

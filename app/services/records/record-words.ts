@@ -43,9 +43,8 @@ export function limitWords(limit: RecordLimit): string {
 
 /** A citation in one line; a value from memory says so. */
 export function citationWords(citation: RecordCitation): string {
-  const place = [citation.standard, citation.clause, citation.edition]
-    .filter((part) => part !== "")
-    .join(", ");
+  const edition = { none: "", "not checked": "edition not checked" }[citation.edition] ?? citation.edition;
+  const place = [citation.standard, citation.clause, edition].filter((part) => part !== "").join(", ");
   const mark = {
     V: "as a public page of the source says",
     M: "from memory: check against your own copy",
