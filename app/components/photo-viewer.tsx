@@ -29,13 +29,15 @@ export function PhotoViewer({ photos, shown, onShow }: PhotoViewerProps) {
 
   useEffect(() => {
     if (shown === null) return;
-    // Wherever the focus is inside the dialog; a modal one has the keyboard to itself.
+    // Wherever the focus is inside the dialog, and before the page below hears of it: its arrows turn other things.
     const turn = (event: KeyboardEvent) => {
-      if (event.key === "ArrowLeft") onShow((shown - 1 + count) % count);
-      if (event.key === "ArrowRight") onShow((shown + 1) % count);
+      const by = event.key === "ArrowLeft" ? -1 : event.key === "ArrowRight" ? 1 : 0;
+      if (by === 0) return;
+      event.stopImmediatePropagation();
+      onShow((shown + by + count) % count);
     };
-    window.addEventListener("keydown", turn);
-    return () => window.removeEventListener("keydown", turn);
+    window.addEventListener("keydown", turn, { capture: true });
+    return () => window.removeEventListener("keydown", turn, { capture: true });
   }, [shown, count, onShow]);
   return (
     <Dialog
