@@ -42,6 +42,8 @@ export const permissions = {
   "bench.finish": { roles: ["inspector"], states: ["on_bench"], relation: "its-inspector" },
   "bench.send-back": { roles: ["inspector"], states: ["on_bench"], relation: "its-inspector" },
   "signing.queue": { roles: ["electrician", "steward"] },
+  /** To send a decision at all, whatever the unit's state has become meanwhile: what it may do is asked again under the lock. */
+  "signing.decide": { roles: ["electrician"] },
   "signing.review": { roles: ["electrician"], states: ["awaiting_signature"] },
   "signing.sign": { roles: ["electrician"], states: ["awaiting_signature"], relation: "independent" },
   "signing.refuse": { roles: ["electrician"], states: ["awaiting_signature"], relation: "independent" },

@@ -17,8 +17,15 @@ import { AuthenticationError, ConflictError, GuardError, NotFoundError } from "~
 import { refuseUnit, signUnit } from "~/services/signing/decide-on-unit.server";
 import { type UnitState, validity } from "~/workflow/states";
 import { type TestBench, unitNow } from "../fixtures/bench";
-import { ADDRESS, makeReviewable, PASSWORD, signInput } from "../fixtures/signing";
-import { makeLicence, makePerson, makeUnit, makeWorkshop, type TestWorkshop } from "../fixtures/workshop";
+import { ADDRESS, givePassword, makeReviewable, PASSWORD, signInput } from "../fixtures/signing";
+import {
+  makeLicence,
+  makeMember,
+  makePerson,
+  makeUnit,
+  makeWorkshop,
+  type TestWorkshop,
+} from "../fixtures/workshop";
 import { ownerQuery, ownerUrlOfThisFile } from "../helpers/database";
 
 const db = database();
@@ -53,8 +60,13 @@ describe("withdrawing", () => {
       GuardError,
     );
     const input = await withdrawal(bench);
-    await withdrawUnit(electrician, input);
-    await expect(withdrawUnit(electrician, input)).rejects.toBeInstanceOf(ConflictError);
+    // A double click: done once, and no error for the second.
+    await Promise.all([withdrawUnit(electrician, input), withdrawUnit(electrician, input)]);
+    const other = await makeMember(db, bench, ["electrician"]);
+    await givePassword(db, [other.id]);
+    await expect(withdrawUnit(bench.asPerson(other, ["electrician"]), input)).rejects.toBeInstanceOf(
+      ConflictError,
+    );
 
     const unit = await unitNow(electrician, bench.unit.number);
     expect(unit.state).toBe("withdrawn");

@@ -106,14 +106,14 @@ function ArchiveFilters({
       role="search"
       // The filters are the address: another address, other initial values.
       key={JSON.stringify(params)}
-      className="grid items-end gap-3 border-b border-rule px-3 py-3 sm:grid-cols-2 lg:grid-cols-6 print:hidden"
+      className="grid grid-cols-2 items-end gap-3 border-b border-rule px-3 py-3 lg:grid-cols-6 print:hidden"
     >
       <InputField
         field={{ name: "q", initialValue: params.q }}
         label="Search"
         type="search"
         placeholder="Name, person, number or hash"
-        className="lg:col-span-3"
+        className="col-span-2 lg:col-span-3"
       />
       <SelectField
         field={{ name: "state", initialValue: params.state ?? "" }}
@@ -168,8 +168,8 @@ function ArchiveFilters({
 }
 
 const columns: Column<RecordRow>[] = [
-  { id: "number", header: "No.", cell: (row) => row.unitNumber, sortable: true, numeric: true },
   { id: "name", header: "Unit", cell: (row) => row.unitName, sortable: true, primary: true },
+  { id: "number", header: "No.", cell: (row) => row.unitNumber, sortable: true, numeric: true },
   {
     id: "state",
     header: "State",

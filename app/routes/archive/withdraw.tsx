@@ -29,7 +29,8 @@ export async function loader({ context, params }: Route.LoaderArgs) {
 const hideFields = ["password"];
 
 export async function action({ request, context, params }: Route.ActionArgs) {
-  const { services, unit } = await authoriseUnit(context, "record.withdraw", params.unit);
+  // Not by the unit's state: the second of two clicks comes when it is withdrawn already.
+  const { services, unit } = await authoriseUnit(context, "signing.decide", params.unit);
   const submission = parseWithZod(await request.formData(), { schema: withdrawSchema });
   if (submission.status !== "success") {
     return data({ ...submission.reply({ hideFields }), conflict: null }, { status: 400 });

@@ -117,8 +117,8 @@ function QueueFilters({ params }: { params: Route.ComponentProps["loaderData"]["
 
 function columnsFor(slug: string, maySign: boolean): Column<SigningRow>[] {
   return [
-    { id: "number", header: "No.", cell: (row) => row.number, sortable: true, numeric: true },
     { id: "name", header: "Unit", cell: (row) => row.name, sortable: true, primary: true },
+    { id: "number", header: "No.", cell: (row) => row.number, sortable: true, numeric: true },
     { id: "builder", header: "Builder", cell: (row) => row.builder, sortable: true },
     { id: "inspector", header: "Inspector", cell: (row) => row.inspector ?? "not known" },
     {

@@ -107,7 +107,7 @@ const hideFields = ["password", "signatureImage"];
 
 export async function action({ request, context, params }: Route.ActionArgs) {
   // Not by the unit's state: the second of two clicks comes when it is signed already, and gets the first one's result.
-  const { services, unit } = await authoriseUnit(context, "signing.queue", params.unit);
+  const { services, unit } = await authoriseUnit(context, "signing.decide", params.unit);
   const form = await request.formData();
   const act = decisionKindSchema.parse(form.get("act"));
   if (unit.state === "awaiting_signature") await authoriseUnit(context, `signing.${act}`, params.unit);
@@ -221,6 +221,7 @@ export default function Review({ loaderData, actionData, params }: Route.Compone
       .filter(({ guard }) => wanted.includes(guard))
       .flatMap(({ reasons }) => reasons.map(({ text }) => text));
   const [barred = null] = reasonsOf(["independent"]);
+  const openFindings = findings.filter((finding) => finding.closing === null).length;
   return (
     <>
       <Breadcrumbs items={[{ label: "Signing", to: `${base}/signing` }, { label: `Unit ${unit.number}` }]} />
@@ -254,7 +255,7 @@ export default function Review({ loaderData, actionData, params }: Route.Compone
             },
             {
               label: "Findings",
-              value: `${findings.length}, of which ${findings.filter((finding) => finding.closing === null).length} open`,
+              value: findings.length === 0 ? "none" : `${findings.length}, of which ${openFindings} open`,
             },
           ]}
         />
@@ -298,7 +299,7 @@ export default function Review({ loaderData, actionData, params }: Route.Compone
           version={unit.version}
           signer={loaderData.signer}
           failed={loaderData.failed}
-          openFindings={findings.filter((finding) => finding.closing === null).length}
+          openFindings={openFindings}
           proposal={loaderData.proposal}
           reloadHref={`${base}/signing/${unit.number}`}
           barred={barred}

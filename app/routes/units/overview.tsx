@@ -1,4 +1,4 @@
-import { FilePen, ListChecks, PenLine, ScrollText, Zap } from "lucide-react";
+import { FilePen, ListChecks, PenLine, ScrollText, Zap, History } from "lucide-react";
 import { ConflictNotice } from "~/components/shell/conflict-notice";
 import { PhotoStrip } from "~/components/photo-strip";
 import { PhotoUpload } from "~/components/photo-upload";
@@ -190,6 +190,11 @@ function Links({
       {may.readRecord ? (
         <LinkButton to={`${home}/archive/${unit.number}`} icon={ScrollText}>
           Record
+        </LinkButton>
+      ) : null}
+      {may.readTrail ? (
+        <LinkButton to={`${home}/archive/${unit.number}/trail`} icon={History}>
+          Trail
         </LinkButton>
       ) : null}
     </>

@@ -50,6 +50,7 @@ export async function loadOverview(context: ServiceContext, unit: StandingUnit) 
       readSheet: unit.state !== "draft" && may("bench.read"),
       review: may("signing.review"),
       readRecord: may("archive.read"),
+      readTrail: may("trail.read"),
     },
   };
 }
