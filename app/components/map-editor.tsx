@@ -21,6 +21,7 @@ import { ImportButton, MapStart } from "./map-start";
 import { StatementList } from "./statement-list";
 import { useMapDraft, type MapDraftOptions } from "./use-map-draft";
 import { Button } from "./ui/button";
+import { IconButton } from "./ui/icon-button";
 import { Sheet } from "./ui/sheet";
 import { Time } from "./ui/time";
 
@@ -134,25 +135,26 @@ export function MapEditor({ facts, ruleSet, exportName, onContinue, ...draftOpti
         <KeptNotice draft={draft} onTaken={() => setBegun(true)} />
         {save.kind === "conflict" ? <MapConflict message={save.message} onChoose={draft.choose} /> : null}
         <div className="sticky top-0 z-10 flex flex-wrap items-center justify-between gap-2 border border-rule bg-sheet px-3 py-2">
-          <MapSaveLine state={save} />
+          <div className="min-w-0">
+            <MapSaveLine state={save} />
+            {/* On a wide page the answers stand beside the rows; on a narrow one they are far below. */}
+            <a href="#engine-says" className="text-link text-sm xl:hidden">
+              {summaryWords(blocking.length, analysis.statements)}
+            </a>
+          </div>
           <div className="flex flex-wrap items-center gap-2">
-            <Button
-              type="button"
+            <IconButton
               icon={Undo2}
               disabled={!lastStep}
-              title={lastStep ? `Undo: ${lastStep.what}` : "Nothing to undo"}
+              label={lastStep ? `Undo: ${lastStep.what}` : "Undo"}
               onClick={() => act({ type: "undo" })}
-            >
-              Undo
-            </Button>
-            <Button
-              type="button"
+            />
+            <IconButton
               icon={Redo2}
               disabled={state.future.length === 0}
+              label="Redo"
               onClick={() => act({ type: "redo" })}
-            >
-              Redo
-            </Button>
+            />
             <Button
               type="button"
               variant="primary"
@@ -263,6 +265,7 @@ export function MapEditor({ facts, ruleSet, exportName, onContinue, ...draftOpti
           <ProblemList problems={analysis.problems} onJump={jumpTo} />
         </Sheet>
         <Sheet
+          id="engine-says"
           title="What the engine says"
           lead={`Computed from this map by “${ruleSet.title}”. It advises; measuring and local codes decide.`}
         >
@@ -388,6 +391,20 @@ function useSaveBeforeLeaving(unsaved: boolean, flush: () => Promise<boolean>) {
     if (blocker.state !== "blocked") return;
     void flush().then(() => blocker.proceed());
   }, [blocker, flush]);
+}
+
+/** What is wrong in a few words: "3 to fill in · 1 danger · 2 unknown". */
+function summaryWords(missing: number, statements: readonly Statement[]): string {
+  const count = (level: Statement["level"]) =>
+    statements.filter((statement) => statement.level === level).length;
+  const parts = [
+    [missing, "to fill in"],
+    [count("danger"), "danger"],
+    [count("defect"), "defect"],
+    [count("unknown"), "unknown"],
+  ] as const;
+  const shown = parts.filter(([number]) => number > 0).map(([number, word]) => `${number} ${word}`);
+  return shown.length > 0 ? shown.join(" · ") : "What the engine says";
 }
 
 function byRow(problems: readonly Problem[]): Map<string, Problem[]> {

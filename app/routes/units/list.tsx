@@ -135,8 +135,8 @@ function Filter({
 }
 
 const columns: Column<UnitListItem>[] = [
-  { id: "number", header: "Number", cell: (unit) => unit.number, sortable: true, numeric: true },
   { id: "name", header: "Name", cell: (unit) => unit.name, sortable: true, primary: true },
+  { id: "number", header: "Number", cell: (unit) => unit.number, sortable: true, numeric: true },
   { id: "state", header: "State", cell: (unit) => <StateBadge state={unit.state} />, sortable: true },
   { id: "builder", header: "Built by", cell: (unit) => unit.builder, sortable: true },
   { id: "revision", header: "Revision", cell: (unit) => unit.revision, numeric: true },
