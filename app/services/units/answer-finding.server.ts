@@ -16,7 +16,7 @@ export interface AnswerInput {
 
 /**
  * Keeps the builder's answer to a finding for the revision being reworked. It can be changed until the unit is
- * submitted again; its saving leaves no entry in the trail, the submission does.
+ * submitted again; its saving leaves no entry in the trail, the submission makes one for each answer.
  *
  * @throws NotFoundError, ForbiddenError, ConflictError when the finding has been closed
  */

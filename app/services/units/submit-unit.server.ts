@@ -1,16 +1,17 @@
 import { createHash } from "node:crypto";
 import canonicalize from "canonicalize";
 import { and, asc, eq, ne } from "drizzle-orm";
-import { type Reader, tables } from "~/db/client.server";
+import { type Reader, tables, type Transaction } from "~/db/client.server";
 import { submissionProblems } from "~/engine/submission";
 import type { EnergyMap } from "~/engine/energy-map";
+import { appendEntry } from "~/services/audit/append-entry.server";
 import type { ServiceContext } from "~/services/context.server";
 import { enqueueMails } from "~/services/mail/enqueue-mail.server";
 import { moveUnit, type UnitActInput, type UnitRow } from "~/services/unit-act.server";
 import { factsOf, loadRevision } from "./load-revision.server";
 import { unansweredFindings } from "./answer-finding.server";
 
-const { memberships, people, revisions } = tables;
+const { findingAnswers, findings, memberships, people, revisions } = tables;
 
 /**
  * Submits a unit for examination: freezes the revision's map and facts, pins the workshop's rule set to it and tells
@@ -39,6 +40,7 @@ export function submitUnit(context: ServiceContext, input: UnitActInput): Promis
           ruleSetVersion: context.workshop.ruleSetVersion,
         })
         .where(eq(revisions.id, revision.id));
+      await enterAnswers(context, tx, unit, revision.id, at);
       const inspectors = await listInspectors(tx, context.workshop.id, unit.builderId);
       await enqueueMails(
         tx,
@@ -59,6 +61,32 @@ export function submitUnit(context: ServiceContext, input: UnitActInput): Promis
       return { result: undefined, detail: { mapSha256: hashMap(revision.map), told: inspectors.length } };
     },
   });
+}
+
+/** From now on the answers of this round can't be changed: each gets its entry in the trail, before the submission's. */
+async function enterAnswers(
+  context: ServiceContext,
+  tx: Transaction,
+  unit: UnitRow,
+  revisionId: number,
+  at: Date,
+): Promise<void> {
+  const answers = await tx
+    .select({ finding: findings.number, text: findingAnswers.text })
+    .from(findingAnswers)
+    .innerJoin(findings, eq(findings.id, findingAnswers.findingId))
+    .where(eq(findingAnswers.revisionId, revisionId))
+    .orderBy(asc(findings.number));
+  for (const { finding, text } of answers) {
+    await appendEntry(tx, {
+      workshopId: context.workshop.id,
+      at,
+      actorId: context.person.id,
+      act: "finding.answer",
+      unitId: unit.id,
+      detail: { finding, revision: unit.revision, textSha256: sha256(text) },
+    });
+  }
 }
 
 function submissionWords(context: ServiceContext, unit: UnitRow): string[] {
@@ -87,7 +115,9 @@ async function listInspectors(db: Reader, workshopId: number, builderId: number)
 }
 
 function hashMap(map: EnergyMap): string {
-  return createHash("sha256")
-    .update(canonicalize(map) ?? "")
-    .digest("hex");
+  return sha256(canonicalize(map) ?? "");
+}
+
+function sha256(text: string): string {
+  return createHash("sha256").update(text).digest("hex");
 }
