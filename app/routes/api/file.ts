@@ -19,7 +19,6 @@ export async function loader({ request, params, context }: Route.LoaderArgs) {
       // The bytes behind an id never change; "private", since only members of the workshop may see them.
       "Cache-Control": "private, max-age=86400, immutable",
       "Content-Type": file.contentType,
-      "X-Content-Type-Options": "nosniff",
       "Content-Security-Policy": "default-src 'none'; sandbox",
       "Content-Disposition": disposition(
         file.kind === "drawing" ? "attachment" : "inline",

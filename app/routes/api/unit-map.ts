@@ -22,7 +22,6 @@ export async function loader({ params, context }: Route.LoaderArgs) {
     headers: {
       "Content-Type": "application/json",
       "Content-Disposition": `attachment; filename="unit-${unit.number}-revision-${number}.json"`,
-      "X-Content-Type-Options": "nosniff",
     },
   });
 }

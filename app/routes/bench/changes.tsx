@@ -6,6 +6,7 @@ import { familyTitles } from "~/components/bench-limit";
 import { readingText } from "~/components/bench-reading";
 import { LineVerdictBadge } from "~/components/bench-verdict";
 import { Breadcrumbs } from "~/components/shell/breadcrumbs";
+import { changedFieldLabel, changedValueText } from "~/components/map-change-words";
 import { ConflictNotice } from "~/components/shell/conflict-notice";
 import { Badge } from "~/components/ui/badge";
 import { Button } from "~/components/ui/button";
@@ -154,10 +155,10 @@ function MapChanges({ changes }: { changes: NonNullable<Route.ComponentProps["lo
                 <dl className="mt-1 grid gap-x-4 text-sm sm:grid-cols-[auto_1fr]">
                   {change.fields.map(({ field, before, after }) => (
                     <div key={field} className="contents">
-                      <dt className="text-ink-soft">{field}</dt>
+                      <dt className="text-ink-soft">{changedFieldLabel(field)}</dt>
                       <dd className="tabular-nums">
-                        <del>{valueText(before)}</del> <span aria-hidden>→</span>{" "}
-                        <ins className="no-underline font-medium">{valueText(after)}</ins>
+                        <del>{changedValueText(field, before)}</del> <span aria-hidden>→</span>{" "}
+                        <ins className="no-underline font-medium">{changedValueText(field, after)}</ins>
                       </dd>
                     </div>
                   ))}
@@ -169,12 +170,6 @@ function MapChanges({ changes }: { changes: NonNullable<Route.ComponentProps["lo
       )}
     </Sheet>
   );
-}
-
-function valueText(value: unknown): string {
-  if (value === null || value === undefined) return "not known";
-  if (typeof value === "object") return JSON.stringify(value);
-  return String(value);
 }
 
 function CarryForm({

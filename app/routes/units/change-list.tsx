@@ -1,3 +1,4 @@
+import { changedFieldLabel, changedValueText } from "~/components/map-change-words";
 import type { MapChange } from "~/engine/compare-maps";
 
 const changeWords: Record<MapChange["change"], string> = {
@@ -21,8 +22,9 @@ export function ChangeList({ changes }: { changes: readonly MapChange[] }) {
             <ul className="mt-0.5 space-y-0.5 pl-4">
               {change.fields.map(({ field, before, after }) => (
                 <li key={field}>
-                  {field}: <del className="text-ink-soft">{text(before)}</del> →{" "}
-                  <ins className="font-medium no-underline">{text(after)}</ins>
+                  {changedFieldLabel(field)}:{" "}
+                  <del className="text-ink-soft">{changedValueText(field, before)}</del> →{" "}
+                  <ins className="font-medium no-underline">{changedValueText(field, after)}</ins>
                 </li>
               ))}
             </ul>
@@ -31,14 +33,4 @@ export function ChangeList({ changes }: { changes: readonly MapChange[] }) {
       ))}
     </ul>
   );
-}
-
-function text(value: unknown): string {
-  if (value === null || value === undefined || value === "unknown") return "not known";
-  if (typeof value === "object") {
-    return Object.values(value)
-      .map((part) => String(part))
-      .join(" · ");
-  }
-  return value === "" ? "empty" : String(value);
 }
