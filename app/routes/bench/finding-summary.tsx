@@ -31,7 +31,7 @@ export function FindingSummary({
             {check.title}
           </Link>
         ) : (
-          (finding.elementId ?? "on the unit as a whole")
+          whereElse(finding)
         )}
         {`, revision ${finding.revision}, ${finding.raisedBy}`}
       </p>
@@ -49,4 +49,9 @@ export function FindingSummary({
       ) : null}
     </div>
   );
+}
+
+function whereElse({ checkKey, elementId }: Pick<FindingView, "checkKey" | "elementId">): string {
+  if (elementId !== null) return `on ${elementId}`;
+  return checkKey === null ? "on the unit as a whole" : "on a check that this revision no longer calls for";
 }

@@ -1,14 +1,15 @@
 import { isDecided, type LineVerdict } from "~/engine/bench-answer";
 
-export const shows = ["all", "to-do", "fail", "decided", "photo-missing"] as const;
+export const shows = ["all", "to-do", "pass", "fail", "undecided", "photo-missing"] as const;
 /** Which lines of the sheet are shown. */
 export type Show = (typeof shows)[number];
 
 export const showWords: Record<Show, string> = {
   all: "All",
   "to-do": "To do",
+  pass: "Passed",
   fail: "Failed",
-  decided: "Decided",
+  undecided: "Undecided",
   "photo-missing": "Photo missing",
 };
 
@@ -23,10 +24,10 @@ export function isShown(line: { verdict: LineVerdict; photoMissing: boolean }, s
       return true;
     case "to-do":
       return !isDecided(line.verdict) || line.photoMissing;
+    case "pass":
     case "fail":
-      return line.verdict === "fail";
-    case "decided":
-      return isDecided(line.verdict);
+    case "undecided":
+      return line.verdict === show;
     case "photo-missing":
       return line.photoMissing;
   }
