@@ -7,11 +7,13 @@ import { RouterContextProvider } from "react-router";
 import * as build from "virtual:react-router/server-build";
 import { clientAddressContext, cspNonceContext, requestIdContext } from "~/context";
 import { environment } from "~/environment.server";
+import { refusalByBody } from "~/http/body-limit";
 import { createChangeLimit } from "~/http/change-limit";
 import { databaseAnswers, waitForDatabase } from "~/http/database-gate.server";
 import { refusalByOrigin } from "~/http/origin-check";
 import { answerPlainly } from "~/http/plain-answers";
 import { securityHeaders } from "~/http/security-headers";
+import { network } from "~/services/people/throttle.server";
 
 export { environment };
 export { startWorker } from "~/services/jobs/worker.server";
@@ -53,6 +55,7 @@ export function createApp(options: { clientFolder: string | null }): Express {
     });
   });
   app.use(checkOrigin);
+  app.use(checkBody);
   app.use(limitChanges(CHANGES_PER_MINUTE));
   app.use(requireDatabase);
   app.use(pages());
@@ -98,11 +101,22 @@ const checkOrigin: RequestHandler = (request, response, next) => {
   else answerPlainly(request, response, 403, refusal);
 };
 
+const checkBody: RequestHandler = (request, response, next) => {
+  if (request.method === "GET" || request.method === "HEAD") return next();
+  const refusal = refusalByBody({
+    path: request.path,
+    contentLength: request.get("Content-Length") ?? null,
+    transferEncoding: request.get("Transfer-Encoding") ?? null,
+  });
+  if (refusal === null) next();
+  else answerPlainly(request, response, refusal.status, refusal.detail);
+};
+
 function limitChanges(perMinute: number): RequestHandler {
   const count = createChangeLimit(perMinute);
   return (request, response, next) => {
     if (request.method === "GET" || request.method === "HEAD") return next();
-    const wait = count(request.ip ?? "", Date.now());
+    const wait = count(network(request.ip ?? ""), Date.now());
     if (wait === null) return next();
     response.set("Retry-After", String(wait));
     answerPlainly(

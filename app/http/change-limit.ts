@@ -1,5 +1,5 @@
 /**
- * Counts changes by address in windows of a minute. Simple on purpose: it stops a runaway script, while signing in
+ * Counts changes by client network in windows of a minute. Simple on purpose: it stops a runaway script, while signing in
  * has a throttle of its own.
  */
 export function createChangeLimit(perMinute: number): (address: string, now: number) => number | null {

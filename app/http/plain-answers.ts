@@ -2,6 +2,8 @@ import type { Request, Response } from "express";
 
 const TITLES: Record<number, string> = {
   403: "Refused",
+  411: "Length required",
+  413: "Too large",
   429: "Too many requests",
   500: "Something went wrong",
   503: "Not available just now",
