@@ -49,6 +49,7 @@ const titles: Record<number, string> = {
   401: "Not signed in",
   403: "Not allowed",
   404: "Not found",
+  405: "Method not allowed",
   409: "Conflict",
   413: "Too large",
   415: "Unsupported type",

@@ -37,7 +37,7 @@ export const sessionMiddleware: MiddlewareFunction<Response> = async ({ request,
   const session = secret ? await findSession(database(), secret, new Date()) : null;
   context.set(personContext, session?.person ?? null);
   const response = await next();
-  if (secret && session?.renewed && !setsSession(response)) {
+  if (secret && session?.renewed && !setsSession(response) && !isForEverybody(response)) {
     // The browser forgets the cookie when the session would have ended without this visit.
     response.headers.append("Set-Cookie", await sessionCookie().serialize(secret));
   }
@@ -48,6 +48,11 @@ export const sessionMiddleware: MiddlewareFunction<Response> = async ({ request,
 function setsSession(response: Response): boolean {
   const { name } = sessionCookie();
   return response.headers.getSetCookie().some((cookie) => cookie.startsWith(`${name}=`));
+}
+
+/** Whether shared caches may keep an answer: it must hold nobody's cookie. */
+function isForEverybody(response: Response): boolean {
+  return response.headers.get("Cache-Control")?.includes("public") ?? false;
 }
 
 /** The signed-in person, or a redirect to the sign-in page that leads back here afterwards. */

@@ -22,8 +22,8 @@ export const workshopMiddleware: MiddlewareFunction<Response> = async ({ url, pa
 };
 
 /**
- * The same for the API, where nobody can be led to the sign-in page. Whatever a route refuses in plain words leaves
- * as Problem Details.
+ * The same for the API, where nobody can be led to the sign-in page. Every refusal leaves as Problem Details, also
+ * those of React Router itself; answers that say nothing of caches belong to this person alone.
  */
 export const apiWorkshopMiddleware: MiddlewareFunction<Response> = async ({ params, context }, next) => {
   const person = context.get(personContext);
@@ -32,10 +32,24 @@ export const apiWorkshopMiddleware: MiddlewareFunction<Response> = async ({ para
   if (!workshop) return problemResponse(404, NO_SUCH_WORKSHOP);
   context.set(workshopContext, workshop);
   const response = await next();
-  const plain = response.headers.get("Content-Type")?.startsWith("text/plain") ?? false;
-  if (response.status < 400 || !plain) return response;
-  return problemResponse(response.status, await response.text());
+  if (response.status >= 400) return asProblem(response);
+  if (!response.headers.has("Cache-Control")) response.headers.set("Cache-Control", "private, no-cache");
+  return response;
 };
+
+async function asProblem(response: Response): Promise<Response> {
+  const contentType = response.headers.get("Content-Type") ?? "";
+  if (contentType.startsWith("application/problem+json")) return response;
+  const detail = contentType.startsWith("text/plain")
+    ? await response.text()
+    : response.status === 405
+      ? "This address does not take requests of this method."
+      : "This request is not understood here.";
+  const answer = problemResponse(response.status, detail);
+  const retryAfter = response.headers.get("Retry-After");
+  if (retryAfter !== null) answer.headers.set("Retry-After", retryAfter);
+  return answer;
+}
 
 /** What services are given, for the person and workshop of this request. */
 export function serviceContext(context: Readonly<RouterContextProvider>): ServiceContext {
