@@ -7,7 +7,8 @@ import { AuthenticationError } from "~/services/errors";
 import { authenticate } from "~/services/people/authenticate.server";
 import { database } from "~/services/database.server";
 
-const credentials = z.object({ email: z.string(), password: z.string() });
+/** Trimmed as the form's own schema does: a phone's keyboard likes to add a blank. */
+const credentials = z.object({ email: z.string().trim().max(254), password: z.string().max(200) });
 
 /**
  * Authenticates a sign-in form (fields `email` and `password`). The request's body must not have been read: give a

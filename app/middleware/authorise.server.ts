@@ -31,11 +31,9 @@ export async function authoriseUnit(
   unitNumber: string | undefined,
 ): Promise<{ services: ServiceContext; unit: StandingUnit }> {
   const services = serviceContext(context);
-  const number = Number(unitNumber);
-  const unit =
-    Number.isSafeInteger(number) && number > 0
-      ? await findUnit(services.db, services.workshop.id, number)
-      : null;
+  const unit = /^[1-9]\d{0,8}$/.test(unitNumber ?? "")
+    ? await findUnit(services.db, services.workshop.id, Number(unitNumber))
+    : null;
   if (!unit) throw answerTo(new NotFoundError("The unit"));
   const decision = decide(action, { id: services.person.id, roles: services.workshop.roles }, unit);
   if (!decision.allowed) throw refusal(403, decision.reason);

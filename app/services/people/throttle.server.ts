@@ -15,7 +15,7 @@ export interface ThrottleKey {
 
 /** Tries of one person's password, from anywhere. */
 export function mailKey(purpose: "sign-in" | "reset", email: string): ThrottleKey {
-  return { key: `${purpose}:mail:${email.toLowerCase()}`, limit: 5 };
+  return { key: `${purpose}:mail:${email.trim().toLowerCase()}`, limit: 5 };
 }
 
 /** Tries from one address, at any password. A whole IPv6 /64 is one customer, hence one key. */
