@@ -31,9 +31,16 @@ export function openDatabase(
   return Object.assign(database, { close: () => pool.end() });
 }
 
-/** Lost race under snapshot isolation, lock wait timeout, deadlock: the transaction may be run again as a whole. */
-const RETRYABLE = new Set([1020, 1205, 1213]);
-const TRIES = 5;
+/**
+ * How often a transaction is tried, as a whole, after a race lost under snapshot isolation (1020), a lock wait timeout
+ * (1205) and a deadlock (1213).
+ */
+const TRIES = new Map([
+  [1020, 8],
+  // MariaDB has waited for most of a minute by then.
+  [1205, 2],
+  [1213, 8],
+]);
 
 /** The MariaDB error number behind an error, or null. */
 export function databaseErrorNumber(error: unknown): number | null {
@@ -60,7 +67,9 @@ export async function inTransaction<T>(
       return await database.transaction(work);
     } catch (error) {
       const number = databaseErrorNumber(error);
-      if (attempt >= TRIES || number === null || !RETRYABLE.has(number)) throw error;
+      if (number === null || attempt >= (TRIES.get(number) ?? 1)) throw error;
+      // Those who meet at the head of a trail would meet there again if all came back at once.
+      await new Promise((resolve) => setTimeout(resolve, Math.random() * 10 * 2 ** attempt));
     }
   }
 }
