@@ -2,7 +2,7 @@ import { index, int, mysqlEnum, mysqlTable, text, unique, varchar } from "drizzl
 import { id, moment, ref } from "./columns";
 import { workshops } from "./people";
 
-/** Mail to be sent, written in the transaction of the act that it tells of. */
+/** Mail to be sent, written in the transaction of the act that it tells of. Text and HTML are emptied once it is sent. */
 export const outbox = mysqlTable(
   "outbox",
   {

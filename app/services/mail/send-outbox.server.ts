@@ -5,20 +5,23 @@ import { environment } from "~/environment.server";
 
 const { outbox } = tables;
 
-const BATCH = 20;
-const LEASE_MS = 60_000;
+/** A batch of mails, each as slow as the timeouts allow, must be done within its lease. */
+const BATCH = 5;
+const LEASE_MS = 600_000;
+const timeouts = { connectionTimeout: 10_000, greetingTimeout: 10_000, socketTimeout: 60_000 };
 const LONGEST_WAIT_MS = 3_600_000;
 
 let transport: Transporter | undefined;
 
 function mailTransport(): Transporter {
-  transport ??= createTransport(environment().SMTP_URL);
+  transport ??= createTransport({ url: environment().SMTP_URL, ...timeouts });
   return transport;
 }
 
 /**
  * Sends the mails that are due; returns how many went out. A mail that fails waits twice as long each time (at most
  * an hour) and is never given up. A crash between sending and marking can send one again, with the same Message-ID.
+ * Of a mail that went out only the fact is kept: its text may hold the link of an invitation or a reset.
  */
 export async function sendOutbox(db: Database, now: () => Date): Promise<number> {
   const mails = await lease(db, now());
@@ -35,10 +38,12 @@ export async function sendOutbox(db: Database, now: () => Date): Promise<number>
       });
       await db
         .update(outbox)
-        .set({ sentAt: now(), lockedUntil: null, lastError: null })
+        .set({ sentAt: now(), lockedUntil: null, lastError: null, text: "", html: "" })
         .where(eq(outbox.id, mail.id));
       sent++;
     } catch (error) {
+      // Told once a mail; the row keeps the latest reason.
+      if (mail.attempts === 0) console.error(`Mail ${mail.id} was not sent and will be tried again:`, error);
       const wait = Math.min(LONGEST_WAIT_MS, 5_000 * 2 ** mail.attempts);
       await db
         .update(outbox)

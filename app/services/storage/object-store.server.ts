@@ -1,4 +1,10 @@
-import { DeleteObjectCommand, GetObjectCommand, PutObjectCommand, S3Client, S3ServiceException } from "@aws-sdk/client-s3";
+import {
+  DeleteObjectCommand,
+  GetObjectCommand,
+  PutObjectCommand,
+  S3Client,
+  S3ServiceException,
+} from "@aws-sdk/client-s3";
 import { Upload } from "@aws-sdk/lib-storage";
 import { Readable } from "node:stream";
 import { environment } from "~/environment.server";
@@ -74,6 +80,8 @@ export function objectStore(): ObjectStore {
       requestChecksumCalculation: "WHEN_REQUIRED",
       responseChecksumValidation: "WHEN_REQUIRED",
       maxAttempts: 2,
+      // Without these a store that is silent, rather than away, would hold requests and the worker for ever.
+      requestHandler: { connectionTimeout: 5_000, socketTimeout: 60_000 },
     });
     store = s3ObjectStore(client, env.S3_BUCKET);
   }
