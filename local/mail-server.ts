@@ -35,8 +35,11 @@ export async function startMailServer(options: MailServerOptions): Promise<{ clo
       });
     },
   });
+  await new Promise<void>((resolve, reject) => {
+    smtp.once("error", reject);
+    smtp.listen(options.smtpPort, "127.0.0.1", resolve);
+  });
   smtp.on("error", (error) => console.error(error));
-  await new Promise<void>((resolve) => smtp.listen(options.smtpPort, "127.0.0.1", resolve));
 
   const web = createServer((request, response) => {
     const send = (status: number, type: string, body: string | Buffer) =>

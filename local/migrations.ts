@@ -6,7 +6,7 @@ import mysql from "mysql2/promise";
 import { APP_USER } from "./mariadb";
 
 /** Tables that the application may only read and add to: what they hold can't be rewritten by a bug or a break-in. */
-export const appendOnlyTables: readonly string[] = ["audit_entries"];
+export const appendOnlyTables: readonly string[] = ["audit_entries", "decisions", "withdrawals"];
 
 /** MariaDB's answer to revoking what was never granted: 1141 for the user, 1147 for the table. */
 const NOT_GRANTED = new Set([1141, 1147]);
