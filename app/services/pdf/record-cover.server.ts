@@ -127,6 +127,7 @@ function drawTerms(paper: Paper, { decision }: UnitRecord): void {
     ]);
     paper.moveDown(7);
   }
+  if (decision.kind === "refused") paragraph(paper, "The reasons:", { size: 8.4, weight: "bold", after: 1 });
   paragraph(paper, decision.statement, { size: 9, after: 5 });
   if (decision.departures !== null) {
     paragraph(paper, "Why it may be used although checks fail:", { size: 8.4, weight: "bold", after: 1 });
