@@ -93,9 +93,11 @@ export interface IsolationResult {
   switches: SwitchReport[];
   /** With every switch off. */
   whenOff: LiveConductor[];
-  /** Every different outcome. With more than eight switches only some combinations are worked out. */
+  /** Every different outcome. With more than six switches only some combinations are worked out. */
   combinations: SwitchCombination[];
+  /** In any position of the switches; complete while there are at most six changeovers. */
   joins: Join[];
+  joinsComplete: boolean;
   combinationsComplete: boolean;
 }
 

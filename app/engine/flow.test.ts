@@ -3,7 +3,7 @@ import { expect, test } from "vitest";
 
 import { circuitOf, type Circuit } from "./circuit";
 import { conduction } from "./energise";
-import { largestFlow } from "./flow";
+import { largestFlow, networkOf } from "./flow";
 import { mapOf, part, wire } from "./map-builder";
 import { viewOf } from "./map-view";
 
@@ -11,19 +11,17 @@ const ask = (circuit: Circuit, start: string, end: string) => {
   const [from, to] = [start, end].map((each) =>
     circuit.view.nodeOf(each.split(".")[0] ?? "", each.split(".")[1] ?? ""),
   );
-  return largestFlow(circuit, {
-    start: from ?? -1,
-    end: to ?? -1,
+  const network = networkOf(circuit, {
     conducts: conduction(circuit, { positions: new Map(), includePossible: true }),
     throughLoads: false,
     exceptElement: "",
     isHot: () => false,
     isReturn: () => false,
-    skip: -1,
     capacities: new Map(
       circuit.view.ofKind("fuse").map(({ id, ratingAmps }) => [id, ratingAmps ?? Infinity]),
     ),
   });
+  return largestFlow(circuit, network, from ?? -1, to ?? -1, -1);
 };
 
 test("fuses in series let the smaller through, in parallel their sum", () => {

@@ -3,9 +3,7 @@ import type { Circuit } from "./circuit";
 /** Stands for "no device limits it" in sums of flows. */
 const UNLIMITED = 1e12;
 
-export interface FlowQuestion {
-  start: number;
-  end: number;
+export interface NetworkQuestion {
   /** For each link how it conducts: 0 not, 1 from a to b, 2 both ways. */
   conducts: Uint8Array;
   /** Currents pass through loads, lamps and batteries too. */
@@ -15,10 +13,14 @@ export interface FlowQuestion {
   /** Held by the hot or the return pole: a load passes current on from any but a return node, to any but a hot one. */
   isHot: (node: number) => boolean;
   isReturn: (node: number) => boolean;
-  /** A link that is taken out. */
-  skip: number;
   /** What each protective device lets through, A; a device that is not named lets everything through. */
   capacities: ReadonlyMap<string, number>;
+}
+
+/** What each link can carry from a to b and from b to a, A. Made once, asked often. */
+export interface Network {
+  ahead: Float64Array;
+  back: Float64Array;
 }
 
 export interface Flow {
@@ -28,37 +30,18 @@ export interface Flow {
   devices: string[];
 }
 
-/** Largest flow between two nodes with devices as bottlenecks (augmenting shortest paths), and the smallest cut. */
-export function largestFlow(circuit: Circuit, question: FlowQuestion): Flow {
-  const { start, end } = question;
-  if (start < 0 || end < 0) return { amps: 0, devices: [] };
-  if (start === end) return { amps: Infinity, devices: [] };
-  const { ahead, back } = capacitiesOf(circuit, question);
-  const flow = new Float64Array(circuit.links.length);
-  let total = 0;
-  for (let round = 0; round < 1000; round++) {
-    const came = search(circuit, start, ahead, back, flow);
-    if ((came[end] ?? -1) < 0) return { amps: total, devices: crossing(circuit, came, ahead, back) };
-    const step = smallestResidual(circuit, came, start, end, ahead, back, flow);
-    total += step;
-    if (total >= UNLIMITED) return { amps: Infinity, devices: [] };
-    push(circuit, came, start, end, flow, step);
-  }
-  return { amps: Infinity, devices: [] };
-}
-
-function capacitiesOf(circuit: Circuit, question: FlowQuestion) {
+export function networkOf(circuit: Circuit, question: NetworkQuestion): Network {
   const ahead = new Float64Array(circuit.links.length);
   const back = new Float64Array(circuit.links.length);
   circuit.links.forEach((link, index) => {
-    if (index === question.skip) return;
     const isLoad = link.kind === "consumer";
     if (
       isLoad
         ? !question.throughLoads || link.element === question.exceptElement
         : question.conducts[index] === 0
-    )
+    ) {
       return;
+    }
     const amps = link.element === null ? UNLIMITED : (question.capacities.get(link.element) ?? UNLIMITED);
     const passesOn = (from: number, to: number) => !question.isReturn(from) && !question.isHot(to);
     const isAhead = isLoad ? passesOn(link.a, link.b) : true;
@@ -69,42 +52,61 @@ function capacitiesOf(circuit: Circuit, question: FlowQuestion) {
   return { ahead, back };
 }
 
-/** For each node the link it was reached by, -1 not reached, -2 the start. */
+/**
+ * Largest flow between two nodes with devices as bottlenecks (augmenting shortest paths), and the smallest cut.
+ * `skip` is the index of a link that is taken out, or -1.
+ */
+export function largestFlow(
+  circuit: Circuit,
+  network: Network,
+  start: number,
+  end: number,
+  skip: number,
+): Flow {
+  if (start < 0 || end < 0) return { amps: 0, devices: [] };
+  if (start === end) return { amps: Infinity, devices: [] };
+  const flow = new Float64Array(circuit.links.length);
+  let total = 0;
+  for (let round = 0; round < 1000; round++) {
+    const came = search(circuit, network, flow, start, end, skip);
+    if ((came[end] ?? -1) < 0) return { amps: total, devices: crossing(circuit, came, network, skip) };
+    const step = smallestResidual(circuit, came, start, end, network, flow);
+    total += step;
+    if (total >= UNLIMITED) return { amps: Infinity, devices: [] };
+    push(circuit, came, start, end, flow, step);
+  }
+  return { amps: Infinity, devices: [] };
+}
+
+/** For each node the link it was reached by, -1 not reached, -2 the start. Ends as soon as the end is reached. */
 function search(
   circuit: Circuit,
-  start: number,
-  ahead: Float64Array,
-  back: Float64Array,
+  network: Network,
   flow: Float64Array,
+  start: number,
+  end: number,
+  skip: number,
 ): Int32Array {
   const came = new Int32Array(circuit.view.nodeCount).fill(-1);
   came[start] = -2;
-  const reached = new Uint8Array(circuit.view.nodeCount);
-  reached[start] = 1;
   const queue = [start];
   for (let head = 0; head < queue.length; head++) {
     const node = queue[head];
     if (node === undefined) break;
     for (const index of circuit.linksAt[node] ?? []) {
       const link = circuit.links[index];
-      if (link === undefined || residual(link.a === node, index, ahead, back, flow) <= 1e-9) continue;
+      if (link === undefined || index === skip) continue;
       const next = link.a === node ? link.b : link.a;
-      if (reached[next] === 1) continue;
-      reached[next] = 1;
+      if (came[next] !== -1 || residual(link.a === node, index, network, flow) <= 1e-9) continue;
       came[next] = index;
+      if (next === end) return came;
       queue.push(next);
     }
   }
   return came;
 }
 
-function residual(
-  fromA: boolean,
-  index: number,
-  ahead: Float64Array,
-  back: Float64Array,
-  flow: Float64Array,
-): number {
+function residual(fromA: boolean, index: number, { ahead, back }: Network, flow: Float64Array): number {
   const carried = flow[index] ?? 0;
   return fromA ? (ahead[index] ?? 0) - carried : (back[index] ?? 0) + carried;
 }
@@ -132,13 +134,12 @@ function smallestResidual(
   came: Int32Array,
   start: number,
   end: number,
-  ahead: Float64Array,
-  back: Float64Array,
+  network: Network,
   flow: Float64Array,
 ): number {
   let step = UNLIMITED;
   stepsBack(circuit, came, start, end, (index, fromA) => {
-    step = Math.min(step, residual(fromA, index, ahead, back, flow));
+    step = Math.min(step, residual(fromA, index, network, flow));
   });
   return step;
 }
@@ -156,9 +157,10 @@ function push(
   });
 }
 
-function crossing(circuit: Circuit, came: Int32Array, ahead: Float64Array, back: Float64Array): string[] {
+function crossing(circuit: Circuit, came: Int32Array, { ahead, back }: Network, skip: number): string[] {
   const inside = (node: number) => came[node] !== -1;
   const devices = circuit.links.flatMap((link, index) => {
+    if (index === skip) return [];
     const cut = inside(link.a)
       ? !inside(link.b) && (ahead[index] ?? 0) > 0
       : inside(link.b) && (back[index] ?? 0) > 0;

@@ -3,7 +3,7 @@ import type { Circuit, Link } from "./circuit";
 import { isReached, passes } from "./energise";
 import type { Element, ElementOf } from "./energy-map";
 import { figure } from "./figure";
-import type { Feed } from "./fusing";
+import type { Feed } from "./feeds";
 import { guaranteedBreaking, loadableShare, proposeRating, standardRatings } from "./fuse-data";
 import { shortCircuitAmps, suppliedVolts } from "./supply-data";
 import type { UnitFacts } from "./unit-facts";

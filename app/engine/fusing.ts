@@ -1,34 +1,21 @@
 import type { ConductorProtection, FusingResult } from "./analysis";
 import type { Circuit } from "./circuit";
 import { ampacityOf } from "./conductor-data";
-import { configurations, energise, isReached, type Instance } from "./energise";
 import type { Conductor } from "./energy-map";
-import { contactReports, deviceReports } from "./fusing-devices";
-import { largestFlow, type Flow } from "./flow";
+import { feedsOf, limitsOf, sideOf, withLimit, type Feed, type Limits, type Side } from "./feeds";
 import { figure } from "./figure";
-import { reachThroughLoads } from "./live";
-import { suppliedLimit } from "./supply-data";
+import type { Flow } from "./flow";
+import { contactReports, deviceReports } from "./fusing-devices";
 import type { UnitFacts } from "./unit-facts";
-
-/** One feeding supply under one set of switch positions, with what is needed to ask for flows. */
-export interface Feed {
-  instance: Instance;
-  conducts: Uint8Array;
-  /** What it reaches through loads, as from `reachThroughLoads`. */
-  through: Int32Array;
-  /** Reached only if something that is not known is so. */
-  doubtful: boolean;
-  /** What the supply can give for long, A; `null`: not known. */
-  limitAmps: number | null;
-}
 
 /** For each conductor and supply what protects it, and for each device whether it suits load, fault current and voltage. */
 export function analyseFusing(circuit: Circuit, facts: UnitFacts): FusingResult {
   const feeds = feedsOf(circuit, facts);
+  const indexOf = new Map(circuit.links.map(({ conductor }, index) => [conductor, index]));
   const conductors = worstOf(
     feeds.flatMap((feed) =>
       circuit.view.wired.flatMap((conductor) => {
-        const found = protectionOf(circuit, feed, conductor);
+        const found = protectionOf(circuit, feed, conductor, indexOf.get(conductor.id) ?? -1);
         return found === null ? [] : [found];
       }),
     ),
@@ -40,162 +27,19 @@ export function analyseFusing(circuit: Circuit, facts: UnitFacts): FusingResult 
   };
 }
 
-/** Every supply with everything switched on, each changeover in each position. */
-function feedsOf(circuit: Circuit, facts: UnitFacts): Feed[] {
-  return configurations(circuit, () => null).flatMap((positions) =>
-    circuit.sources.flatMap((source) => {
-      const energised = energise(circuit, source, { positions, includePossible: true });
-      const feeds: Feed[] = [];
-      for (const instance of energised.instances) {
-        const parent = feeds.find((each) => each.instance === instance.parent?.instance);
-        feeds.push({
-          instance,
-          conducts: energised.conducts,
-          through: reachThroughLoads(circuit, instance, energised.conducts),
-          doubtful: parent?.doubtful === true || instance.parent?.transfer.certainty === "possible",
-          limitAmps: suppliedLimit(
-            circuit.view,
-            instance,
-            facts,
-            parent === undefined ? null : feedAmps(circuit, parent, instance),
-          ),
-        });
-      }
-      return feeds;
-    }),
-  );
-}
-
-/** What the devices before a stage let into it, A. */
-function feedAmps(circuit: Circuit, parent: Feed, { parent: step }: Instance): number | null {
-  if (step === null) return null;
-  const onHot = isReached(parent.instance.hot, step.transfer.from.hot);
-  const node = onHot ? step.transfer.from.hot : step.transfer.from.ret;
-  const { amps } = flowFromHot(circuit, parent, node, -1, false, highCapacities(circuit));
-  return withLimit(parent, amps).amps;
-}
-
-function withLimit({ limitAmps, instance }: Feed, amps: number): { amps: number | null; bySupply: string[] } {
-  if (limitAmps === null) return { amps: Number.isFinite(amps) ? amps : null, bySupply: [] };
-  return limitAmps <= amps
-    ? { amps: limitAmps, bySupply: Number.isFinite(limitAmps) ? [instance.supply.element] : [] }
-    : { amps, bySupply: [] };
-}
-
-/** Rating of each fuse and breaker; one that is not known counts as letting everything through. */
-function highCapacities(circuit: Circuit): Map<string, number> {
-  return new Map(protectors(circuit).map(({ id, ratingAmps }) => [id, ratingAmps ?? Infinity]));
-}
-/** As above, but one that is not known lets nothing through: the smallest that it could be. */
-function lowCapacities(circuit: Circuit): Map<string, number> {
-  return new Map(protectors(circuit).map(({ id, ratingAmps }) => [id, ratingAmps ?? 0]));
-}
-const protectors = ({ view }: Circuit) => [...view.ofKind("fuse"), ...view.ofKind("breaker")];
-
-function flowFromHot(
+function protectionOf(
   circuit: Circuit,
-  { instance, conducts }: Feed,
-  end: number,
-  skip: number,
-  throughLoads: boolean,
-  capacities: Map<string, number>,
-): Flow {
-  return largestFlow(circuit, {
-    start: instance.supply.hot,
-    end,
-    conducts,
-    throughLoads,
-    exceptElement: instance.supply.element,
-    isHot: (node) => isReached(instance.hot, node),
-    isReturn: (node) => isReached(instance.ret, node),
-    skip,
-    capacities,
-  });
-}
-
-interface Limits {
-  /** What can flow into it from the supply's side, A. */
-  into: Flow;
-  /** What can flow on from its far end, A; `null` where that protects nothing. */
-  onward: Flow | null;
-}
-
-type Side = "hot" | "return" | "between";
-
-function sideOf({ instance, through }: Feed, node: number): Side | null {
-  if (isReached(instance.hot, node)) return "hot";
-  if (isReached(instance.ret, node)) return "return";
-  return isReached(through, node) ? "between" : null;
-}
-
-function protectionOf(circuit: Circuit, feed: Feed, conductor: Conductor): ConductorProtection | null {
-  if (conductor.circuit === "earth") return null;
-  const index = circuit.links.findIndex((link) => link.conductor === conductor.id);
+  feed: Feed,
+  conductor: Conductor,
+  index: number,
+): ConductorProtection | null {
   const link = circuit.links[index];
-  if (link === undefined) return null;
+  if (conductor.circuit === "earth" || link === undefined) return null;
   const side = sideOf(feed, link.a);
   if (side === null) return null;
-  const ask = (capacities: Map<string, number>): Limits =>
-    side === "hot"
-      ? hotLimits(circuit, feed, index, capacities)
-      : returnLimits(circuit, feed, index, capacities);
-  const high = ask(highCapacities(circuit));
-  const low = protectors(circuit).some(({ ratingAmps }) => ratingAmps === null)
-    ? ask(lowCapacities(circuit))
-    : high;
+  const high = limitsOf(circuit, feed, feed.high, index, side);
+  const low = feed.low === null ? high : limitsOf(circuit, feed, feed.low, index, side);
   return judge(circuit, feed, conductor, side, high, low);
-}
-
-/** The end of a conductor that a walk from a pole came to first; both when it closes a loop. */
-function nearEnds(reach: Int32Array, index: number, a: number, b: number): number[] {
-  if (reach[b] === index) return [a];
-  if (reach[a] === index) return [b];
-  return [a, b];
-}
-
-const larger = (flows: Flow[]): Flow =>
-  flows.reduce((most, each) => (each.amps > most.amps ? each : most), { amps: 0, devices: [] });
-
-function hotLimits(circuit: Circuit, feed: Feed, index: number, capacities: Map<string, number>): Limits {
-  const link = circuit.links[index];
-  if (link === undefined) return { into: { amps: Infinity, devices: [] }, onward: null };
-  const near = nearEnds(feed.instance.hot, index, link.a, link.b);
-  const far = near.length === 1 ? [near[0] === link.a ? link.b : link.a] : near;
-  return {
-    into: larger(near.map((node) => flowFromHot(circuit, feed, node, index, false, capacities))),
-    onward: larger(far.map((node) => flowToReturn(circuit, feed, node, index, capacities))),
-  };
-}
-
-function flowToReturn(
-  circuit: Circuit,
-  { instance, conducts }: Feed,
-  start: number,
-  skip: number,
-  capacities: Map<string, number>,
-): Flow {
-  return largestFlow(circuit, {
-    start,
-    end: instance.supply.ret,
-    conducts,
-    throughLoads: true,
-    exceptElement: instance.supply.element,
-    isHot: (node) => isReached(instance.hot, node),
-    isReturn: (node) => isReached(instance.ret, node),
-    skip,
-    capacities,
-  });
-}
-
-function returnLimits(circuit: Circuit, feed: Feed, index: number, capacities: Map<string, number>): Limits {
-  const link = circuit.links[index];
-  if (link === undefined) return { into: { amps: Infinity, devices: [] }, onward: null };
-  const near = nearEnds(feed.instance.ret, index, link.a, link.b);
-  const loadSide = near.length === 1 ? [near[0] === link.a ? link.b : link.a] : near;
-  return {
-    into: larger(loadSide.map((node) => flowFromHot(circuit, feed, node, index, true, capacities))),
-    onward: larger(near.map((node) => flowToReturn(circuit, feed, node, index, capacities))),
-  };
 }
 
 /** Longest unprotected lead from a battery's terminal to its fuse, m. From memory: a practice, about 180 mm. */
@@ -251,10 +95,10 @@ function judge(
     return answer("pass", `${may}; ${names}.`);
   }
   const onward = high.onward;
-  if (onward !== null && onward.amps <= ampacity.amps) {
+  if (onward.amps <= ampacity.amps) {
     return overloadOnly(circuit, feed, conductor, side, onward, may, answer);
   }
-  const lowest = Math.min(withLimit(feed, low.into.amps).amps ?? 0, low.onward?.amps ?? Infinity);
+  const lowest = Math.min(withLimit(feed, low.into.amps).amps ?? 0, low.onward.amps);
   if (lowest <= ampacity.amps) {
     return answer("unknown", `${may}; what limits the current from ${supplied} is not known.`);
   }

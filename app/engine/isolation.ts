@@ -1,29 +1,29 @@
 import type {
   IsolationResult,
-  Join,
   PoleReport,
   SourceIsolation,
   SwitchCombination,
   SwitchReport,
 } from "./analysis";
 import type { Circuit, Supply } from "./circuit";
-import { joinsUnder } from "./joins";
+import { findJoins } from "./joins";
 import { conduction, configurations, energise, isReached, walk, type Position } from "./energise";
 import { liveConductors, liveSets } from "./live";
 
-/** Up to this many switches every combination is worked out. */
-const completeUpTo = 8;
+/** Up to this many switches every combination is worked out; any one can be asked for with `liveInStates`. */
+const completeUpTo = 6;
 
 /** What each source still reaches as switches are moved, which switches part its poles, and which circuits share a switch. */
 export function analyseIsolation(circuit: Circuit): IsolationResult {
-  const { combinations, complete, joins } = goThroughCombinations(circuit);
+  const { combinations, complete } = goThroughCombinations(circuit);
   return {
     sources: circuit.sources.map((source) => isolationOf(circuit, source)),
     switches: circuit.switches.map(({ id }) => switchReport(circuit, id)),
     whenOff: liveConductors(circuit, allAt(circuit, "off")),
     combinations,
     combinationsComplete: complete,
-    joins,
+    joins: findJoins(circuit),
+    joinsComplete: circuit.switches.filter((each) => each.throw === "changeover").length <= 6,
   };
 }
 
@@ -122,7 +122,6 @@ function goThroughCombinations(circuit: Circuit) {
   const ids = circuit.switches.map(({ id }) => id);
   const complete = ids.length <= completeUpTo;
   const chosen = complete ? everyCombination(ids) : fewCombinations(ids);
-  const joins = new Map<string, Join>();
   const seen = new Map<string, SwitchCombination>();
   for (const on of chosen) {
     const positions = new Map<string, Position>(ids.map((id) => [id, on.has(id) ? "on" : "off"]));
@@ -131,13 +130,14 @@ function goThroughCombinations(circuit: Circuit) {
     const energised = circuit.sources.map((source) => energise(circuit, source, wide, wideConducts));
     const live = liveSets(circuit, energised);
     const states = Object.fromEntries(ids.map((id) => [id, on.has(id) ? ("on" as const) : ("off" as const)]));
-    const key = JSON.stringify(live);
+    const key = Object.values(live)
+      .map((ids) => ids.join(","))
+      .join(";");
     const same = seen.get(key);
     if (same === undefined) seen.set(key, { states, live, alike: 1 });
     else same.alike += 1;
-    for (const join of joinsUnder(circuit, positions)) if (!joins.has(join.id)) joins.set(join.id, join);
   }
-  return { combinations: [...seen.values()], complete, joins: [...joins.values()] };
+  return { combinations: [...seen.values()], complete };
 }
 
 /** All subsets, those with fewest switches on first, so that what is found is told in its simplest form. */

@@ -2,14 +2,45 @@ import type { Certainty, Join } from "./analysis";
 import type { Circuit } from "./circuit";
 import type { MapView } from "./map-view";
 import { list } from "./wording";
-import { conduction, energise, isReached, type Instance, type Position } from "./energise";
+import { conduction, configurations, energise, isReached, type Instance, type Position } from "./energise";
 
-/** Shorts, mains joined with extra-low voltage, and live accessible parts or earth, in the given positions. */
-export function joinsUnder(circuit: Circuit, positions: ReadonlyMap<string, Position>): Join[] {
-  const sure = find(circuit, positions, false);
-  const known = new Set(sure.map(({ id }) => id));
-  const hasDoubt = circuit.links.some(({ certainty }) => certainty === "possible");
-  return hasDoubt ? [...sure, ...find(circuit, positions, true).filter(({ id }) => !known.has(id))] : sure;
+/**
+ * Shorts, mains joined with extra-low voltage, and live accessible parts or earth, in any position of the switches, each with
+ * the fewest switches on. Closing a contact only ever joins more, so it is enough to look with every on-off switch on, for
+ * each position of the changeovers, and then to turn off what a join does not need.
+ */
+export function findJoins(circuit: Circuit): Join[] {
+  const joins = new Map<string, Join>();
+  for (const includePossible of [false, true]) {
+    if (includePossible && !hasDoubt(circuit)) break;
+    for (const positions of configurations(circuit, () => null)) {
+      for (const { id } of find(circuit, positions, includePossible)) {
+        if (joins.has(id)) continue;
+        const fewest = withFewestOn(circuit, positions, id, includePossible);
+        const join = find(circuit, fewest, includePossible).find((each) => each.id === id);
+        if (join !== undefined) joins.set(id, join);
+      }
+    }
+  }
+  return [...joins.values()];
+}
+
+const hasDoubt = ({ links, transfers }: Circuit) =>
+  links.some(({ certainty }) => certainty === "possible") ||
+  transfers.some(({ certainty }) => certainty === "possible");
+
+function withFewestOn(
+  circuit: Circuit,
+  start: ReadonlyMap<string, Position>,
+  id: string,
+  includePossible: boolean,
+): ReadonlyMap<string, Position> {
+  let positions = start;
+  for (const element of circuit.switches) {
+    const fewer = new Map(positions).set(element.id, "off");
+    if (find(circuit, fewer, includePossible).some((each) => each.id === id)) positions = fewer;
+  }
+  return positions;
 }
 
 function find(circuit: Circuit, positions: ReadonlyMap<string, Position>, includePossible: boolean): Join[] {

@@ -106,10 +106,14 @@ export function liveConductors(circuit: Circuit, positions: Condition["positions
 /** As `liveConductors`, but only which conductors per source, sure or not: for going through many combinations. */
 export function liveSets(circuit: Circuit, energised: Energised[]): Record<string, string[]> {
   const live: Record<string, string[]> = {};
+  const nodes = circuit.view.wired.map(({ id, from }) => ({
+    id,
+    node: circuit.view.nodeOf(from.element, from.terminal),
+  }));
   for (const each of energised) {
     const prepared = prepare(circuit, each);
-    live[each.source.element] = circuit.view.wired
-      .filter(({ from }) => liveAt(prepared, circuit.view.nodeOf(from.element, from.terminal)) !== null)
+    live[each.source.element] = nodes
+      .filter(({ node }) => liveAt(prepared, node) !== null)
       .map(({ id }) => id);
   }
   return live;

@@ -7,7 +7,7 @@ export const circuitsApart: CheckDefinition = {
   id: "circuits-apart",
   family: "insulation",
   derive(view, ruleSet, _facts, analysis) {
-    const { joins, combinationsComplete } = analysis.isolation;
+    const { joins, joinsComplete } = analysis.isolation;
     const sources = [
       ...view.ofKind("mains-inlet"),
       ...view.ofKind("dc-inlet"),
@@ -20,14 +20,14 @@ export const circuitsApart: CheckDefinition = {
     const verdicts = joins.map(({ certainty }) =>
       certainty === "certain" ? ("fail" as const) : ("unknown" as const),
     );
-    const gone = combinationsComplete
+    const gone = joinsComplete
       ? {
           verdict: "pass" as const,
           text: "In no position of the switches is a source short-circuited, mains joined with another circuit, or a part that is touched live.",
         }
       : {
           verdict: "unknown" as const,
-          text: "There are more switches than all combinations can be worked out for; those worked out show nothing joined.",
+          text: "There are more changeover switches than all positions can be worked out for; those worked out show nothing joined.",
         };
     const check: BenchCheck = {
       key: keyOf("circuits-apart"),
