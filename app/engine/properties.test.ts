@@ -15,6 +15,7 @@ import {
 } from "./elements";
 import { energyMapSchema, type Conductor, type Element, type EnergyMap } from "./energy-map";
 import { allAt } from "./isolation";
+import { findJoins } from "./joins";
 import { liveConductors } from "./live";
 import { extended, part, wire, withData } from "./map-builder";
 import { viewOf } from "./map-view";
@@ -352,6 +353,39 @@ test("a diode put into a conductor never opens a new way backwards", () => {
           .map(({ from, to }) => `${from} ${to}`);
       const before = new Set(pairs(map));
       for (const pair of pairs(after)) expect(before.has(pair)).toBe(true);
+    }),
+    { numRuns: 300 },
+  );
+});
+
+test("joins are found as by going through every combination of switches", () => {
+  fc.assert(
+    fc.property(directMap, (map) => {
+      const reachesWith = (on: number) => {
+        const ids = map.elements.filter(({ kind }) => kind === "switch").map(({ id }) => id);
+        return closure(map, (id) => ((on >> ids.indexOf(id)) & 1) === 1);
+      };
+      const switches = map.elements.filter(({ kind }) => kind === "switch").length;
+      const fewest = new Map<string, number>();
+      for (let on = 0; on < 2 ** switches; on++) {
+        const reaches = reachesWith(on);
+        const count = on.toString(2).replaceAll("0", "").length;
+        for (const { id, kind } of map.elements) {
+          if (kind !== "battery" || !reaches(`${id}.+`, `${id}.-`)) continue;
+          fewest.set(id, Math.min(fewest.get(id) ?? Infinity, count));
+        }
+      }
+      const shorts = findJoins(circuitOf(viewOf(map))).filter(({ kind }) => kind === "short");
+      expect(new Set(shorts.map(({ source }) => source))).toEqual(new Set(fewest.keys()));
+      for (const { source, switchesOn } of shorts) {
+        // None of the switches named can be left off.
+        expect(switchesOn.length).toBeGreaterThanOrEqual(fewest.get(source) ?? Infinity);
+        for (const spared of switchesOn)
+          expect(
+            closure(map, (id) => switchesOn.includes(id) && id !== spared)(`${source}.+`, `${source}.-`),
+          ).toBe(false);
+        expect(closure(map, (id) => switchesOn.includes(id))(`${source}.+`, `${source}.-`)).toBe(true);
+      }
     }),
     { numRuns: 300 },
   );
