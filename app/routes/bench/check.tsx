@@ -5,6 +5,8 @@ import { familyTitles } from "~/components/bench-limit";
 import { LineVerdictBadge } from "~/components/bench-verdict";
 import { PhotoStrip } from "~/components/photo-strip";
 import { PhotoUpload } from "~/components/photo-upload";
+import { ConflictNotice } from "~/components/shell/conflict-notice";
+import { FormErrorSummary } from "~/components/ui/form-error-summary";
 import { LinkButton } from "~/components/ui/link-button";
 import { Sheet } from "~/components/ui/sheet";
 import { answerTo } from "~/middleware/answers.server";
@@ -157,7 +159,7 @@ export const meta: Route.MetaFunction = ({ loaderData }) => [
   },
 ];
 
-export default function CheckPage({ loaderData, params }: Route.ComponentProps) {
+export default function CheckPage({ loaderData, actionData, params }: Route.ComponentProps) {
   const { unit, line, index, total, decided, whyNot, personId } = loaderData;
   const { check } = line;
   const base = `/w/${params.workshop}/bench/${unit.number}`;
@@ -188,6 +190,7 @@ export default function CheckPage({ loaderData, params }: Route.ComponentProps) 
           </LinkButton>
         </div>
       </header>
+      <RefusedWithoutScript answer={actionData} />
       {/* On a tablet the answer comes right after the question; on a desk it stands beside both. */}
       <div className="grid items-start gap-5 lg:grid-cols-2 lg:grid-rows-[auto_1fr]">
         <CheckQuestion check={check} />
@@ -255,6 +258,18 @@ export default function CheckPage({ loaderData, params }: Route.ComponentProps) 
         nextOpenKey={loaderData.nextOpenKey}
         mayWork={whyNot === null}
       />
+    </div>
+  );
+}
+
+/** The forms here are sent by fetchers, which tell refusals themselves; only without JavaScript does one come as a whole page. */
+function RefusedWithoutScript({ answer }: { answer: Route.ComponentProps["actionData"] }) {
+  if (!answer || "saved" in answer) return null;
+  const errors = Object.values(answer.error ?? {}).flatMap((messages) => messages ?? []);
+  return (
+    <div className="mb-5">
+      {answer.conflict ? <ConflictNotice message={answer.conflict} /> : null}
+      <FormErrorSummary form={{ errors }} title="This was not saved" />
     </div>
   );
 }
