@@ -36,10 +36,10 @@ export function openDatabase(
  * (1205) and a deadlock (1213).
  */
 const TRIES = new Map([
-  [1020, 8],
+  [1020, 15],
   // MariaDB has waited for most of a minute by then.
   [1205, 2],
-  [1213, 8],
+  [1213, 15],
 ]);
 
 /** The MariaDB error number behind an error, or null. */
@@ -69,7 +69,7 @@ export async function inTransaction<T>(
       const number = databaseErrorNumber(error);
       if (number === null || attempt >= (TRIES.get(number) ?? 1)) throw error;
       // Those who meet at the head of a trail would meet there again if all came back at once.
-      await new Promise((resolve) => setTimeout(resolve, Math.random() * 10 * 2 ** attempt));
+      await new Promise((resolve) => setTimeout(resolve, Math.random() * Math.min(1_000, 10 * 2 ** attempt)));
     }
   }
 }
