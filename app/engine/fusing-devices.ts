@@ -1,9 +1,9 @@
-import type { ConductorProtection, ContactReport, DeviceReport, Verdict3 } from "./analysis";
+import type { ConductorProtection, DeviceReport, Verdict3 } from "./analysis";
+import { carries, loadThrough, type CarriedLoad } from "./carried-load";
 import type { Circuit, Link } from "./circuit";
-import { isReached, passes } from "./energise";
-import type { Element, ElementOf } from "./energy-map";
-import { figure } from "./figure";
+import type { ElementOf } from "./energy-map";
 import type { Feed } from "./feeds";
+import { figure } from "./figure";
 import { guaranteedBreaking, loadableShare, proposeRating, standardRatings } from "./fuse-data";
 import { shortCircuitAmps, suppliedVolts } from "./supply-data";
 import type { UnitFacts } from "./unit-facts";
@@ -32,98 +32,6 @@ export function deviceReports(
     }
   }
   return [...reports.values()];
-}
-
-const carries = ({ instance }: Feed, { a, b }: Link) =>
-  (isReached(instance.hot, a) && isReached(instance.hot, b)) ||
-  (isReached(instance.ret, a) && isReached(instance.ret, b));
-
-/** Largest steady current that an element draws from what feeds it, A. `null`: not known. */
-export function drawOf(element: Element, facts: UnitFacts, supplyLimit: number | null): number | null {
-  switch (element.kind) {
-    case "load":
-    case "fan":
-    case "indicator":
-      return element.amps;
-    case "outlet":
-      return element.maxAmps;
-    case "isolated-supply":
-    case "charger":
-    case "converter":
-      return element.inputAmps;
-    case "transformer":
-      return element.voltAmperes === null ? null : element.voltAmperes / facts.supplyVolts;
-    case "battery":
-      return supplyLimit;
-    default:
-      return 0;
-  }
-}
-
-/** Current of everything that is fed through a link, A: what is known of it, and whether something is not known. */
-function loadThrough(
-  circuit: Circuit,
-  feed: Feed,
-  index: number,
-  facts: UnitFacts,
-): { amps: number; complete: boolean } {
-  const { instance, conducts } = feed;
-  const link = circuit.links[index];
-  if (link === undefined) return { amps: 0, complete: false };
-  const onHot = isReached(instance.hot, link.a);
-  const reach = onHot ? instance.hot : instance.ret;
-  const far = reach[link.a] === index ? link.a : link.b;
-  const sense = instance.supply.domain === "dc" ? (onHot ? "with" : "against") : "either";
-  const beyond = reachWithout(circuit, conducts, far, index, sense);
-  const opposite = onHot ? instance.ret : instance.hot;
-  let amps = 0;
-  let complete = true;
-  const counted = new Set<string>();
-  for (const { kind, element, a, b } of circuit.links) {
-    if (
-      kind !== "consumer" ||
-      element === null ||
-      element === instance.supply.element ||
-      counted.has(element)
-    )
-      continue;
-    const fed = (beyond.has(a) && isReached(opposite, b)) || (beyond.has(b) && isReached(opposite, a));
-    const found = circuit.view.elements.get(element);
-    if (!fed || found === undefined) continue;
-    counted.add(element);
-    const draw = drawOf(found, facts, feed.limitAmps);
-    if (draw === null || !Number.isFinite(draw)) complete = false;
-    else amps += draw;
-  }
-  const limit = feed.limitAmps;
-  const isRoot = instance.parent === null;
-  if (!isRoot && limit !== null && Number.isFinite(limit) && amps > limit)
-    return { amps: limit, complete: true };
-  return { amps, complete };
-}
-
-function reachWithout(
-  circuit: Circuit,
-  conducts: Uint8Array,
-  start: number,
-  skip: number,
-  sense: "with" | "against" | "either",
-): Set<number> {
-  const seen = new Set([start]);
-  const queue = [start];
-  for (let head = 0; head < queue.length; head++) {
-    const node = queue[head];
-    if (node === undefined) break;
-    for (const index of circuit.linksAt[node] ?? []) {
-      const link = circuit.links[index];
-      if (link === undefined || index === skip || !passes(link, conducts[index] ?? 0, node, sense)) continue;
-      const next = link.a === node ? link.b : link.a;
-      if (seen.has(next)) continue;
-      seen.add(next);
-      queue.push(next);
-    }
-  }
-  return seen;
 }
 
 function reportOn(
@@ -184,96 +92,10 @@ function reportOn(
   };
 }
 
-/** Direct voltage and current below which a switch without a rating for it is let pass. From memory. */
-const harmlessDirect = { volts: 15, amps: 1 };
-
-/** For each switch and each supply that a pole carries: voltage and load against its rating for that kind of current. */
-export function contactReports(circuit: Circuit, feeds: Feed[], facts: UnitFacts): ContactReport[] {
-  const reports = new Map<string, ContactReport>();
-  for (const element of circuit.switches) {
-    for (const feed of feeds) {
-      circuit.links.forEach((link, index) => {
-        if (link.element !== element.id || !carries(feed, link)) return;
-        const load = loadThrough(circuit, feed, index, facts);
-        const report = contactReport(circuit, feed, element, load, facts);
-        const key = `${element.id} ${report.source}`;
-        const known = reports.get(key);
-        if (known === undefined || (known.loadAmps ?? Infinity) < (report.loadAmps ?? Infinity))
-          reports.set(key, report);
-      });
-    }
-  }
-  return [...reports.values()];
-}
-
-function contactReport(
-  circuit: Circuit,
-  feed: Feed,
-  element: ElementOf<"switch">,
-  load: { amps: number; complete: boolean },
-  facts: UnitFacts,
-): ContactReport {
-  const { view } = circuit;
-  const source = feed.instance.supply.element;
-  const direct = feed.instance.supply.domain === "dc";
-  const volts = suppliedVolts(view, feed.instance.supply, facts);
-  const rated = direct
-    ? { volts: element.dcVolts, amps: element.dcAmps, kind: "direct" }
-    : { volts: element.acVolts, amps: element.acAmps, kind: "alternating" };
-  const name = view.name(element.id);
-  const base = { switch: element.id, source, loadAmps: load.complete ? load.amps : null };
-  const answer = (verdict: Verdict3, text: string): ContactReport => ({
-    ...base,
-    verdict: feed.doubtful && verdict === "fail" ? "unknown" : verdict,
-    text,
-  });
-  const carried = `${load.complete ? "" : "at least "}${figure(load.amps)} A`;
-  if (
-    volts !== null &&
-    direct &&
-    load.complete &&
-    volts <= harmlessDirect.volts &&
-    load.amps <= harmlessDirect.amps
-  ) {
-    return answer(
-      "pass",
-      `${name} breaks ${figure(volts)} V direct and ${carried} from ${view.name(source)}, little enough for any switch.`,
-    );
-  }
-  if (rated.volts === 0 || rated.amps === 0) {
-    return answer(
-      "fail",
-      `${name} has no rating for ${rated.kind} current, and it breaks ${carried} from ${view.name(source)}.`,
-    );
-  }
-  if (rated.volts !== null && volts !== null && rated.volts < volts) {
-    return answer(
-      "fail",
-      `${name} is rated ${figure(rated.volts)} V ${rated.kind}, but ${view.name(source)} has ${figure(volts)} V.`,
-    );
-  }
-  if (rated.amps !== null && rated.amps < load.amps) {
-    return answer(
-      "fail",
-      `${name} is rated ${figure(rated.amps)} A ${rated.kind}, but it carries ${carried} from ${view.name(source)}.`,
-    );
-  }
-  if (rated.volts === null || rated.amps === null || volts === null || !load.complete) {
-    return answer(
-      "unknown",
-      `${name}: its rating or what it carries from ${view.name(source)} is not wholly known.`,
-    );
-  }
-  return answer(
-    "pass",
-    `${name}, rated ${figure(rated.volts)} V and ${figure(rated.amps)} A ${rated.kind}, carries ${carried} from ${view.name(source)}.`,
-  );
-}
-
 function judgeLoad(
   name: string,
   rating: number | null,
-  load: { amps: number; complete: boolean },
+  load: CarriedLoad,
   share: number,
   texts: string[],
 ): Verdict3 {

@@ -5,7 +5,8 @@ import type { Conductor } from "./energy-map";
 import { feedsOf, limitsOf, sideOf, withLimit, type Feed, type Limits, type Side } from "./feeds";
 import { figure } from "./figure";
 import type { Flow } from "./flow";
-import { contactReports, deviceReports } from "./fusing-devices";
+import { contactReports } from "./contact-reports";
+import { deviceReports } from "./fusing-devices";
 import type { UnitFacts } from "./unit-facts";
 
 /** For each conductor and supply what protects it, and for each device whether it suits load, fault current and voltage. */
