@@ -41,7 +41,7 @@ const desk: Job = {
     element: "F2",
   },
   rework: { element: "F2", field: "Rated current", value: "8" },
-  changed: /10\s*→\s*8\b/,
+  changed: /10( A)?\s*→\s*8\b/,
   signature: "drawn",
 };
 

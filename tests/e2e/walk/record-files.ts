@@ -22,7 +22,7 @@ export async function downloadRecord(page: Page): Promise<RecordFiles> {
   const folder = mkdtempSync(join(tmpdir(), "record-"));
   onTestFinished(() => rmSync(folder, { recursive: true, force: true }));
   const run = (command: string, ...options: string[]) =>
-    execFileSync(command, options, { encoding: "utf8", maxBuffer: 64 * 1024 * 1024 });
+    execFileSync(command, options, { encoding: "utf8", maxBuffer: 64 * 1024 * 1024, stdio: "pipe" });
 
   const pdf = join(folder, "record.pdf");
   const json = join(folder, "record.json");
