@@ -76,3 +76,17 @@ test("a check that was not there before is affected", () => {
     because: expect.arrayContaining(["This check is new."]),
   });
 });
+
+test("a part that changed touches its checks even where no answer and no limit differs", () => {
+  const keys = affected(demoMaps.sound, withData(demoMaps.sound, "DI1", { ratedAmps: 20 }));
+  expect(keys).toContain("lamp-truth:H1");
+  expect(keys).toContain("conductors:CH1");
+  expect(keys).not.toContain("fuse:F1");
+  const because = affectedChecks(
+    demoMaps.sound,
+    withData(demoMaps.sound, "DI1", { ratedAmps: 20 }),
+    rules,
+    facts,
+  ).find(({ key }) => key === "lamp-truth:H1")?.because;
+  expect(because).toEqual(["It concerns what was changed or what is joined to it: DI1."]);
+});

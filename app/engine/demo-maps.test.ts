@@ -301,3 +301,34 @@ test("insulation that its maker calls basic fails between mains and what people 
     "insulation-barrier:MP1",
   ]);
 });
+
+test.each([
+  // What is forgotten of the sound back-up box, and the checks that can then no longer pass.
+  ["F1", { ratingAmps: null }, ["fuse:F1", "conductors:X1"]],
+  ["F2", { ratingAmps: null }, ["fuse:F2", "conductors:BT1"]],
+  ["X1", { upstreamAmps: null }, ["conductors:X1"]],
+  ["X1", { prospectiveAmps: null }, ["fuse:F1"]],
+  ["CH1", { inputAmps: null }, ["fuse:F1", "switch-body:S1", "all-pole-switch:X1"]],
+  ["CH1", { outputAmps: null }, ["conductors:CH1", "battery-state:BT1"]],
+  ["CH1", { leakageMilliamps: null }, ["earth-current:X1"]],
+  ["BT1", { internalMilliohms: null }, ["fuse:F2"]],
+  ["BT1", { cellsInSeries: null }, ["fuse:F2", "battery-state:BT1", "switch-body:S2"]],
+  ["XO1", { maxAmps: null }, ["fuse:F2", "switch-body:S2"]],
+  ["S1", { acVolts: null }, ["switch-body:S1", "all-pole-switch:X1"]],
+  ["DI1", { blocksReverse: "unknown" }, ["lamp-truth:H1"]],
+  ["H1", { meaning: "unknown" }, ["lamp-truth:H1"]],
+  ["MP1", { creepageMm: null }, ["insulation-clearance:MP1"]],
+] as const)("not knowing %s %j leaves open %j", (id, data, expected) => {
+  const checks = sheet(withData(demoMaps.sound, id, data));
+  for (const key of expected) {
+    expect([key, checks.get(key)?.computed?.verdict]).toEqual([key, "unknown"]);
+  }
+});
+
+test("not knowing a cross-section leaves every source that feeds it open", () => {
+  const map: EnergyMap = {
+    ...demoMaps.sound,
+    conductors: demoMaps.sound.conductors.map((each) => (each.id === "W12" ? { ...each, area: null } : each)),
+  };
+  expect(open(map)).toEqual(["conductors:CH1", "conductors:BT1"]);
+});

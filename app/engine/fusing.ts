@@ -95,14 +95,17 @@ function judge(
   if (into.amps !== null && into.amps <= ampacity.amps) {
     return answer("pass", `${may}; ${names}.`);
   }
+  const unknownLimit = () =>
+    answer("unknown", `${may}; what limits the current from ${supplied} is not known.`);
+  // The least that it could be: a supply whose own limit is not known may give very little.
+  const leastInto = feed.limitAmps === null ? 0 : (withLimit(feed, low.into.amps).amps ?? 0);
   const onward = high.onward;
   if (onward.amps <= ampacity.amps) {
-    return overloadOnly(circuit, feed, conductor, side, onward, may, answer);
+    const found = overloadOnly(circuit, feed, conductor, side, onward, may, answer);
+    return found.verdict === "fail" && leastInto <= ampacity.amps ? unknownLimit() : found;
   }
-  const lowest = Math.min(withLimit(feed, low.into.amps).amps ?? 0, low.onward.amps);
-  if (lowest <= ampacity.amps) {
-    return answer("unknown", `${may}; what limits the current from ${supplied} is not known.`);
-  }
+  const lowest = Math.min(leastInto, low.onward.amps);
+  if (lowest <= ampacity.amps) return unknownLimit();
   return into.amps === null || !Number.isFinite(into.amps)
     ? answer("fail", `No fuse or breaker limits what ${supplied} can drive through ${conductor.id}. ${may}.`)
     : answer("fail", `${may}, but ${names}.`);
