@@ -332,3 +332,26 @@ test("not knowing a cross-section leaves every source that feeds it open", () =>
   };
   expect(open(map)).toEqual(["conductors:CH1", "conductors:BT1"]);
 });
+
+test("a cord behind more than 16 A is not shown to be protected in a short circuit", () => {
+  expect(open(withData(demoMaps.sound, "X1", { upstreamAmps: 20 }))).toEqual(["conductors:X1"]);
+});
+
+test.each(["switch", "breaker", "thermal-cutout"] as const)(
+  "a %s in the earth lead is never let pass",
+  (kind) => {
+    const ends = kind === "thermal-cutout" ? ["1", "2"] : ["1a", "1b"];
+    const map = extended(
+      without(demoMaps.sound, "WE2"),
+      [part(kind, "Z1", "in the earth lead")],
+      [
+        wire("WE2", "PE1.PE", `Z1.${ends[0]}`, "earth", 1.5, 0.1),
+        wire("WE4", `Z1.${ends[1]}`, "MP1.surface", "earth", 1.5, 0.1),
+      ],
+    );
+    expect(failing(map)).toContain("earth-path");
+    expect(texts(map, "danger").join("\n")).toContain(
+      "Z1 (in the earth lead) sits in the protective conductor",
+    );
+  },
+);
