@@ -2,12 +2,12 @@
  * The energy map as rows to edit, with its drawing and the engine's answers beside them, computed in the browser while
  * the builder types. It saves itself; see use-map-draft.
  */
-import { Download, Plus, Redo2, Undo2 } from "lucide-react";
+import { Download, Redo2, Undo2 } from "lucide-react";
 import { useCallback, useDeferredValue, useEffect, useMemo, useState } from "react";
 import { useBlocker } from "react-router";
 import { analyse } from "~/engine/analyse";
 import type { Statement } from "~/engine/analysis";
-import { elementKinds, elementKindList } from "~/engine/elements";
+import { elementKinds } from "~/engine/elements";
 import type { ElementKind } from "~/engine/energy-map";
 import type { Problem } from "~/engine/problem";
 import type { RuleSet } from "~/engine/rule-set";
@@ -15,7 +15,10 @@ import type { UnitFacts } from "~/engine/unit-facts";
 import { AddConductor, ConductorHeader, ConductorRow, focusSoon } from "./map-editor-conductor";
 import { ElementRow } from "./map-editor-element";
 import { isTaken, nextElementId, nextId } from "./map-editor-state";
+import { AddElement } from "./map-add-element";
 import { MapDiagram } from "./map-diagram";
+import { KeptNotice } from "./map-kept-notice";
+import { ProblemList } from "./map-problem-list";
 import { MapConflict, MapSaveLine } from "./map-save-line";
 import { ImportButton, MapStart } from "./map-start";
 import { StatementList } from "./statement-list";
@@ -23,7 +26,6 @@ import { useMapDraft, type MapDraftOptions } from "./use-map-draft";
 import { Button } from "./ui/button";
 import { IconButton } from "./ui/icon-button";
 import { Sheet } from "./ui/sheet";
-import { Time } from "./ui/time";
 
 export interface MapEditorProps extends MapDraftOptions {
   facts: UnitFacts;
@@ -33,16 +35,6 @@ export interface MapEditorProps extends MapDraftOptions {
   /** Leads on once everything is saved. */
   onContinue: () => void;
 }
-
-const groups: { group: string; title: string }[] = [
-  { group: "source", title: "Sources" },
-  { group: "change", title: "Change of voltage" },
-  { group: "protect", title: "Protection" },
-  { group: "switch", title: "Switches" },
-  { group: "use", title: "Use" },
-  { group: "suppress", title: "Suppression and discharge" },
-  { group: "earth", title: "Earth and touchable parts" },
-];
 
 const noProblems: readonly Problem[] = [];
 
@@ -273,112 +265,6 @@ export function MapEditor({ facts, ruleSet, exportName, onContinue, ...draftOpti
         </Sheet>
       </div>
     </div>
-  );
-}
-
-function KeptNotice({ draft, onTaken }: { draft: ReturnType<typeof useMapDraft>; onTaken: () => void }) {
-  if (!draft.kept) return null;
-  return (
-    <div role="alert" className="space-y-3 border-l-4 border-undecided bg-undecided-wash px-4 py-3">
-      <p>
-        <span className="font-semibold">This device holds changes that did not reach the server</span>, typed{" "}
-        <Time at={draft.kept.at} />.
-      </p>
-      <div className="flex flex-wrap gap-2">
-        <Button
-          type="button"
-          variant="primary"
-          onClick={() => {
-            draft.decideKept("take");
-            onTaken();
-          }}
-        >
-          Bring them back
-        </Button>
-        <Button type="button" onClick={() => draft.decideKept("drop")}>
-          Leave them out
-        </Button>
-      </div>
-    </div>
-  );
-}
-
-function AddElement({ onAdd }: { onAdd: (kind: ElementKind) => void }) {
-  const [kind, setKind] = useState<ElementKind | "">("");
-  return (
-    <form
-      className="flex flex-wrap items-end gap-2 px-3 py-3"
-      onSubmit={(event) => {
-        event.preventDefault();
-        if (kind !== "") onAdd(kind);
-      }}
-    >
-      <div className="min-w-44 flex-1">
-        <label htmlFor="new-element-kind" className="block text-xs font-medium text-ink-soft">
-          New element
-        </label>
-        <select
-          id="new-element-kind"
-          value={kind}
-          onChange={(event) =>
-            setKind(elementKindList.find((each) => each === event.currentTarget.value) ?? "")
-          }
-          className="control-box min-h-9 px-2 py-1 text-sm pointer-coarse:min-h-11"
-        >
-          <option value="">Choose a kind</option>
-          {groups.map(({ group, title }) => (
-            <optgroup key={group} label={title}>
-              {elementKindList
-                .filter((each) => elementKinds[each].group === group)
-                .map((each) => (
-                  <option key={each} value={each}>
-                    {elementKinds[each].label}
-                  </option>
-                ))}
-            </optgroup>
-          ))}
-        </select>
-      </div>
-      <Button type="submit" icon={Plus} disabled={kind === ""}>
-        Add element
-      </Button>
-    </form>
-  );
-}
-
-function ProblemList({
-  problems,
-  onJump,
-}: {
-  problems: readonly Problem[];
-  onJump: (id: string, field: string | null) => void;
-}) {
-  const sorted = [...problems].sort((a, b) => Number(b.blocking) - Number(a.blocking));
-  if (sorted.length === 0) return <p className="text-sm text-ink-soft">Every datum is filled in.</p>;
-  return (
-    <ul className="max-h-72 space-y-1 overflow-y-auto text-sm" tabIndex={0} aria-label="What is missing">
-      {sorted.map((problem) => {
-        const { subject } = problem;
-        return (
-          <li key={`${subject?.id ?? ""} ${problem.field ?? ""} ${problem.text}`} className="flex gap-2">
-            <span className={`shrink-0 ${problem.blocking ? "font-semibold text-defect" : "text-ink-soft"}`}>
-              {problem.blocking ? "Needed" : "Better"}
-            </span>
-            {subject ? (
-              <button
-                type="button"
-                className="text-link min-w-0 text-left"
-                onClick={() => onJump(subject.id, problem.field)}
-              >
-                {problem.text}
-              </button>
-            ) : (
-              <span>{problem.text}</span>
-            )}
-          </li>
-        );
-      })}
-    </ul>
   );
 }
 
