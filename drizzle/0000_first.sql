@@ -249,7 +249,10 @@ CREATE TABLE `bench_turns` (
 	`inspector_id` int unsigned NOT NULL,
 	`taken_at` datetime(3) NOT NULL,
 	`ended_at` datetime(3),
-	CONSTRAINT `bench_turns_id` PRIMARY KEY(`id`)
+	`reclaimed_by_id` int unsigned,
+	`reclaim_reason` varchar(1000),
+	CONSTRAINT `bench_turns_id` PRIMARY KEY(`id`),
+	CONSTRAINT `bench_turns_reclaim` CHECK((reclaimed_by_id is null) = (reclaim_reason is null))
 );
 --> statement-breakpoint
 CREATE TABLE `files` (
@@ -307,6 +310,14 @@ CREATE TABLE `findings` (
 	CONSTRAINT `findings_closing` CHECK((closed_at is null) = (closed_by_id is null))
 );
 --> statement-breakpoint
+CREATE TABLE `former_builders` (
+	`unit_id` int unsigned NOT NULL,
+	`person_id` int unsigned NOT NULL,
+	`handed_on_by_id` int unsigned NOT NULL,
+	`handed_on_at` datetime(3) NOT NULL,
+	CONSTRAINT `former_builders_unit_id_person_id_pk` PRIMARY KEY(`unit_id`,`person_id`)
+);
+--> statement-breakpoint
 CREATE TABLE `revisions` (
 	`id` int unsigned AUTO_INCREMENT NOT NULL,
 	`unit_id` int unsigned NOT NULL,
@@ -318,6 +329,8 @@ CREATE TABLE `revisions` (
 	`rule_set_version` varchar(20) NOT NULL,
 	`created_at` datetime(3) NOT NULL,
 	`submitted_at` datetime(3),
+	`sent_back_reason` text,
+	`sent_back_by_id` int unsigned,
 	CONSTRAINT `revisions_id` PRIMARY KEY(`id`),
 	CONSTRAINT `revisions_number` UNIQUE(`unit_id`,`number`)
 );
@@ -337,6 +350,7 @@ CREATE TABLE `units` (
 	`handheld` boolean,
 	`altitude_m` double,
 	`builder_id` int unsigned NOT NULL,
+	`predecessor_id` int unsigned,
 	`state` enum('draft','submitted','on_bench','awaiting_signature','sent_back','signed','refused','withdrawn','superseded') NOT NULL,
 	`revision` int unsigned NOT NULL,
 	`inspector_id` int unsigned,
@@ -382,6 +396,7 @@ ALTER TABLE `trail_heads` ADD CONSTRAINT `trail_heads_workshop_id_workshops_id_f
 ALTER TABLE `bench_turns` ADD CONSTRAINT `bench_turns_unit_id_units_id_fk` FOREIGN KEY (`unit_id`) REFERENCES `units`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE `bench_turns` ADD CONSTRAINT `bench_turns_revision_id_revisions_id_fk` FOREIGN KEY (`revision_id`) REFERENCES `revisions`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE `bench_turns` ADD CONSTRAINT `bench_turns_inspector_id_people_id_fk` FOREIGN KEY (`inspector_id`) REFERENCES `people`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
+ALTER TABLE `bench_turns` ADD CONSTRAINT `bench_turns_reclaimed_by_id_people_id_fk` FOREIGN KEY (`reclaimed_by_id`) REFERENCES `people`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE `files` ADD CONSTRAINT `files_workshop_id_workshops_id_fk` FOREIGN KEY (`workshop_id`) REFERENCES `workshops`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE `files` ADD CONSTRAINT `files_unit_id_units_id_fk` FOREIGN KEY (`unit_id`) REFERENCES `units`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE `files` ADD CONSTRAINT `files_revision_id_revisions_id_fk` FOREIGN KEY (`revision_id`) REFERENCES `revisions`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
@@ -394,10 +409,15 @@ ALTER TABLE `findings` ADD CONSTRAINT `findings_unit_id_units_id_fk` FOREIGN KEY
 ALTER TABLE `findings` ADD CONSTRAINT `findings_revision_id_revisions_id_fk` FOREIGN KEY (`revision_id`) REFERENCES `revisions`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE `findings` ADD CONSTRAINT `findings_raised_by_id_people_id_fk` FOREIGN KEY (`raised_by_id`) REFERENCES `people`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE `findings` ADD CONSTRAINT `findings_closed_by_id_people_id_fk` FOREIGN KEY (`closed_by_id`) REFERENCES `people`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
+ALTER TABLE `former_builders` ADD CONSTRAINT `former_builders_unit_id_units_id_fk` FOREIGN KEY (`unit_id`) REFERENCES `units`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
+ALTER TABLE `former_builders` ADD CONSTRAINT `former_builders_person_id_people_id_fk` FOREIGN KEY (`person_id`) REFERENCES `people`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
+ALTER TABLE `former_builders` ADD CONSTRAINT `former_builders_handed_on_by_id_people_id_fk` FOREIGN KEY (`handed_on_by_id`) REFERENCES `people`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE `revisions` ADD CONSTRAINT `revisions_unit_id_units_id_fk` FOREIGN KEY (`unit_id`) REFERENCES `units`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
+ALTER TABLE `revisions` ADD CONSTRAINT `revisions_sent_back_by_id_people_id_fk` FOREIGN KEY (`sent_back_by_id`) REFERENCES `people`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE `units` ADD CONSTRAINT `units_workshop_id_workshops_id_fk` FOREIGN KEY (`workshop_id`) REFERENCES `workshops`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE `units` ADD CONSTRAINT `units_builder_id_people_id_fk` FOREIGN KEY (`builder_id`) REFERENCES `people`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE `units` ADD CONSTRAINT `units_inspector_id_people_id_fk` FOREIGN KEY (`inspector_id`) REFERENCES `people`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
+ALTER TABLE `units` ADD CONSTRAINT `units_predecessor` FOREIGN KEY (`predecessor_id`) REFERENCES `units`(`id`) ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 CREATE INDEX `instrument_ranges_by_instrument` ON `instrument_ranges` (`instrument_id`);--> statement-breakpoint
 CREATE INDEX `observations_by_check` ON `observations` (`revision_id`,`check_key`,`id`);--> statement-breakpoint
 CREATE INDEX `observations_by_unit` ON `observations` (`unit_id`);--> statement-breakpoint

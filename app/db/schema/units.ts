@@ -3,11 +3,13 @@ import {
   boolean,
   check,
   double,
+  foreignKey,
   index,
   int,
   json,
   mysqlEnum,
   mysqlTable,
+  primaryKey,
   text,
   unique,
   varchar,
@@ -39,6 +41,8 @@ export const units = mysqlTable(
     builderId: ref()
       .notNull()
       .references(() => people.id),
+    /** The unit that this one is a new version of. */
+    predecessorId: ref(),
     state: mysqlEnum(unitStates).notNull(),
     /** Number of the revision being drafted or examined. */
     revision: int({ unsigned: true }).notNull(),
@@ -55,6 +59,7 @@ export const units = mysqlTable(
     unique("units_number").on(table.workshopId, table.number),
     index("units_by_state").on(table.workshopId, table.state, table.changedAt),
     index("units_by_builder").on(table.workshopId, table.builderId, table.changedAt),
+    foreignKey({ name: "units_predecessor", columns: [table.predecessorId], foreignColumns: [table.id] }),
     check("units_supply", sql`supply_volts > 0 and supply_hertz >= 0`),
   ],
 );
@@ -78,6 +83,9 @@ export const revisions = mysqlTable(
     ruleSetVersion: varchar({ length: 20 }).notNull(),
     createdAt: moment().notNull(),
     submittedAt: moment(),
+    /** Why the revision before this one was sent back, and by whom; null for a unit's first. */
+    sentBackReason: text(),
+    sentBackById: ref().references(() => people.id),
   },
   (table) => [unique("revisions_number").on(table.unitId, table.number)],
 );
@@ -98,8 +106,33 @@ export const benchTurns = mysqlTable(
       .references(() => people.id),
     takenAt: moment().notNull(),
     endedAt: moment(),
+    /** Who ended it for an inspector who was absent, and why; null when the inspector ended it. */
+    reclaimedById: ref().references(() => people.id),
+    reclaimReason: varchar({ length: 1000 }),
   },
-  (table) => [index("bench_turns_by_unit").on(table.unitId, table.takenAt)],
+  (table) => [
+    index("bench_turns_by_unit").on(table.unitId, table.takenAt),
+    check("bench_turns_reclaim", sql`(reclaimed_by_id is null) = (reclaim_reason is null)`),
+  ],
+);
+
+/** Everybody who built on a unit before it was handed to another builder: the four-eyes rule reads this too. */
+export const formerBuilders = mysqlTable(
+  "former_builders",
+  {
+    unitId: ref()
+      .notNull()
+      .references(() => units.id),
+    personId: ref()
+      .notNull()
+      .references(() => people.id),
+    /** The steward who handed it on. */
+    handedOnById: ref()
+      .notNull()
+      .references(() => people.id),
+    handedOnAt: moment().notNull(),
+  },
+  (table) => [primaryKey({ columns: [table.unitId, table.personId] })],
 );
 
 export const fileSubjects = ["unit", "check", "finding", "answer"] as const;
