@@ -355,3 +355,76 @@ test.each(["switch", "breaker", "thermal-cutout"] as const)(
     );
   },
 );
+
+test("one switch in each pole is not both poles together", () => {
+  const map = extended(
+    without(withData(demoMaps.soundLamp, "S1", { poles: 1 }), "W3", "W5"),
+    [
+      part("switch", "S2", "Neutral switch", {
+        promise: "isolation",
+        gapMm: 3,
+        acVolts: 250,
+        acAmps: 6,
+        dcVolts: 0,
+        dcAmps: 0,
+      }),
+    ],
+    [wire("W3", "X1.N", "S2.1a", "mains", 0.75, 1.9), wire("W5", "S2.1b", "PS1.N", "mains", 0.75, 0.1)],
+  );
+  expect(look(map).isolation.sources[0]).toMatchObject({
+    poles: [
+      { pole: "L", brokenBy: ["S1"], partedWhenAllOff: true },
+      { pole: "N", brokenBy: ["S2"], partedWhenAllOff: true },
+    ],
+    allPoleSwitches: [],
+  });
+  expect(failing(map)).toEqual(["all-pole-switch:X1"]);
+  expect(texts(map, "danger").join("\n")).toContain("broken by different switches");
+});
+
+test("two two-pole switches in series: either of them will do", () => {
+  const map = extended(
+    without(demoMaps.soundLamp, "W4", "W5"),
+    [
+      part("switch", "S2", "Second switch", {
+        poles: 2,
+        promise: "isolation",
+        gapMm: 1,
+        acVolts: 250,
+        acAmps: 6,
+        dcVolts: 0,
+        dcAmps: 0,
+      }),
+    ],
+    [
+      wire("W4", "S1.1b", "S2.1a", "mains", 0.75, 0.1),
+      wire("W5", "S1.2b", "S2.2a", "mains", 0.75, 0.1),
+      wire("W8", "S2.1b", "PS1.L", "mains", 0.75, 0.1),
+      wire("W9", "S2.2b", "PS1.N", "mains", 0.75, 0.1),
+    ],
+  );
+  expect(look(map).isolation.sources[0]?.allPoleSwitches).toEqual(["S1", "S2"]);
+  expect(failing(map)).toEqual([]);
+});
+
+test("a backfeed relay that drops out with the mains keeps the pins dead; nobody knowing its coil leaves that open", () => {
+  const map = extended(
+    without(withData(demoMaps.inverterStation, "K1", { throw: "single" }), "W6", "W7", "W8", "W9"),
+    [],
+    [
+      wire("W6", "K1.1b", "XO1.L", "mains", 0.75, 0.2),
+      wire("W7", "K1.2b", "XO1.N", "mains", 0.75, 0.2),
+      wire("W8", "U1.L", "XO1.L", "mains", 0.75, 0.2),
+      wire("W9", "U1.N", "XO1.N", "mains", 0.75, 0.2),
+    ],
+  );
+  const told = (each: EnergyMap) =>
+    look(each)
+      .reverse.paths.filter(({ from, to }) => from === "BT1" && to === "X1")
+      .map(({ failed, certainty }) => [failed, certainty]);
+  expect(told(map)).toEqual([["K1", "certain"]]);
+  const verdict = (coilFedBy: string | null) =>
+    sheet(withData(map, "K1", { coilFedBy })).get("backfeed:BT1:X1")?.computed?.verdict;
+  expect(told(withData(map, "K1", { coilFedBy: null }))).toContainEqual([null, "possible"]);
+  expect([verdict("X1"), verdict(null), verdict("BT1")]).toEqual(["fail", "unknown", "fail"]);
+});
