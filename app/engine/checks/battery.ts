@@ -72,7 +72,10 @@ export const battery: CheckDefinition = {
                 `Disconnect ${view.name(element.id)} from the charger's output, without shorting it.`,
                 "Measure the output open: without load the drop of a blocking diode is gone, so this is the highest that the pack would float to.",
               ],
-              cautions: [caution.battery, caution.live],
+              cautions: [
+                caution.battery,
+                ...(view.ofKind("mains-inlet").length > 0 ? [caution.live] : [caution.stillLive]),
+              ],
               computed: null,
               asks: {
                 kind: "reading",

@@ -1,5 +1,14 @@
 import type { BenchCheck, CheckDefinition } from "../bench-check";
-import { answer, because, caution, examination, keyOf, worstVerdict } from "../check-parts";
+import {
+  answer,
+  because,
+  beforeTouching,
+  caution,
+  examination,
+  keyOf,
+  makeDead,
+  worstVerdict,
+} from "../check-parts";
 import { joinText } from "../joins";
 
 /** Nothing is joined that must be apart, in any position of the switches: mains and the rest, poles, parts that are touched. */
@@ -40,14 +49,17 @@ export const circuitsApart: CheckDefinition = {
         ]),
       ],
       method: [
-        "With the plug pulled and the battery's fuse out, test for continuity between mains pins and each output, and between the poles of each source.",
+        makeDead(view),
+        "Test for continuity from each mains pin to each pole of each output and DC input, and to each touched part that is not earthed.",
+        "Between line and neutral a winding or a heater conducts: that is no fault. The map answers for shorts between the poles of a source.",
+        ...(view.ofKind("battery").length > 0
+          ? [
+              "Never put the ohmmeter across a battery. Test the leads that were taken off it: they don't conduct to a mains pin.",
+            ]
+          : []),
         "Repeat in every position of every switch.",
       ],
-      cautions: [
-        caution.unplug,
-        caution.charge,
-        ...(view.ofKind("battery").length > 0 ? [caution.battery] : []),
-      ],
+      cautions: [...beforeTouching(view), caution.charge],
       computed:
         joins.length > 0
           ? answer(worstVerdict(verdicts), reasons)

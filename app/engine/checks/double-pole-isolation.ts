@@ -1,6 +1,15 @@
 import type { IsolationResult, Verdict3 } from "../analysis";
 import type { BenchCheck, CheckDefinition } from "../bench-check";
-import { answer, because, caution, examination, keyOf, practice, worstVerdict } from "../check-parts";
+import {
+  answer,
+  because,
+  beforeTouching,
+  caution,
+  examination,
+  keyOf,
+  practice,
+  worstVerdict,
+} from "../check-parts";
 import { figure } from "../figure";
 import { judgeMainsIsolation, mixedBody, type MainsIsolation } from "../mains-isolation";
 import type { MapView } from "../map-view";
@@ -46,7 +55,7 @@ export const doublePoleIsolation: CheckDefinition = {
           `Read the marks on ${view.name(id)}: voltage and current, alternating and direct. Compare them with the map.`,
           "Look at each pole's wires: which circuit does each belong to?",
         ],
-        cautions: [caution.unplug],
+        cautions: beforeTouching(view),
         computed: answer(worstVerdict(verdicts), reasons),
         asks: examination(
           "Do its marks and its wiring agree with the map?",
@@ -93,7 +102,7 @@ function switchCheck(
       "Trace line and neutral from the inlet to the switch: each goes to its own pole of the same body.",
       "With the plug pulled, work the switch: both poles open and close together.",
     ],
-    cautions: [caution.unplug, caution.charge],
+    cautions: [...beforeTouching(view), caution.charge],
     computed: answer(judged.verdict, judged.reasons),
     asks: examination(
       "Does one switch break both poles together?",
@@ -118,7 +127,7 @@ function poleCheck(view: MapView, ruleSet: RuleSet, inlet: string, pole: string)
       "Pull the plug and put every switch off.",
       `Measure from the ${word} pin of the plug to the ${word} terminal of what comes behind the switch, with ${figure(ruleSet.values.insulationTestVolts.value)} V.`,
     ],
-    cautions: [caution.unplug, caution.testVoltage],
+    cautions: [...beforeTouching(view), caution.testVoltage],
     computed: null,
     asks: {
       kind: "reading",
@@ -170,7 +179,7 @@ function inverterChecks(view: MapView, isolation: IsolationResult): BenchCheck[]
       method: [
         "Pull the plug, put every switch off and measure between the poles of each outlet and from each pole to earth.",
       ],
-      cautions: [caution.live, caution.battery],
+      cautions: [caution.stillLive, caution.inverterLive, caution.battery],
       computed: answer(verdict, [
         verdict === "pass"
           ? because(`With every switch off ${view.name(id)} feeds no conductor at mains voltage.`, [id])

@@ -1,8 +1,9 @@
 import type { BenchCheck, CheckDefinition } from "../bench-check";
-import { answer, because, caution, examination, keyOf, practice, worstVerdict } from "../check-parts";
+import { answer, because, beforeTouching, examination, keyOf, practice, worstVerdict } from "../check-parts";
 import { chassisCitation, cordCitation } from "../conductor-data";
 import { figure } from "../figure";
 import { guaranteedBreaking, loadableShare, miniatureFuseCitation } from "../fuse-data";
+import { joinText } from "../joins";
 import type { Citation } from "../rule-set";
 
 /** Each device against load, fault current and voltage; each source against the conductors that it feeds. */
@@ -21,6 +22,11 @@ export const fusing: CheckDefinition = {
       const reasons = reports.flatMap((each) =>
         each.texts.map((text) => because(text, [device.id, each.source])),
       );
+      for (const join of analysis.isolation.joins) {
+        if (join.kind !== "bridged" || join.other !== device.id) continue;
+        verdicts.push(join.certainty === "certain" ? "fail" : "unknown");
+        reasons.push(because(joinText(view, join), [device.id], join.conductors));
+      }
       const breaking = device.kind === "fuse" ? guaranteedBreaking(device)?.citation : undefined;
       const citations: Citation[] = [
         device.kind === "fuse" ? loadableShare(device.standard).citation : practice("device rating"),
@@ -44,7 +50,7 @@ export const fusing: CheckDefinition = {
           "Its holder fits, is whole and can't be touched when live.",
           "A new one of the same kind is what the mark beside it asks for.",
         ],
-        cautions: [caution.unplug, ...(view.ofKind("battery").length > 0 ? [caution.battery] : [])],
+        cautions: beforeTouching(view),
         computed: answer(reports.length === 0 ? "unknown" : worstVerdict(verdicts), reasons),
         asks: examination(
           "Is the fitted device the one on the map?",
@@ -81,10 +87,7 @@ export const fusing: CheckDefinition = {
             ? ["Measure the lead from the battery's pole to its fuse; keep it short and covered."]
             : []),
         ],
-        cautions: [
-          caution.unplug,
-          ...(view.elements.get(source)?.kind === "battery" ? [caution.battery] : []),
-        ],
+        cautions: beforeTouching(view),
         computed: answer(
           worstVerdict(fed.map(({ verdict }) => verdict)),
           told.map(({ text, conductor, limitedBy }) => because(text, [source, ...limitedBy], [conductor])),

@@ -1,5 +1,5 @@
 import type { CheckDefinition } from "../bench-check";
-import { because, caution, keyOf } from "../check-parts";
+import { because, keyOf, whileWorking } from "../check-parts";
 import type { Citation } from "../rule-set";
 
 const touchLimit = (value: number, mark: Citation["mark"]) => ({
@@ -47,7 +47,7 @@ export const heat: CheckDefinition = {
           "Add nothing for a warmer room; note the air's temperature.",
         ],
         cautions: [
-          caution.live,
+          ...whileWorking(view),
           "Stay with the unit. Smoke, smell or a softening case ends the test: pull the plug.",
         ],
         computed: null,

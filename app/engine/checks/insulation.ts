@@ -1,5 +1,5 @@
 import type { BenchCheck, CheckDefinition } from "../bench-check";
-import { answer, because, caution, keyOf } from "../check-parts";
+import { answer, because, beforeTouching, caution, keyOf, makeDead } from "../check-parts";
 import { figure } from "../figure";
 import type { InsulationBarrier } from "../analysis";
 import { clearanceCitation, creepageCitation } from "../insulation-data";
@@ -115,7 +115,7 @@ function barrierChecks(
             : `Find where mains parts and the output of ${barrier.elements.map((each) => view.name(each)).join(", ")} come nearest, on the outside of the module and at its terminals, and measure ${way}.`,
           "Move wires to where they could get to before you measure.",
         ],
-        cautions: [caution.unplug, caution.charge],
+        cautions: [...beforeTouching(view), caution.charge],
         // The engine's answer is told once: here when no resistance test of this barrier carries it.
         computed: id === "clearance" && (bonded || inlets.length === 0) ? computed : null,
         asks: {
@@ -160,11 +160,12 @@ function resistance(view: MapView, ruleSet: RuleSet, parts: ResistanceParts): Be
     title: parts.title,
     why: [parts.why],
     method: [
+      makeDead(view),
       `Connect the tester between ${parts.from}, and ${parts.to}.`,
       `Test with ${figure(volts.value)} V direct; with ${figure(reduced.value)} V if surge suppressors are built in, and note it.`,
       "Read when the figure stands still, then let the tester discharge the unit.",
     ],
-    cautions: [caution.unplug, caution.testVoltage],
+    cautions: [...beforeTouching(view), caution.testVoltage],
     computed: parts.computed,
     asks: {
       kind: "reading",

@@ -44,7 +44,7 @@ export const leakage: CheckDefinition = {
           ),
         ],
         method: [
-          "Feed the unit through an adapter that opens out the earth conductor, or clamp all live conductors together.",
+          "Feed the unit through an adapter that brings out the earth conductor whole, and clamp that, or clamp all live conductors together. Never interrupt the earth.",
           "Every switch on, unit working. Measure, turn the plug round if it fits both ways, and take the higher.",
         ],
         cautions: [caution.live, caution.licence],

@@ -1,5 +1,5 @@
 import type { CheckDefinition } from "../bench-check";
-import { because, caution, examination, keyOf, practice } from "../check-parts";
+import { because, examination, keyOf, practice, whileWorking } from "../check-parts";
 
 /** Last of all: the unit does what it is for, and its controls do what they say. */
 export const operation: CheckDefinition = {
@@ -27,7 +27,7 @@ export const operation: CheckDefinition = {
           because("A unit that fails in use tempts people to open it.", [...sources, ...controls, ...uses]),
         ],
         method: [
-          "Only when every earlier step has been decided: plug in, switch on, run each function at its load.",
+          "Only when every earlier step has been decided: connect its sources, switch on, run each function at its load.",
           ...(controls.length > 0
             ? [`Work each of ${controls.map((id) => view.name(id)).join(", ")}: it does what its mark says.`]
             : []),
@@ -37,7 +37,7 @@ export const operation: CheckDefinition = {
               ]
             : []),
         ],
-        cautions: [caution.live, "Stop at smell, smoke, noise or heat, and pull the plug."],
+        cautions: [...whileWorking(view), "Stop at smell, smoke, noise or heat, and pull the plug."],
         computed: null,
         asks: examination(
           "Does it work as described, in every state?",

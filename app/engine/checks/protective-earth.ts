@@ -1,5 +1,5 @@
 import type { BenchCheck, CheckDefinition } from "../bench-check";
-import { answer, because, caution, examination, keyOf, worstVerdict } from "../check-parts";
+import { answer, because, beforeTouching, caution, examination, keyOf, worstVerdict } from "../check-parts";
 import { circuitOf } from "../circuit";
 import { earthLimit } from "../earth-limit";
 import { bondingOf, devicesInEarth } from "../earthing";
@@ -77,7 +77,7 @@ export const protectiveEarth: CheckDefinition = {
         "Follow the green-and-yellow conductor from the earth pin to each part. It passes no switch, no fuse, no plug-in link.",
         "Look at each joint: own fixing, toothed washer or bare metal under it, no paint, locked against turning.",
       ],
-      cautions: [caution.unplug],
+      cautions: beforeTouching(view),
       computed: answer(
         worstVerdict(all.map(({ verdict }) => verdict)),
         all.map(({ text, ids }) => because(text, ids)),
@@ -117,7 +117,7 @@ export const protectiveEarth: CheckDefinition = {
           `Measure from the plug's earth pin to bare metal of ${view.name(id)} with at least ${figure(ruleSet.values.protectiveEarthTestAmps.value)} A.`,
           "Flex the cord along its length and at both ends while you watch the reading; take the highest.",
         ],
-        cautions: [caution.unplug, caution.earthLoop],
+        cautions: [...beforeTouching(view), caution.earthLoop],
         computed: null,
         asks: {
           kind: "reading",

@@ -15,6 +15,17 @@ const ownRule: Citation = {
   note: "1 mA through 1 kΩ. An open meter of 10 MΩ would show nearly the battery's voltage through a healthy diode's leakage.",
 };
 
+/** Largest current from a pin that can be touched, stored energy working, one fault at a time, mA. */
+const touchedPinMilliamps: { value: number; citation: Citation } = {
+  value: 3.5,
+  citation: {
+    standard: "IEC 62040-1",
+    clause: "backfeed protection, through the network of IEC 60990",
+    edition: "not checked",
+    mark: "M",
+  },
+};
+
 /** For every pair of sources: one alone must not drive the other, nor its pins; and no lamp may tell an untruth by it. */
 export const reverseCurrent: CheckDefinition = {
   id: "reverse-current",
@@ -39,13 +50,17 @@ export const reverseCurrent: CheckDefinition = {
             ],
             method: methodFor(view, from.id, to.id),
             cautions: [
-              ...(to.kind === "mains-inlet" || from.kind === "mains-inlet" ? [caution.live] : []),
+              ...(to.kind === "mains-inlet" ? [caution.shrouded, caution.licence] : []),
+              ...(from.kind === "mains-inlet" ? [caution.live] : [caution.stillLive]),
               caution.battery,
             ],
             computed: answer(judged.verdict, judged.reasons),
             asks: askFor(view, ruleSet, to.id),
             photo: "none",
-            citations: [to.kind === "mains-inlet" ? ruleSet.values.backfeedAcVolts.citation : ownRule],
+            citations:
+              to.kind === "mains-inlet"
+                ? [ruleSet.values.backfeedAcVolts.citation, touchedPinMilliamps.citation]
+                : [ownRule],
             subjects: {
               elements,
               conductors: [...new Set(judged.reasons.flatMap((each) => each.conductors))],
@@ -70,7 +85,7 @@ export const reverseCurrent: CheckDefinition = {
             "Take away what the lamp tells of: pull the plug or disconnect that source. Leave every other source in place.",
             "Try each position of each switch and watch the lamp, in dim light.",
           ],
-          cautions: [caution.battery],
+          cautions: [caution.stillLive, caution.battery],
           computed: answer(judged.verdict, judged.reasons),
           asks: examination("Is the lamp dark in every position?", "Dark", "Lit or glowing"),
           photo: "optional",
@@ -92,9 +107,10 @@ function methodFor(view: MapView, from: string, to: string): string[] {
   const target = view.elements.get(to)?.kind;
   if (target === "mains-inlet") {
     return [
-      `Leave ${view.name(from)} in place and working; pull the plug of ${view.name(to)}.`,
-      "One second later measure between the plug's pins, and from each pin to its earth pin, in every position of every switch.",
-      "Where a relay keeps them apart, repeat with its contact bridged by a person who may do so.",
+      `Leave ${view.name(from)} in place and working; pull the plug of ${view.name(to)} and put it into a shrouded test socket that is joined to nothing.`,
+      "One second later measure there between the pins, and from each pin to the earth pin, in every position of every switch.",
+      `Where a relay keeps them apart: with everything dead, a person who may work on live mains bridges its contact; then the pins can carry mains voltage. Measure in the test socket again. Above the limit, what a person would get decides: at most ${figure(touchedPinMilliamps.value)} mA from pin to earth through the body network.`,
+      "Take the bridge out and have that looked at by a second person.",
     ];
   }
   if (target === "dc-inlet") {

@@ -8,6 +8,9 @@ import type { MapView } from "../map-view";
 import type { RuleSet } from "../rule-set";
 import type { UnitFacts } from "../unit-facts";
 
+const scopeClip =
+  "An earthed oscilloscope's probe clip is earth: on a pin it joins line with earth. Use a differential probe or an isolated instrument, never a common probe, and never lift the instrument's own earth.";
+
 /** What the pins of a plug just pulled still hold. */
 export const storedCharge: CheckDefinition = {
   id: "stored-charge",
@@ -34,10 +37,16 @@ export const storedCharge: CheckDefinition = {
           ),
         ],
         method: [
-          `Pull the plug and read the highest voltage between its pins after ${figure(residualSeconds.value)} s.`,
-          "Repeat ten times, since it depends on the moment of pulling; once more with every switch off. Take the highest.",
+          "Put the plug into a shrouded test socket that a switch parts from mains on both poles, and join the instrument there with a differential probe or an isolated input.",
+          `Open that switch, which is pulling the plug, and read the highest voltage between its pins after ${figure(residualSeconds.value)} s.`,
+          "Repeat ten times in each combination of the switches' positions, since it depends on the moment of pulling. Take the highest.",
         ],
-        cautions: [caution.charge, caution.live],
+        cautions: [
+          caution.charge,
+          scopeClip,
+          caution.shrouded,
+          "Until the test socket is parted from mains, all of it is live: behind a residual-current device, with one hand.",
+        ],
         computed:
           judged.length === 0
             ? null
@@ -50,8 +59,11 @@ export const storedCharge: CheckDefinition = {
           quantity: `Voltage ${figure(residualSeconds.value)} s after unplugging`,
           unit: "V",
           limit: { kind: "at-most", value: residualVolts.value, unit: "V", citation: residualVolts.citation },
-          instrument: { kind: "oscilloscope", range: "probe of at least 100 MΩ, 400 V peak" },
-          conditions: ["Peak value", "Highest of ten pulls, switches on and off"],
+          instrument: {
+            kind: "oscilloscope",
+            range: "differential probe or isolated input of at least 100 MΩ, 600 V peak",
+          },
+          conditions: ["Peak value", "Highest of ten pulls in every combination of the switches"],
         },
         photo: "none",
         citations: [residualVolts.citation, residualSeconds.citation],

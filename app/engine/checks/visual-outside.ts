@@ -1,5 +1,5 @@
 import type { BenchCheck, CheckDefinition } from "../bench-check";
-import { because, caution, examination, keyOf, practice } from "../check-parts";
+import { because, beforeTouching, caution, examination, keyOf, practice } from "../check-parts";
 
 /** Cord, plug, strain relief and enclosure, by eye and hand, before any instrument is connected. */
 export const visualOutside: CheckDefinition = {
@@ -47,7 +47,7 @@ export const visualOutside: CheckDefinition = {
           "Name the material. Wood, acrylic, printed plastic without a rating and cardboard burn and soften.",
           "Look for vents that are covered and for liquid or dust inside.",
         ],
-        cautions: [caution.unplug, caution.charge],
+        cautions: [...beforeTouching(view), caution.charge],
         computed: null,
         asks: examination(
           "Does the enclosure keep fingers, tools and burning parts where they belong?",

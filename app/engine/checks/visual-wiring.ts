@@ -1,5 +1,5 @@
 import type { CheckDefinition } from "../bench-check";
-import { because, caution, examination, keyOf, practice } from "../check-parts";
+import { because, beforeTouching, caution, examination, keyOf, practice } from "../check-parts";
 
 /** The wiring inside against the map: everything computed rests on the map being true. */
 export const visualWiring: CheckDefinition = {
@@ -22,11 +22,7 @@ export const visualWiring: CheckDefinition = {
           "Compare cross-section and insulation with the map, by print on the sheath or by gauge.",
           "Tug each joint. Screws on tinned strands, bare twisted joints, glue and tape alone don't count as fixed.",
         ],
-        cautions: [
-          caution.unplug,
-          caution.charge,
-          ...(view.ofKind("battery").length > 0 ? [caution.battery] : []),
-        ],
+        cautions: [...beforeTouching(view), caution.charge],
         computed: null,
         asks: examination(
           "Is the unit wired as the map says, and is each joint firm?",
@@ -54,7 +50,7 @@ export const visualWiring: CheckDefinition = {
                 "Look for places where mains and extra-low-voltage wires touch, share a bundle or a connector.",
                 "Imagine each mains end coming off its terminal: could it touch the other side or bare metal?",
               ],
-              cautions: [caution.unplug, caution.charge],
+              cautions: [...beforeTouching(view), caution.charge],
               computed: null,
               asks: examination(
                 "Are mains and extra-low-voltage wires apart, with a second fixing at each mains end?",
