@@ -1,5 +1,6 @@
 import { and, asc, desc, eq, gte, inArray, isNull, lte, or, type SQL } from "drizzle-orm";
 import { tables } from "~/db/client.server";
+import { type Standing, standingsOf } from "~/services/archive/standing.server";
 import { dayIn, type ServiceContext } from "~/services/context.server";
 import { type UnitState } from "~/workflow/states";
 
@@ -15,12 +16,19 @@ export interface OverviewUnit {
   revision: number;
   builder: string;
   changedAt: Date;
+  /** Null for one that isn't signed. */
+  standing: Standing | null;
 }
 
 /** Units of the workshop as the overview lists them, those changed last first. */
-function selectUnits({ db, workshop }: ServiceContext, condition: SQL | undefined, limit: number) {
-  return db
+async function selectUnits(
+  { db, workshop, now }: ServiceContext,
+  condition: SQL | undefined,
+  limit: number,
+): Promise<OverviewUnit[]> {
+  const rows = await db
     .select({
+      id: units.id,
       number: units.number,
       name: units.name,
       state: units.state,
@@ -30,9 +38,11 @@ function selectUnits({ db, workshop }: ServiceContext, condition: SQL | undefine
     })
     .from(units)
     .innerJoin(people, eq(people.id, units.builderId))
-    .where(and(eq(units.workshopId, workshop.id), condition))
+    .where(and(eq(units.workshopId, workshop.id), isNull(units.discardedAt), condition))
     .orderBy(desc(units.changedAt), desc(units.id))
     .limit(limit);
+  const standings = await standingsOf(db, rows, dayIn(workshop.timeZone, now()));
+  return rows.map(({ id, ...row }) => ({ ...row, standing: standings.get(id) ?? null }));
 }
 
 /**

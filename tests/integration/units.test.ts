@@ -414,7 +414,7 @@ describe("discarding", () => {
 });
 
 function query({ workshop }: TestWorkshop, changes: Partial<UnitQuery> = {}): UnitQuery {
-  return { workshopId: workshop.id, sort: { by: "number", direction: "asc" }, page: 1, ...changes };
+  return { workshopId: workshop.id, today: "2026-05-04", sort: { by: "number", direction: "asc" }, page: 1, ...changes };
 }
 
 describe("the list of units", () => {

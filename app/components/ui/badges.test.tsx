@@ -29,14 +29,22 @@ describe("a state", () => {
     for (const state of unitStates) {
       expect(renderToStaticMarkup(<StateBadge state={state} />), state).not.toContain("bg-pass");
     }
-    const badge = (today: string) =>
+    const badge = (today: string, departures = false) =>
       renderToStaticMarkup(
-        <StateBadge state="signed" validity={validity("signed", "2027-06-30", today).kind} />,
+        <StateBadge
+          state="signed"
+          standing={{ validity: validity("signed", "2027-06-30", today).kind, departures }}
+        />,
       );
     expect(badge("2027-01-01")).toContain("bg-pass");
     expect(badge("2027-06-15")).toContain("recheck due");
     expect(badge("2027-07-01")).toContain("Lapsed");
     expect(badge("2027-07-01")).not.toContain("bg-pass");
+    for (const today of ["2027-01-01", "2027-06-15"]) {
+      expect(badge(today, true)).toContain("with departures");
+      expect(badge(today, true)).not.toContain("bg-pass");
+    }
+    expect(badge("2027-07-01", true)).toContain("Lapsed");
   });
 });
 

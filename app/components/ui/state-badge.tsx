@@ -1,8 +1,9 @@
 /**
  * Where a unit stands in its life, and for a signed one whether the signature still holds.
- *   <StateBadge state={unit.state} validity={validity(unit.state, recheckOn, today).kind} />
- * Green is shown only for a signature that was computed to be in force: without `validity` a signed unit's badge is
- * neutral, and a lapsed one is never shown as plainly signed.
+ *   <StateBadge state={unit.state} standing={{ validity: validity(unit.state, recheckOn, today).kind, departures }} />
+ * Green is shown only for a signature that was computed to be in force and that no failing check stands against:
+ * without `standing` a signed unit's badge is neutral (for what once was: the trail), a lapsed one is never shown as
+ * plainly signed, and one with departures says so.
  */
 import {
   Ban,
@@ -11,6 +12,7 @@ import {
   ClipboardList,
   FileCheck2,
   FilePen,
+  FileWarning,
   FileX2,
   Gauge,
   Layers,
@@ -46,21 +48,35 @@ const signed: Record<Validity["kind"], Look> = {
   "must-not-be-used": { word: "Signed, not in force", tone: "fail", icon: CalendarX2 },
 };
 
-function lookOf(state: UnitState, validity: Validity["kind"] | undefined): Look {
-  if (state === "signed" && validity !== undefined) return signed[validity];
+/** Signed although a check fails: the conditions must be read. */
+const signedWithDepartures: Record<Validity["kind"], Look> = {
+  ...signed,
+  "may-be-used": { word: "Signed, with departures", tone: "undecided", icon: FileWarning },
+  "recheck-due": { word: "Signed, with departures, recheck due", tone: "undecided", icon: CalendarClock },
+};
+
+interface Standing {
+  validity: Validity["kind"];
+  departures: boolean;
+}
+
+function lookOf(state: UnitState, standing: Standing | null): Look {
+  if (state === "signed" && standing) {
+    return (standing.departures ? signedWithDepartures : signed)[standing.validity];
+  }
   return { word: stateTitles[state], ...states[state] };
 }
 
 export function StateBadge({
   state,
-  validity,
+  standing = null,
   size,
 }: {
   state: UnitState;
-  validity?: Validity["kind"];
+  standing?: Standing | null;
   size?: "md" | "bench";
 }) {
-  const { word, tone, icon } = lookOf(state, validity);
+  const { word, tone, icon } = lookOf(state, standing);
   return (
     <Badge tone={tone} icon={icon} size={size}>
       {word}

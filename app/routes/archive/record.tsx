@@ -78,7 +78,12 @@ export default function RecordPage({ loaderData, params }: Route.ComponentProps)
       <PageHeader
         kicker={`Record of unit ${unit.number}, revision ${record.unit.revision}`}
         title={unit.name}
-        badges={<StateBadge state={unit.state} validity={stored.validity.kind} />}
+        badges={
+          <StateBadge
+            state={unit.state}
+            standing={{ validity: stored.validity.kind, departures: record.decision.departures !== null }}
+          />
+        }
         actions={
           <>
             {loaderData.mayReadTrail ? (

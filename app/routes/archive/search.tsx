@@ -173,7 +173,7 @@ const columns: Column<RecordRow>[] = [
   {
     id: "state",
     header: "State",
-    cell: (row) => <StateBadge state={row.state} validity={row.validity.kind} />,
+    cell: (row) => <StateBadge state={row.state} standing={row.standing} />,
   },
   { id: "builder", header: "Built by", cell: (row) => row.builder },
   { id: "signer", header: "Decided by", cell: (row) => row.signer },

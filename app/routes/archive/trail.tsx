@@ -1,4 +1,4 @@
-import { CircleCheck, OctagonAlert } from "lucide-react";
+import { CircleCheck, OctagonAlert, ShieldCheck } from "lucide-react";
 import { Breadcrumbs } from "~/components/shell/breadcrumbs";
 import { EmptyState } from "~/components/ui/empty-state";
 import { LinkButton } from "~/components/ui/link-button";
@@ -7,17 +7,22 @@ import { Sheet } from "~/components/ui/sheet";
 import { StateBadge } from "~/components/ui/state-badge";
 import { Time } from "~/components/ui/time";
 import { authoriseUnit } from "~/middleware/authorise.server";
+import { standingOf } from "~/services/archive/standing.server";
 import { readUnitTrail } from "~/services/audit/read-trail.server";
 import { type TrailVerdict, verifyTrail } from "~/services/audit/verify-trail.server";
+import { dayIn } from "~/services/context.server";
 import { archivedStates } from "~/workflow/states";
 import type { Route } from "./+types/trail";
 import { actWords } from "./act-words";
 
-export async function loader({ context, params }: Route.LoaderArgs) {
+export async function loader({ context, params, url }: Route.LoaderArgs) {
   const { services, unit } = await authoriseUnit(context, "trail.read", params.unit);
-  const [verdict, entries] = await Promise.all([
-    verifyTrail(services.db, services.workshop.id),
+  const { db, workshop } = services;
+  const [verdict, entries, standing] = await Promise.all([
+    // Computing every entry of the workshop again takes its time, so only whoever asks for it waits.
+    url.searchParams.get("verify") === "1" ? verifyTrail(db, workshop.id) : null,
     readUnitTrail(services, unit),
+    standingOf(db, unit, dayIn(workshop.timeZone, services.now())),
   ]);
   const archived: readonly string[] = archivedStates;
   return {
@@ -25,6 +30,7 @@ export async function loader({ context, params }: Route.LoaderArgs) {
       number: unit.number,
       name: unit.name,
       state: unit.state,
+      standing,
       archived: archived.includes(unit.state),
     },
     verdict,
@@ -61,11 +67,11 @@ export default function Trail({ loaderData, params }: Route.ComponentProps) {
       <PageHeader
         kicker={`Unit ${unit.number}`}
         title={`Trail of ${unit.name}`}
-        badges={<StateBadge state={unit.state} />}
+        badges={<StateBadge state={unit.state} standing={unit.standing} />}
         actions={<LinkButton to={home}>{unit.archived ? "The record" : "The unit"}</LinkButton>}
       />
       <div className="space-y-5">
-        <Verdict verdict={verdict} />
+        {verdict ? <Verdict verdict={verdict} /> : <NotVerified />}
         <Sheet
           title="Everything that was done, in order"
           lead="Each entry holds the hash of the entry before it in the workshop’s trail, so none can be altered or left out unnoticed."
@@ -85,6 +91,23 @@ export default function Trail({ loaderData, params }: Route.ComponentProps) {
         </Sheet>
       </div>
     </>
+  );
+}
+
+function NotVerified() {
+  return (
+    <div
+      data-trail="not-verified"
+      className="flex flex-wrap items-center gap-3 border border-rule-strong bg-sheet px-4 py-3 print:block"
+    >
+      <p className="min-w-0 flex-1">
+        <span className="font-semibold">Not verified just now. </span>
+        The entries below were read, but their hashes were not computed again.
+      </p>
+      <LinkButton to="?verify=1" icon={ShieldCheck}>
+        Verify the whole trail
+      </LinkButton>
+    </div>
   );
 }
 

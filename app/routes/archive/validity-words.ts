@@ -26,6 +26,13 @@ export function validityWords(validity: Validity, departures: boolean): Validity
         tone: "pass",
       };
     case "recheck-due":
+      if (departures) {
+        return {
+          title: "May be plugged in, with departures; recheck due",
+          text: "Not every check passed; the signer allowed it under the conditions stated here. It must be checked again soon.",
+          tone: "undecided",
+        };
+      }
       return {
         title: "May be plugged in, recheck due",
         text: "Under the conditions stated here, but it must be checked again soon.",

@@ -25,9 +25,11 @@ import { TitleBlock } from "~/components/ui/title-block";
 import { isDecided, lineVerdicts } from "~/engine/bench-answer";
 import { answerTo } from "~/middleware/answers.server";
 import { authoriseUnit } from "~/middleware/authorise.server";
+import { standingOf } from "~/services/archive/standing.server";
 import { findPerson } from "~/services/bench/hand-over.server";
 import { listFindings } from "~/services/bench/findings.server";
 import { loadSheet } from "~/services/bench/load-sheet.server";
+import { dayIn } from "~/services/context.server";
 import { decide } from "~/workflow/permissions";
 import type { Route } from "./+types/sheet";
 import { checkHref } from "./check-href";
@@ -50,6 +52,7 @@ export async function loader({ context, params, url }: Route.LoaderArgs) {
         purpose: unit.purpose,
         placeOfUse: unit.placeOfUse,
         state: unit.state,
+        standing: await standingOf(services.db, unit, dayIn(services.workshop.timeZone, services.now())),
         revision: unit.revision,
         version: unit.version,
       },
@@ -89,7 +92,7 @@ export default function BenchSheet({ loaderData, params }: Route.ComponentProps)
       <PageHeader
         kicker={`Unit ${unit.number} · bench sheet of revision ${revision.number}`}
         title={unit.name}
-        badges={<StateBadge state={unit.state} />}
+        badges={<StateBadge state={unit.state} standing={unit.standing} />}
         actions={
           <>
             {mayTake ? (

@@ -26,6 +26,7 @@ export async function loader({ params, context }: Route.LoaderArgs) {
       number: unit.number,
       name: unit.name,
       state: unit.state,
+      standing: null,
       revision: unit.revision,
       editable: true,
     },

@@ -13,6 +13,7 @@ import { Sheet } from "~/components/ui/sheet";
 import { StateBadge } from "~/components/ui/state-badge";
 import { Time } from "~/components/ui/time";
 import { authorise } from "~/middleware/authorise.server";
+import { dayIn } from "~/services/context.server";
 import { listUnits, type UnitListItem, UNITS_PER_PAGE } from "~/services/units/list-units.server";
 import { decide } from "~/workflow/permissions";
 import { stateTitles, unitStates } from "~/workflow/states";
@@ -20,10 +21,11 @@ import type { Route } from "./+types/list";
 import { readUnitQuery } from "./unit-query";
 
 export async function loader({ url, context }: Route.LoaderArgs) {
-  const { db, person, workshop } = authorise(context, "unit.list");
+  const { db, person, workshop, now } = authorise(context, "unit.list");
   const query = readUnitQuery(url.searchParams);
   const { units, total, page } = await listUnits(db, {
     workshopId: workshop.id,
+    today: dayIn(workshop.timeZone, now()),
     text: query.text,
     states: query.states,
     builderId: query.mine ? person.id : undefined,
@@ -137,7 +139,12 @@ function Filter({
 const columns: Column<UnitListItem>[] = [
   { id: "name", header: "Name", cell: (unit) => unit.name, sortable: true, primary: true },
   { id: "number", header: "Number", cell: (unit) => unit.number, sortable: true, numeric: true },
-  { id: "state", header: "State", cell: (unit) => <StateBadge state={unit.state} />, sortable: true },
+  {
+    id: "state",
+    header: "State",
+    cell: (unit) => <StateBadge state={unit.state} standing={unit.standing} />,
+    sortable: true,
+  },
   { id: "builder", header: "Built by", cell: (unit) => unit.builder, sortable: true },
   { id: "revision", header: "Revision", cell: (unit) => unit.revision, numeric: true },
   { id: "supply", header: "Supply", cell: (unit) => `${unit.supplyVolts} V, class ${unit.protectionClass}` },

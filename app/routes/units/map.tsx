@@ -2,6 +2,8 @@ import { useNavigate } from "react-router";
 import { MapEditor } from "~/components/map-editor";
 import { LinkButton } from "~/components/ui/link-button";
 import { authoriseUnit } from "~/middleware/authorise.server";
+import { standingOf } from "~/services/archive/standing.server";
+import { dayIn } from "~/services/context.server";
 import { loadRevision, requireRuleSet } from "~/services/units/load-revision.server";
 import { decide } from "~/workflow/permissions";
 import type { Route } from "./+types/map";
@@ -20,6 +22,7 @@ export async function loader({ params, context }: Route.LoaderArgs) {
       number: unit.number,
       name: unit.name,
       state: unit.state,
+      standing: await standingOf(db, unit, dayIn(workshop.timeZone, services.now())),
       revision: unit.revision,
       editable,
     },

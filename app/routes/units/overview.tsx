@@ -56,7 +56,8 @@ export const meta: Route.MetaFunction = ({ loaderData }) => [
 ];
 
 export default function UnitOverview({ loaderData, actionData }: Route.ComponentProps) {
-  const { slug, unit, may, map, ruleSet, facts, files, findings, revisions, submission } = loaderData;
+  const { slug, unit, standing, may, map, ruleSet, facts, files, findings, revisions, submission } =
+    loaderData;
   const base = `/w/${slug}/units/${unit.number}`;
   const api = `/api/w/${slug}`;
   const conflict = actionData?.conflict ? actionData.message : null;
@@ -67,6 +68,7 @@ export default function UnitOverview({ loaderData, actionData }: Route.Component
         number={unit.number}
         name={unit.name}
         state={unit.state}
+        standing={standing}
         revision={unit.revision}
         editable={may.edit}
         actions={<Links slug={slug} unit={unit} may={may} />}

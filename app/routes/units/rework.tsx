@@ -48,7 +48,7 @@ export default function Rework({ loaderData, actionData }: Route.ComponentProps)
   const api = `/api/w/${slug}`;
   return (
     <>
-      <UnitHead slug={slug} {...unit} editable here="Rework" />
+      <UnitHead slug={slug} {...unit} standing={null} editable here="Rework" />
       <div className="space-y-5">
         {actionData?.conflict ? (
           <ConflictNotice message={actionData.message} reloadHref={`${base}/rework`} />

@@ -10,6 +10,8 @@ export interface UnitHeadProps {
   name: string;
   state: UnitState;
   revision: number;
+  /** How a signature stands today; null for a unit that isn't signed. */
+  standing: React.ComponentProps<typeof StateBadge>["standing"];
   /** Whether the person may edit it now. */
   editable: boolean;
   /** The page's own name in the breadcrumbs; none on the unit's first page. */
@@ -18,7 +20,17 @@ export interface UnitHeadProps {
 }
 
 /** The head of every page of one unit: where it is, what it is called, how it stands. */
-export function UnitHead({ slug, number, name, state, revision, editable, here, actions }: UnitHeadProps) {
+export function UnitHead({
+  slug,
+  number,
+  name,
+  state,
+  standing,
+  revision,
+  editable,
+  here,
+  actions,
+}: UnitHeadProps) {
   const list = `/w/${slug}/units`;
   const base = `${list}/${number}`;
   return (
@@ -33,7 +45,7 @@ export function UnitHead({ slug, number, name, state, revision, editable, here, 
       <PageHeader
         kicker={`Unit ${number} · revision ${revision}`}
         title={name}
-        badges={<StateBadge state={state} />}
+        badges={<StateBadge state={state} standing={standing} />}
         actions={actions}
       />
       <Tabs

@@ -95,7 +95,11 @@ function nextStep(home: string, unit: OverviewUnit): string {
 
 const unitColumns: Column<OverviewUnit>[] = [
   { id: "unit", header: "Unit", primary: true, cell: (unit) => `${unit.number} · ${unit.name}` },
-  { id: "state", header: "State", cell: (unit) => <StateBadge state={unit.state} /> },
+  {
+    id: "state",
+    header: "State",
+    cell: (unit) => <StateBadge state={unit.state} standing={unit.standing} />,
+  },
   { id: "changed", header: "Changed", nowrap: true, cell: (unit) => <Time at={unit.changedAt} /> },
 ];
 

@@ -3,6 +3,7 @@ import { alias } from "drizzle-orm/mysql-core";
 import { tables } from "~/db/client.server";
 import { dayIn, type ServiceContext } from "~/services/context.server";
 import { archivedStates, type UnitState, validity, type Validity } from "~/workflow/states";
+import type { Standing } from "./standing.server";
 import { addDays, nextDay, startOfDay } from "./day-range";
 
 const { decisions, people, records, units } = tables;
@@ -44,6 +45,7 @@ export interface RecordRow {
   unitName: string;
   state: UnitState;
   validity: Validity;
+  standing: Standing;
   kind: "signed" | "refused";
   builder: string;
   signer: string;
@@ -82,6 +84,7 @@ export async function searchRecords(
       signer: signers.name,
       decidedAt: decisions.decidedAt,
       recheckOn: decisions.recheckOn,
+      departures: decisions.departures,
       publicCode: records.publicCode,
       pdfKey: records.pdfKey,
     })
@@ -104,11 +107,15 @@ export async function searchRecords(
     .innerJoin(signers, eq(signers.id, decisions.signerId))
     .where(where);
   return {
-    rows: rows.map(({ pdfKey, ...row }) => ({
-      ...row,
-      validity: validity(row.state, row.recheckOn, today),
-      hasPdf: pdfKey !== null,
-    })),
+    rows: rows.map(({ pdfKey, departures, ...row }) => {
+      const now = validity(row.state, row.recheckOn, today);
+      return {
+        ...row,
+        validity: now,
+        standing: { validity: now.kind, departures: departures !== null },
+        hasPdf: pdfKey !== null,
+      };
+    }),
     total: counted?.total ?? 0,
   };
 }

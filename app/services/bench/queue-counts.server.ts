@@ -1,4 +1,4 @@
-import { and, count, eq, ne, notExists, sql } from "drizzle-orm";
+import { and, count, eq, isNull, ne, notExists, sql } from "drizzle-orm";
 import { tables } from "~/db/client.server";
 import type { ServiceContext } from "~/services/context.server";
 import type { UnitState } from "~/workflow/states";
@@ -22,7 +22,7 @@ export interface QueueCounts {
 
 /** How many units wait, for the badges of the navigation and the overview. */
 export async function countQueues({ db, workshop, person }: ServiceContext): Promise<QueueCounts> {
-  const here = eq(units.workshopId, workshop.id);
+  const here = and(eq(units.workshopId, workshop.id), isNull(units.discardedAt));
   const notBuilt = ne(units.builderId, person.id);
   const neverInspected = notExists(
     db

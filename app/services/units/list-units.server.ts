@@ -1,5 +1,6 @@
 import { and, asc, count, desc, eq, isNull, like, or, type SQL } from "drizzle-orm";
 import { type Reader, tables } from "~/db/client.server";
+import { type Standing, standingsOf } from "~/services/archive/standing.server";
 import type { UnitState } from "~/workflow/states";
 import type { UnitSortColumn } from "./unit-sort";
 
@@ -9,6 +10,8 @@ export const UNITS_PER_PAGE = 25;
 
 export interface UnitQuery {
   workshopId: number;
+  /** YYYY-MM-DD in the workshop's time zone: signatures are told as they stand then. */
+  today: string;
   /** Found in name, purpose or place; a number finds the unit of that number too. */
   text?: string;
   states?: readonly UnitState[];
@@ -29,6 +32,8 @@ export interface UnitListItem {
   protectionClass: "I" | "II";
   supplyVolts: number;
   changedAt: Date;
+  /** Null for one that isn't signed. */
+  standing: Standing | null;
 }
 
 /** One page of a workshop's units, with how many there are in all. A page beyond the last one is the last one. */
@@ -43,6 +48,7 @@ export async function listUnits(
   const order = query.sort.direction === "asc" ? asc : desc;
   const rows = await db
     .select({
+      id: units.id,
       number: units.number,
       name: units.name,
       purpose: units.purpose,
@@ -60,7 +66,12 @@ export async function listUnits(
     .orderBy(order(sortColumns[query.sort.by]), desc(units.number))
     .limit(UNITS_PER_PAGE)
     .offset((page - 1) * UNITS_PER_PAGE);
-  return { units: rows, total, page };
+  const standings = await standingsOf(db, rows, query.today);
+  return {
+    units: rows.map(({ id, ...row }) => ({ ...row, standing: standings.get(id) ?? null })),
+    total,
+    page,
+  };
 }
 
 const sortColumns = {

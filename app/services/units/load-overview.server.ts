@@ -1,6 +1,7 @@
 import { submissionProblems } from "~/engine/submission";
+import { standingOf } from "~/services/archive/standing.server";
 import { listFindings } from "~/services/bench/findings.server";
-import type { ServiceContext } from "~/services/context.server";
+import { dayIn, type ServiceContext } from "~/services/context.server";
 import { listFiles } from "~/services/files/list-files.server";
 import type { StandingUnit } from "~/services/unit-act.server";
 import { type Action, decide } from "~/workflow/permissions";
@@ -13,13 +14,14 @@ export async function loadOverview(context: ServiceContext, unit: StandingUnit) 
   const { db, person, workshop } = context;
   const may = (action: Action) => decide(action, { id: person.id, roles: workshop.roles }, unit).allowed;
   const revision = await loadRevision(db, unit);
-  const [files, findings, revisions, unanswered, builder, inspector] = await Promise.all([
+  const [files, findings, revisions, unanswered, builder, inspector, standing] = await Promise.all([
     listFiles(db, unit.id),
     listFindings(db, unit.id),
     listRevisions(db, unit.id),
     unansweredFindings(db, unit.id, revision.id),
     findPersonName(db, unit.builderId),
     unit.inspectorId === null ? null : findPersonName(db, unit.inspectorId),
+    standingOf(db, unit, dayIn(workshop.timeZone, context.now())),
   ]);
   return {
     unit: {
@@ -32,6 +34,7 @@ export async function loadOverview(context: ServiceContext, unit: StandingUnit) 
       version: unit.version,
       isOwn: unit.builderId === person.id,
     },
+    standing,
     builder,
     inspector,
     map: revision.map,

@@ -13,12 +13,14 @@ export async function findInArchive(archivist: Person, name: string): Promise<vo
 }
 
 /**
- * Opens the trail and sees that it was verified.
+ * Opens the trail, has it verified and sees that it holds.
  * @returns who did what, in order: "Bruna Okafor submitted"
  */
 export async function readTrail({ page }: Person, name: string): Promise<string[]> {
   await page.getByRole("link", { name: "Trail" }).click();
   await arrive(page, `Trail of ${name}`);
+  await page.getByText("Not verified just now.").waitFor();
+  await page.getByRole("link", { name: "Verify the whole trail" }).click();
   await page.getByText("The workshop’s trail is whole.").waitFor();
   const entries = page
     .getByRole("region", { name: "Everything that was done, in order" })
