@@ -77,11 +77,13 @@ export interface SwitchCombination {
 /** Two things that must not be joined and are, in some position of the switches. */
 export interface Join {
   id: string;
-  kind: "short" | "mains-to-elv" | "live-part" | "live-earth";
+  kind: "short" | "mains-to-elv" | "live-part" | "live-earth" | "bridged";
   /** The source that is shorted or reaches where it must not. */
   source: string;
   /** What it reaches: an element, or the other source. */
   other: string;
+  /** Loads, lamps, resistors and capacitors that it reaches it through; empty for a plain joint. */
+  through: string[];
   /** In the simplest case; the other switches are off. */
   switchesOn: string[];
   conductors: string[];

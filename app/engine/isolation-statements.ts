@@ -1,6 +1,7 @@
 import type { Join, Statement, StatementLevel } from "./analysis";
 import type { Circuit } from "./circuit";
 import { bondingOf, devicesInEarth } from "./earthing";
+import { earthedNeutrals } from "./earth-net";
 import { hasMains } from "./insulation";
 import { joinText } from "./joins";
 import { judgeMainsIsolation, mixedBody, stillLive } from "./mains-isolation";
@@ -22,10 +23,11 @@ export function joinStatement({ view }: Circuit, join: Join): Statement {
 }
 
 export function isolationStatements(
-  { view }: Circuit,
+  circuit: Circuit,
   { isolation, fusing }: Results,
   ruleSet: RuleSet,
 ): Statement[] {
+  const { view } = circuit;
   const statements: Statement[] = [];
   const told = new Set<string>();
   for (const inlet of view.ofKind("mains-inlet")) {
@@ -87,6 +89,17 @@ export function isolationStatements(
         ),
       );
     }
+  }
+  for (const id of earthedNeutrals(circuit)) {
+    statements.push(
+      say(
+        "isolation",
+        `earthed neutral ${id}`,
+        "caution",
+        `The neutral of ${view.name(id)} is joined with protective earth, as a residual-current device behind it needs. Only one such joint may be in use at a time.`,
+        [id],
+      ),
+    );
   }
   for (const contact of fusing.contacts) {
     if (contact.verdict === "pass" || told.has(contact.text)) continue;
