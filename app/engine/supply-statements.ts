@@ -6,7 +6,7 @@ import { hasMains } from "./insulation";
 import { leakageSum } from "./leakage";
 import type { RuleSet } from "./rule-set";
 import { fromReason, levelOf, say, type Results } from "./statement-parts";
-import { pinCharges } from "./stored-charge";
+import { chargesComplete, pinCharges, settingText } from "./stored-charge";
 import type { UnitFacts } from "./unit-facts";
 
 export function fusingStatements({ view }: Circuit, { fusing }: Results): Statement[] {
@@ -91,10 +91,22 @@ export function chargeStatements(circuit: Circuit, ruleSet: RuleSet, facts: Unit
     const charges = pinCharges(circuit, inlet, facts.supplyVolts, residualSeconds.value).filter(
       ({ capacitors }) => capacitors.length > 0,
     );
-    return charges.map(({ setting, capacitors, bleeders, nanofarads, volts }) => {
+    const open = chargesComplete(circuit, inlet)
+      ? []
+      : [
+          say(
+            "stored-charge",
+            `pins ${inlet.id} not complete`,
+            "unknown",
+            `What the pins of ${circuit.view.name(inlet.id)} hold is not worked out for every combination of so many switches.`,
+            [inlet.id],
+          ),
+        ];
+    const told = charges.map((charge) => {
+      const { setting, capacitors, bleeders, nanofarads, volts } = charge;
       const id = `pins ${inlet.id} ${setting}`;
       const elements = [inlet.id, ...capacitors, ...bleeders];
-      const where = `with the switches ${setting}`;
+      const where = settingText(charge);
       if (volts === null || nanofarads === null)
         return say(
           "stored-charge",
@@ -113,6 +125,7 @@ export function chargeStatements(circuit: Circuit, ruleSet: RuleSet, facts: Unit
         elements,
       );
     });
+    return [...told, ...open];
   });
 }
 

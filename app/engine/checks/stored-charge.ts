@@ -3,7 +3,7 @@ import type { BenchCheck, CheckDefinition, Reason } from "../bench-check";
 import { answer, because, caution, keyOf, worstVerdict } from "../check-parts";
 import { circuitOf } from "../circuit";
 import { figure } from "../figure";
-import { largestBleeder, pinCharges, type PinCharge } from "../stored-charge";
+import { chargesComplete, largestBleeder, pinCharges, settingText, type PinCharge } from "../stored-charge";
 import type { MapView } from "../map-view";
 import type { RuleSet } from "../rule-set";
 import type { UnitFacts } from "../unit-facts";
@@ -23,6 +23,7 @@ export const storedCharge: CheckDefinition = {
         ({ capacitors }) => capacitors.length > 0,
       );
       const judged = charges.map((charge) => judge(view, ruleSet, facts, inlet.id, charge));
+      if (!chargesComplete(circuit, inlet)) judged.push(tooMany(inlet.id));
       const parts = [...new Set(charges.flatMap(({ capacitors, bleeders }) => [...capacitors, ...bleeders]))];
       return {
         key: keyOf("residual-voltage", inlet.id),
@@ -73,16 +74,25 @@ export const storedCharge: CheckDefinition = {
   },
 };
 
+const tooMany = (inlet: string): { verdict: Verdict3; reason: Reason } => ({
+  verdict: "unknown",
+  reason: because(
+    "There are more switches at the pins than all combinations can be worked out for; what they hold in the others is not known.",
+    [inlet],
+  ),
+});
+
 function judge(
   view: MapView,
   ruleSet: RuleSet,
   facts: UnitFacts,
   inlet: string,
-  { setting, capacitors, bleeders, nanofarads, volts }: PinCharge,
+  charge: PinCharge,
 ): { verdict: Verdict3; reason: Reason } {
   const { residualVolts, residualSeconds, residualExemptNanofarads } = ruleSet.values;
+  const { capacitors, bleeders, nanofarads, volts } = charge;
   const elements = [inlet, ...capacitors, ...bleeders];
-  const where = `with the switches ${setting}`;
+  const where = settingText(charge);
   if (nanofarads !== null && nanofarads <= residualExemptNanofarads.value) {
     return {
       verdict: "pass",
