@@ -288,7 +288,15 @@ function starter(key: string): EnergyMap {
   return found.map;
 }
 
-/** A map that its builder has not finished: the last wires are still missing. */
+/** A map that its builder has not finished: the load isn't wired, a fuse and a wire are not known yet. */
 function unfinished(map: EnergyMap): EnergyMap {
-  return { ...map, conductors: map.conductors.slice(0, -2) };
+  return {
+    ...map,
+    elements: map.elements.map((each) =>
+      each.id === "F2" && each.kind === "fuse" ? { ...each, ratingAmps: null } : each,
+    ),
+    conductors: map.conductors
+      .filter(({ from, to }) => from.element !== "LD1" && to.element !== "LD1")
+      .map((each) => (each.id === "W2" ? { ...each, area: null } : each)),
+  };
 }
