@@ -1,3 +1,4 @@
+import { readFileSync } from "node:fs";
 import { expect, test } from "vitest";
 import {
   EnvironmentError,
@@ -84,4 +85,11 @@ test("the README's table has a row for each variable, required ones marked", () 
     expect(about.length, name).toBeGreaterThan(3);
     expect(example, name).toMatch(/^`.+`$/);
   }
+});
+
+test("the README shows the table as it is", () => {
+  const readme = readFileSync(new URL("../README.md", import.meta.url), "utf8");
+  // Prettier pads the cells; only their words count.
+  const words = (text: string) => text.replace(/ +/g, " ").replace(/-{3,}/g, "---");
+  expect(words(readme)).toContain(words(environmentMarkdown()));
 });
