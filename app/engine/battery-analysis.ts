@@ -1,23 +1,33 @@
 import type { Verdict3 } from "./analysis";
+import { feedersOf, stackFeeders, type Feeder } from "./battery-feeders";
+import { protectionOf } from "./battery-protection";
 import type { Reason } from "./bench-check";
 import type { Circuit } from "./circuit";
-import { configurations, energise, isReached } from "./energise";
 import type { ElementOf } from "./energy-map";
 import { figure } from "./figure";
 import { worst } from "./mains-isolation";
 import { batteryFullVolts, cellLimits } from "./supply-data";
+import { list } from "./wording";
+
+/** One finding about a battery with its own verdict, so that a sound one is not blamed for another's fault. */
+export interface BatteryFinding extends Reason {
+  /** `null`: something to look at, neither good nor bad by itself. */
+  verdict: Verdict3 | null;
+}
 
 export interface BatteryReport {
   battery: string;
-  /** Chargers, supplies and inlets whose energy reaches its poles. */
+  /** Chargers, supplies and inlets whose energy reaches its poles, or may. */
   chargedBy: string[];
   fullVolts: number | null;
   emptyVolts: number | null;
   verdict: Verdict3;
-  reasons: Reason[];
+  findings: BatteryFinding[];
 }
 
-/** For each battery: charging voltage and current against its limits, protection, strings. */
+type Add = (verdict: Verdict3 | null, text: string, elements: string[]) => void;
+
+/** For each battery: charging voltage and current of all that feeds it against its limits, protection, strings. */
 export function analyseBatteries(circuit: Circuit): BatteryReport[] {
   return circuit.view.ofKind("battery").map((battery) => reportOn(circuit, battery));
 }
@@ -25,146 +35,142 @@ export function analyseBatteries(circuit: Circuit): BatteryReport[] {
 function reportOn(circuit: Circuit, battery: ElementOf<"battery">): BatteryReport {
   const { view } = circuit;
   const name = view.name(battery.id);
-  const reasons: Reason[] = [];
-  const verdicts: Verdict3[] = [];
-  const add = (verdict: Verdict3, text: string, elements: string[]) => {
-    verdicts.push(verdict);
-    reasons.push({ text, elements, conductors: [] });
+  const findings: BatteryFinding[] = [];
+  const add: Add = (verdict, text, elements) => {
+    findings.push({ verdict, text, elements: [battery.id, ...elements], conductors: [] });
   };
   const limits = battery.chemistry === "unknown" ? null : cellLimits[battery.chemistry];
   const fullVolts = batteryFullVolts(battery);
   const feeders = feedersOf(circuit, battery);
-  const lithium = battery.chemistry === "lifepo4" || battery.chemistry === "li-ion";
-
-  if (fullVolts === null) {
-    add("unknown", `${name}: chemistry or number of cells is not known, and with it the charging limit.`, [
-      battery.id,
-    ]);
-  }
+  if (fullVolts === null)
+    add("unknown", `${name}: chemistry or number of cells is not known, and with it the charging limit.`, []);
   for (const feeder of feeders) {
-    const element = view.elements.get(feeder);
-    if (element?.kind === "charger") {
-      judgeVoltage(name, view.name(feeder), element.setPointVolts, fullVolts, [battery.id, feeder], add);
-      judgeCurrent(
-        name,
-        view.name(feeder),
-        element.outputAmps,
-        battery.maxChargeAmps,
-        [battery.id, feeder],
-        add,
-      );
-    }
+    judgeVoltage(name, view.name(feeder.element), feeder, fullVolts, add);
+    judgeCurrent(name, view.name(feeder.element), feeder, battery.maxChargeAmps, add);
   }
-  if (lithium || battery.chemistry === "unknown") {
-    const protection = protectionOf(circuit, battery);
-    if (protection.length > 0) {
-      add("pass", `${name} is joined to the rest through ${view.name(protection[0] ?? "")}.`, [
-        battery.id,
-        ...protection,
-      ]);
-    } else if (lithium)
-      add("fail", `${name} is a lithium battery without a protection board on both poles.`, [battery.id]);
-    else
+  judgeTogether(name, view.name, feeders, battery.maxChargeAmps, add);
+  judgeProtection(circuit, battery, add);
+  if (battery.stringsInParallel !== null && battery.stringsInParallel > 1) {
+    add(
+      null,
+      `${name} has ${battery.stringsInParallel} strings in parallel: a bad cell is fed by the other strings. Each needs its own current limit or matched cells that were joined at equal voltage.`,
+      [],
+    );
+  }
+  if (feeders.length === 0) {
+    const across = stackFeeders(circuit, battery);
+    if (across.length > 0)
       add(
         "unknown",
-        `${name}: whether it needs a protection board depends on its chemistry, which is not known.`,
-        [battery.id],
+        `${name} is charged in series with others by ${list(across.map((id) => view.name(id)))}: what each of them gets is not worked out.`,
+        across,
       );
+    else add("pass", `${name}: nothing on the map charges it.`, []);
   }
-  if (battery.stringsInParallel !== null && battery.stringsInParallel > 1) {
-    reasons.push({
-      text: `${name} has ${battery.stringsInParallel} strings in parallel: a bad cell is fed by the other strings. Each needs its own current limit or matched cells that were joined at equal voltage.`,
-      elements: [battery.id],
-      conductors: [],
-    });
-  }
-  if (verdicts.length === 0) add("pass", `${name}: nothing on the map charges it.`, [battery.id]);
   return {
     battery: battery.id,
-    chargedBy: feeders,
+    chargedBy: feeders.map(({ element }) => element),
     fullVolts,
     emptyVolts:
       limits === null || battery.cellsInSeries === null ? null : limits.empty * battery.cellsInSeries,
-    verdict: worst(verdicts),
-    reasons,
+    verdict: worst(findings.flatMap(({ verdict }) => (verdict === null ? [] : [verdict]))),
+    findings,
   };
 }
 
-type Add = (verdict: Verdict3, text: string, elements: string[]) => void;
+/** A fault that rests on something not known can't be excluded; it is not sure. */
+const doubt = (verdict: Verdict3, { certainty }: Feeder): Verdict3 =>
+  certainty === "possible" && verdict === "fail" ? "unknown" : verdict;
 
-function judgeVoltage(
-  name: string,
-  charger: string,
-  setPoint: number | null,
-  full: number | null,
-  elements: string[],
-  add: Add,
-) {
-  if (setPoint === null || full === null) {
-    if (full !== null)
-      add(
-        "unknown",
-        `The charging voltage of ${charger} is not known; ${name} allows ${figure(full)} V.`,
-        elements,
-      );
+const reaching = ({ certainty }: Feeder) => (certainty === "possible" ? " may reach it and" : "");
+
+function judgeVoltage(name: string, by: string, feeder: Feeder, full: number | null, add: Add) {
+  if (full === null) return;
+  if (feeder.alternating) {
+    add(doubt("fail", feeder), `${by}${reaching(feeder)} puts alternating voltage on ${name}.`, [
+      feeder.element,
+    ]);
     return;
   }
+  if (feeder.volts === null) {
+    add("unknown", `The charging voltage of ${by} is not known; ${name} allows ${figure(full)} V.`, [
+      feeder.element,
+    ]);
+    return;
+  }
+  const volts = `${figure(feeder.volts)} V`;
   add(
-    setPoint <= full + 1e-9 ? "pass" : "fail",
-    `${charger} is set to ${figure(setPoint)} V and ${name} allows ${figure(full)} V, with no help from its protection board.`,
-    elements,
+    doubt(feeder.volts <= full + 1e-9 ? "pass" : "fail", feeder),
+    feeder.kind === "charger"
+      ? `${by}${reaching(feeder)} is set to ${volts} and ${name} allows ${figure(full)} V, with no help from its protection board.`
+      : `${by}, which is no charger,${reaching(feeder)} puts ${volts} straight on ${name}, which allows ${figure(full)} V.`,
+    [feeder.element],
   );
 }
 
-function judgeCurrent(
+function judgeCurrent(name: string, by: string, feeder: Feeder, most: number | null, add: Add) {
+  if (feeder.kind === "battery") {
+    add(
+      "unknown",
+      `${by} lies in parallel with ${name}: when they are not equally full, nothing on the map limits the current between them.`,
+      [feeder.element],
+    );
+    return;
+  }
+  if (feeder.amps === null || most === null) {
+    add("unknown", `The charging current of ${by} or what ${name} allows is not known.`, [feeder.element]);
+    return;
+  }
+  add(
+    doubt(feeder.amps <= most ? "pass" : "fail", feeder),
+    `${by}${reaching(feeder)} charges with up to ${figure(feeder.amps)} A and ${name} allows ${figure(most)} A.`,
+    [feeder.element],
+  );
+}
+
+/** Several that each stay within the limit can be above it together. */
+function judgeTogether(
   name: string,
-  charger: string,
-  current: number | null,
+  nameOf: (id: string) => string,
+  feeders: Feeder[],
   most: number | null,
-  elements: string[],
   add: Add,
 ) {
-  if (current === null || most === null) {
-    add("unknown", `The charging current of ${charger} or what ${name} allows is not known.`, elements);
-    return;
-  }
-  add(
-    current <= most ? "pass" : "fail",
-    `${charger} charges with up to ${figure(current)} A and ${name} allows ${figure(most)} A.`,
-    elements,
-  );
+  const known = feeders.flatMap(({ amps }) => (amps === null ? [] : [amps]));
+  if (known.length < 2 || most === null || known.some((each) => each > most)) return;
+  const sum = known.reduce((total, each) => total + each, 0);
+  const ids = feeders.map(({ element }) => element);
+  if (sum > most)
+    add(
+      "unknown",
+      `${list(ids.map(nameOf))} together charge with up to ${figure(sum)} A if they work at once, and ${name} allows ${figure(most)} A.`,
+      ids,
+    );
 }
 
-/** Ids of the supplies whose energy reaches both poles of a battery, with everything switched on. */
-function feedersOf(circuit: Circuit, battery: ElementOf<"battery">): string[] {
-  const plus = circuit.view.nodeOf(battery.id, "+");
-  const minus = circuit.view.nodeOf(battery.id, "-");
-  const found = configurations(circuit, () => null).flatMap((positions) =>
-    circuit.sources
-      .filter(({ element }) => element !== battery.id)
-      .flatMap((source) => energise(circuit, source, { positions, includePossible: false }).instances)
-      .filter(({ hot, ret }) => isReached(hot, plus) && isReached(ret, minus))
-      .map(({ supply }) => supply.element),
-  );
-  return [...new Set(found)];
-}
-
-/** Protection boards that both poles of a battery lead to directly. */
-function protectionOf({ view }: Circuit, battery: ElementOf<"battery">): string[] {
-  const boards = (pole: string) =>
-    view.wired.flatMap(({ from, to }) => {
-      const other =
-        from.element === battery.id && from.terminal === pole
-          ? to
-          : to.element === battery.id && to.terminal === pole
-            ? from
-            : null;
-      return other !== null &&
-        view.elements.get(other.element)?.kind === "bms" &&
-        other.terminal.startsWith("B")
-        ? [other.element]
-        : [];
-    });
-  const plus = new Set(boards("+"));
-  return boards("-").filter((id) => plus.has(id));
+function judgeProtection(circuit: Circuit, battery: ElementOf<"battery">, add: Add) {
+  const lithium = battery.chemistry === "lifepo4" || battery.chemistry === "li-ion";
+  if (!lithium && battery.chemistry !== "unknown") return;
+  const name = circuit.view.name(battery.id);
+  const { boards, bypassing } = protectionOf(circuit, battery);
+  if (boards.length === 0 && lithium)
+    add("fail", `${name} is a lithium battery without a protection board on both poles.`, []);
+  else if (boards.length === 0)
+    add(
+      "unknown",
+      `${name}: whether it needs a protection board depends on its chemistry, which is not known.`,
+      [],
+    );
+  else if (bypassing.length > 0)
+    add(
+      "fail",
+      `${list(bypassing.map((id) => circuit.view.name(id)))} lies on the poles of ${name} before its protection board, which can't part it.`,
+      bypassing,
+    );
+  else
+    add(
+      "pass",
+      `${name} is joined to the rest through ${list(boards.map((id) => circuit.view.name(id)))}.`,
+      boards,
+    );
 }

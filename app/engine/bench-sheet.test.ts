@@ -87,7 +87,10 @@ test("the limits that a person would look up", () => {
   expect(limit("insulation-creepage:CH1")).toEqual(["at-least", 5, "mm"]);
   expect(limit("insulation-clearance:MP1")).toEqual(["at-least", 1.5, "mm"]);
   expect(limit("earth-current:X1")).toEqual(["at-most", 3.5, "mA"]);
-  expect(limit("charge-voltage:BT1:CH1")).toEqual(["at-most", 14.6, "V"]);
+  // Four cells of lithium iron phosphate: 3.2 V nominal, below which nothing charges, to 3.65 V (cell maker's data).
+  expect(sheet.get("charge-voltage:BT1:CH1")?.asks).toMatchObject({
+    limit: { kind: "between", lower: 12.8, upper: 14.6 },
+  });
   expect(limit("residual-voltage:X1")).toEqual(["at-most", 34, "V"]);
   expect(limit("backfeed:BT1:X1")).toEqual(["at-most", 30, "V"]);
 });

@@ -130,7 +130,9 @@ export function chargeStatements(circuit: Circuit, ruleSet: RuleSet, facts: Unit
 }
 
 export function batteryStatements(circuit: Circuit): Statement[] {
-  return analyseBatteries(circuit).flatMap(({ battery, verdict, reasons }) =>
-    reasons.map((reason, index) => fromReason("battery", `${battery} ${index}`, levelOf(verdict), reason)),
+  return analyseBatteries(circuit).flatMap(({ battery, findings }) =>
+    findings.map(({ verdict, ...reason }, index) =>
+      fromReason("battery", `${battery} ${index}`, verdict === null ? "caution" : levelOf(verdict), reason),
+    ),
   );
 }

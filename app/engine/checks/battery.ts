@@ -17,6 +17,7 @@ export const battery: CheckDefinition = {
       const limits = element.chemistry === "unknown" ? null : cellLimits[element.chemistry];
       const cold = view.ofKind("bms").every(({ coldChargeCutoff }) => coldChargeCutoff !== "yes");
       const lithium = element.chemistry === "lifepo4" || element.chemistry === "li-ion";
+      const strings = element.stringsInParallel ?? 1;
       const state: BenchCheck = {
         key: keyOf("battery-state", element.id),
         family: "battery",
@@ -35,11 +36,18 @@ export const battery: CheckDefinition = {
             : []),
         ],
         cautions: [caution.battery],
-        computed: answer(report.verdict, report.reasons),
+        computed: answer(
+          report.verdict,
+          report.findings.map(({ text, elements }) => because(text, elements)),
+        ),
         asks: examination(
-          "Is the pack the one on the map, sound, covered and fixed?",
+          strings > 1
+            ? `Is the pack the one on the map, sound, covered and fixed, and are its ${strings} strings joined cell by cell or each with its own current limit?`
+            : "Is the pack the one on the map, sound, covered and fixed?",
           "As on the map and sound",
-          "Another pack, damaged, or loose",
+          strings > 1
+            ? "Another pack, damaged, loose, or strings without a limit"
+            : "Another pack, damaged, or loose",
         ),
         photo: "required",
         citations: [limits?.citation ?? practice("battery limits")],
@@ -48,7 +56,7 @@ export const battery: CheckDefinition = {
             ...new Set([
               element.id,
               ...report.chargedBy,
-              ...report.reasons.flatMap(({ elements }) => elements),
+              ...report.findings.flatMap(({ elements }) => elements),
             ]),
           ],
           conductors: [],
@@ -71,6 +79,7 @@ export const battery: CheckDefinition = {
               method: [
                 `Disconnect ${view.name(element.id)} from the charger's output, without shorting it.`,
                 "Measure the output open: without load the drop of a blocking diode is gone, so this is the highest that the pack would float to.",
+                "A charger that waits for a battery shows nothing: then measure across the battery with the charge finished, and say so under the conditions.",
               ],
               cautions: [
                 caution.battery,
@@ -82,13 +91,20 @@ export const battery: CheckDefinition = {
                 quantity: "Open output voltage",
                 unit: "V",
                 limit: {
-                  kind: "at-most",
-                  value: Number(fullVolts.toPrecision(6)),
+                  kind: "between",
+                  lower: Number(
+                    (fullVolts * (limits === null ? 0.8 : limits.nominal / limits.full)).toPrecision(4),
+                  ),
+                  upper: Number(fullVolts.toPrecision(6)),
                   unit: "V",
                   citation: limits?.citation ?? practice("battery limits"),
                 },
                 instrument: { kind: "multimeter", range: "direct, 0 to 100 V" },
-                conditions: ["Battery disconnected", "After the reading stands still"],
+                conditions: [
+                  "Battery disconnected",
+                  "After the reading stands still",
+                  "Below the nominal voltage the charger does not charge",
+                ],
               },
               photo: "none",
               citations: [limits?.citation ?? practice("battery limits")],
