@@ -115,6 +115,8 @@ export interface BackwardPath {
   /** `null` in the healthy unit; else the one part that has failed short. */
   failed: string | null;
   certainty: Certainty;
+  /** Which of its poles it reaches the other with; one alone counts at the pins of a mains plug only. */
+  poles: "both" | "live" | "neutral";
   /** Parts along the way whose data would be needed to exclude it. */
   unknownParts: string[];
 }
@@ -133,6 +135,8 @@ export interface ReverseResult {
   falseIndications: FalseIndication[];
   /** The parts that were each taken as failed short. */
   blockingParts: string[];
+  /** Changeovers of which not every position was worked out: where nothing was found, nothing is known. Empty when all were. */
+  unchecked: string[];
 }
 
 export type Verdict3 = "pass" | "fail" | "unknown";

@@ -39,7 +39,14 @@ export function judgePair(view: MapView, reverse: ReverseResult, from: string, t
       conductors: path.conductors,
     });
   }
-  if (!paths.some(({ failed }) => failed === null)) {
+  if (!paths.some(({ failed }) => failed === null) && reverse.unchecked.length > 0) {
+    verdicts.push("unknown");
+    reasons.unshift({
+      text: uncheckedText(view, reverse.unchecked),
+      elements: reverse.unchecked,
+      conductors: [],
+    });
+  } else if (!paths.some(({ failed }) => failed === null)) {
     const guards = reverse.blockingParts.map((id) => view.name(id));
     reasons.unshift({
       text: `In the healthy unit no way leads from ${view.name(from)} back to ${view.name(to)}${guards.length === 0 ? "" : `; each of ${list(guards)} was also taken as failed short, one at a time`}.`,
@@ -51,7 +58,13 @@ export function judgePair(view: MapView, reverse: ReverseResult, from: string, t
   return { verdict: worstOf(verdicts), reasons };
 }
 
+/** Said wherever nothing was found although not everything was looked at. */
+export const uncheckedText = (view: MapView, ids: string[]): string =>
+  `Not every position of ${list(ids.map((id) => view.name(id)))} was worked out together, so what happens in the others is not known.`;
+
 export function verdictOf(view: MapView, path: BackwardPath): Verdict3 {
+  // A shared neutral drives nothing by itself; with the plug reversed or the neutral interrupted it may.
+  if (path.poles === "neutral") return "unknown";
   if (path.certainty === "possible")
     return path.failed === null || isHazardous(view, path) ? "unknown" : "pass";
   if (path.failed === null) return "fail";
@@ -61,9 +74,10 @@ export function verdictOf(view: MapView, path: BackwardPath): Verdict3 {
 /** A sentence for a way backwards. */
 export function pathText(
   view: MapView,
-  { from, to, via, failed, certainty, unknownParts }: BackwardPath,
+  { from, to, via, failed, certainty, poles, unknownParts }: BackwardPath,
 ): string {
   const when = failed === null ? "" : `If ${view.name(failed)} fails short, `;
+  if (poles !== "both") return onePoleText(view, { from, to, via, certainty, poles }, when);
   const may = certainty === "possible" ? "may drive" : "drives";
   const way = via.length === 0 ? "directly" : `through ${via.map((id) => view.name(id)).join(", ")}`;
   const doubt =
@@ -71,6 +85,23 @@ export function pathText(
       ? ""
       : ` It can't be excluded, because it is not known whether ${list(unknownParts.map((id) => view.name(id)))} lets energy pass backwards.`;
   return `${when}${view.name(from)} ${may} energy ${goal(view.elements.get(to), view.name(to))} ${way}.${doubt}`;
+}
+
+/** One pole alone: the plug pins must be parted from every pole of what makes mains voltage inside. */
+function onePoleText(
+  view: MapView,
+  { from, to, via, certainty, poles }: Pick<BackwardPath, "from" | "to" | "via" | "certainty" | "poles">,
+  when: string,
+): string {
+  const pole = poles === "live" ? "live pole" : "neutral";
+  const word = certainty === "possible" ? "may be" : "is";
+  const way = via.length === 0 ? "" : ` through ${via.map((id) => view.name(id)).join(", ")}`;
+  const then =
+    poles === "live"
+      ? "Whoever touches the pins touches it: every pole must be parted."
+      : "Whether it can carry a voltage there is not shown; every pole should be parted.";
+  const the = when === "" ? "The" : `${when}the`;
+  return `${the} ${pole} that ${view.name(from)} feeds ${word} joined with the plug pins of ${view.name(to)}${way}. ${then}`;
 }
 
 function goal(element: Element | undefined, name: string): string {
@@ -118,6 +149,17 @@ export function judgeLamp(view: MapView, reverse: ReverseResult, id: string): Ju
     });
   }
   const healthy = lies.filter(({ failed }) => failed === null);
+  if (healthy.length === 0 && reverse.unchecked.length > 0)
+    return {
+      verdict: "unknown",
+      reasons: [
+        {
+          text: uncheckedText(view, reverse.unchecked),
+          elements: [id, ...reverse.unchecked],
+          conductors: [],
+        },
+      ],
+    };
   return {
     verdict: healthy.some(({ certainty }) => certainty === "certain")
       ? "fail"

@@ -169,7 +169,8 @@ function wayThroughParent(circuit: Circuit, parent: Instance, transfer: Transfer
   return { ...way, elements: [...way.elements, transfer.element] };
 }
 
-function wayWithin(circuit: Circuit, reach: Reach, node: number): Way {
+/** The way of a walk to a node that it came to. */
+export function wayWithin(circuit: Circuit, reach: Reach, node: number): Way {
   const elements: string[] = [];
   const conductors: string[] = [];
   let at = node;
@@ -186,26 +187,77 @@ function wayWithin(circuit: Circuit, reach: Reach, node: number): Way {
 
 const withoutRepeats = (ids: string[]) => ids.filter((id, index) => id !== ids[index - 1]);
 
-/** Positions of all switches: on-off contacts in one given position, each changeover in every combination (up to 64). */
-export function configurations(
+/** Up to so many changeovers are worked out in every combination. */
+const completeUpTo = 6;
+
+export interface Settings {
+  positions: Map<string, Position>[];
+  /** Changeovers of which not every combination with the others was worked out; empty when all were. */
+  left: string[];
+}
+
+/**
+ * Positions of all switches: on-off contacts in one given position, each changeover in every combination. A changeover of
+ * which one side is joined to nothing stays on the other, since its bare side only ever joins less. With more than six that
+ * matter, or more than `most` settings, only both extremes and each one thrown alone are given, and `left` names them.
+ */
+export function settingsOf(
   circuit: Circuit,
   positionOf: (id: string) => Position | null,
-): Map<string, Position>[] {
+  most = 2 ** completeUpTo,
+): Settings {
   const base = new Map<string, Position>();
   const free: string[] = [];
   for (const element of circuit.switches) {
-    const fixed = positionOf(element.id);
-    if (fixed !== null) base.set(element.id, fixed);
-    else if (element.throw === "single") base.set(element.id, "on");
+    const only =
+      positionOf(element.id) ?? (element.throw === "single" ? "on" : onlySide(circuit, element.id));
+    if (only !== null) base.set(element.id, only);
     else free.push(element.id);
   }
-  const varied = free.slice(0, 6);
-  return Array.from({ length: 2 ** varied.length }, (_, bits) => {
-    const positions = new Map(base);
-    varied.forEach((id, index) => positions.set(id, (bits >> index) & 1 ? "off" : "on"));
-    return positions;
-  });
+  const complete = free.length <= completeUpTo && 2 ** free.length <= most;
+  const off = complete ? everySubset(free) : fewSubsets(free);
+  return {
+    positions: off.map((each) => {
+      const positions = new Map(base);
+      for (const id of free) positions.set(id, each.has(id) ? "off" : "on");
+      return positions;
+    }),
+    left: complete ? [] : free,
+  };
 }
+
+/** As `settingsOf`, the positions alone. */
+export const configurations = (
+  circuit: Circuit,
+  positionOf: (id: string) => Position | null,
+): Map<string, Position>[] => settingsOf(circuit, positionOf).positions;
+
+/** Changeovers of which not every position together with the others is worked out, with everything else switched on. */
+export const uncheckedChangeovers = (circuit: Circuit): string[] => settingsOf(circuit, () => null).left;
+
+/** The one position that matters of a changeover whose other side leads nowhere; `null` when both do matter. */
+function onlySide(circuit: Circuit, id: string): Position | null {
+  const leads = (position: "on" | "off") =>
+    circuit.links.some(
+      ({ element, closedWhen, b }) =>
+        element === id && closedWhen === position && (circuit.linksAt[b]?.length ?? 0) > 1,
+    );
+  if (!leads("off")) return "on";
+  return leads("on") ? null : "off";
+}
+
+const everySubset = (ids: string[]): Set<string>[] =>
+  Array.from(
+    { length: 2 ** ids.length },
+    (_, bits) => new Set(ids.filter((_id, index) => (bits >> index) & 1)),
+  );
+
+const fewSubsets = (ids: string[]): Set<string>[] => [
+  new Set(),
+  new Set(ids),
+  ...ids.map((id) => new Set([id])),
+  ...ids.map((kept) => new Set(ids.filter((id) => id !== kept))),
+];
 
 /** The poorer of two certainties. */
 export const poorer = (a: Certainty, b: Certainty): Certainty =>

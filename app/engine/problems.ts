@@ -1,4 +1,5 @@
 import { circuitContradictions } from "./contradictions";
+import { earthProblems } from "./earth-problems";
 import { elementKinds, terminalsOf, type FieldDescriptor } from "./elements";
 import type { Element, EnergyMap } from "./energy-map";
 import type { Problem } from "./problem";
@@ -9,9 +10,10 @@ export function mapProblems(map: EnergyMap, facts: UnitFacts): Problem[] {
   return [
     ...wholeMapProblems(map, facts),
     ...duplicateProblems(map),
+    ...earthProblems(map, facts),
     ...map.elements.flatMap((element) => elementProblems(element, map)),
     ...map.conductors.flatMap((conductor) => conductorProblems(conductor, map)),
-    ...circuitContradictions(map),
+    ...circuitContradictions(map, facts),
   ];
 }
 
@@ -38,9 +40,6 @@ function wholeMapProblems(map: EnergyMap, facts: UnitFacts): Problem[] {
     problems.push(whole("Nothing on the map uses the energy: add a load or an output connector."));
   }
   if (kinds.has("mains-inlet") && facts.protectionClass === "I") {
-    if (!kinds.has("earth-terminal")) {
-      problems.push(whole("A class I unit needs its protective-earth terminal on the map."));
-    }
     if (facts.cordLengthM === null || facts.cordLengthM === undefined) {
       problems.push(
         whole(
@@ -64,18 +63,23 @@ function wholeMapProblems(map: EnergyMap, facts: UnitFacts): Problem[] {
 }
 
 function duplicateProblems(map: EnergyMap): Problem[] {
-  const seen = new Set<string>();
+  const seen = new Map<string, string>();
   const problems: Problem[] = [];
   const look = (kind: "element" | "conductor", id: string) => {
-    if (seen.has(id)) {
+    // F1 and f1 can't be told apart on a label or by word of mouth.
+    const first = seen.get(id.toLowerCase());
+    if (first !== undefined) {
       problems.push({
         subject: { kind, id },
         field: "id",
-        text: `The id ${id} is used more than once.`,
+        text:
+          first === id
+            ? `The id ${id} is used more than once.`
+            : `The ids ${first} and ${id} differ only in capital letters: give one of them another id.`,
         blocking: true,
       });
     }
-    seen.add(id);
+    seen.set(id.toLowerCase(), first ?? id);
   };
   for (const { id } of map.elements) look("element", id);
   for (const { id } of map.conductors) look("conductor", id);

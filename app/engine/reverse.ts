@@ -1,19 +1,17 @@
 import type { BackwardPath, Certainty, FalseIndication, ReverseResult } from "./analysis";
-import type { Circuit, Supply, Transfer } from "./circuit";
+import type { Circuit, Supply } from "./circuit";
 import {
   conduction,
   configurations,
   energise,
   isReached,
-  passes,
+  uncheckedChangeovers,
   type Condition,
   type Instance,
   type Position,
 } from "./energise";
 import type { ElementOf } from "./energy-map";
-
-/** At most so many ways are told for one pair of sources and one condition; more add nothing to the finding. */
-const waysToTell = 8;
+import { simpleWays, stepsInAll, type Budget } from "./reverse-ways";
 
 /**
  * Every way by which one source can drive energy into another or onto the pins of an inlet while that one is absent: in the
@@ -23,13 +21,14 @@ export function analyseReverse(circuit: Circuit): ReverseResult {
   const blockingParts = blockingPartsOf(circuit);
   const paths: BackwardPath[] = [];
   const falseIndications: FalseIndication[] = [];
+  const budget: Budget = { steps: stepsInAll };
   for (const from of circuit.sources) {
     for (const to of circuit.sources) {
-      if (from.element !== to.element) paths.push(...pathsBetween(circuit, from, to, blockingParts));
+      if (from.element !== to.element) paths.push(...pathsBetween(circuit, from, to, blockingParts, budget));
     }
     falseIndications.push(...falseLights(circuit, from, blockingParts));
   }
-  return { paths, falseIndications, blockingParts };
+  return { paths, falseIndications, blockingParts, unchecked: uncheckedChangeovers(circuit) };
 }
 
 /** Parts whose failing short can open a way: diodes, coil-driven contacts, and converters that are no barrier by insulation. */
@@ -66,28 +65,30 @@ function positionsWhile(circuit: Circuit, present: string, absent: string | null
 
 const isSource = ({ sources }: Circuit, id: string) => sources.some(({ element }) => element === id);
 
-function pathsBetween(circuit: Circuit, from: Supply, to: Supply, blockingParts: string[]): BackwardPath[] {
+function pathsBetween(
+  circuit: Circuit,
+  from: Supply,
+  to: Supply,
+  blockingParts: string[],
+  budget: Budget,
+): BackwardPath[] {
   // Charging a battery through its charger is what the charger is for; any other way into a battery is not.
   const idle =
     circuit.view.elements.get(to.element)?.kind === "battery" ? chargersOf(circuit) : new Set<string>();
   const settings = positionsWhile(circuit, from.element, to.element);
-  const healthy = unique(
-    settings.flatMap((positions) => waysUnder(circuit, from, to, { positions, idle, includePossible: true })),
-  );
+  const under = (condition: Omit<Condition, "positions">) =>
+    unique(
+      settings.flatMap((positions) => waysUnder(circuit, from, to, { ...condition, positions }, budget)),
+    );
+  const healthy = under({ idle, includePossible: true });
+  // Where the healthy unit does it already, no part need fail for it.
+  if (healthy.some(({ certainty, poles }) => certainty === "certain" && poles !== "neutral")) return healthy;
   const known = new Set(healthy.map(({ id }) => id));
-  const failed = blockingParts.flatMap((part) => {
-    const found = settings.flatMap((positions) =>
-      waysUnder(circuit, from, to, {
-        positions,
-        idle: withoutMember(idle, part),
-        includePossible: true,
-        failedShort: part,
-      }),
-    );
-    return unique(found).filter(
+  const failed = blockingParts.flatMap((part) =>
+    under({ idle: withoutMember(idle, part), includePossible: true, failedShort: part }).filter(
       (path) => path.via.includes(part) && !known.has(`${path.id.split("|")[0] ?? ""}|`),
-    );
-  });
+    ),
+  );
   return [...healthy, ...failed];
 }
 
@@ -109,38 +110,63 @@ function unique(paths: BackwardPath[]): BackwardPath[] {
   return [...best.values()];
 }
 
-/** Ways under one condition, when both poles of the other source are reached by the same energised pair. */
-function waysUnder(circuit: Circuit, from: Supply, to: Supply, condition: Condition): BackwardPath[] {
+/**
+ * Ways under one condition, when both poles of the other source are reached by the same energised pair. The pins of a mains
+ * plug must be parted from every pole, so there one pole of something at mains voltage is enough.
+ */
+function waysUnder(
+  circuit: Circuit,
+  from: Supply,
+  to: Supply,
+  condition: Condition,
+  budget: Budget,
+): BackwardPath[] {
   const { instances, conducts } = energise(circuit, from, condition);
-  const reaching = instances.filter((instance) => holdsPair(instance, to));
+  const reaching = instances.flatMap((instance) => {
+    const poles = polesHeld(instance, to);
+    return poles === null ? [] : [{ instance, poles }];
+  });
   if (reaching.length === 0) return [];
-  const sure = energise(circuit, from, { ...condition, includePossible: false }).instances.some((each) =>
-    holdsPair(each, to),
+  const certain = energise(circuit, from, { ...condition, includePossible: false }).instances.map((each) =>
+    polesHeld(each, to),
   );
-  return reaching.flatMap((instance) =>
-    simpleWays(circuit, instance, to.hot, conducts).map((way): BackwardPath => {
+  return reaching.flatMap(({ instance, poles }) => {
+    const { target, pole } = meetingPoint(instance, to);
+    const sure = certain.some((each) => each === "both" || each === poles);
+    return simpleWays(circuit, instance, target, pole, conducts, budget).map((way): BackwardPath => {
       const failed = condition.failedShort ?? null;
       const via = way.elements;
       const unknownParts = via.filter((id) => isInDoubt(circuit, id) && id !== failed);
       return {
-        id: `${from.element} ${to.element} ${via.join(">")}|${failed ?? ""}`,
+        id: `${from.element} ${to.element} ${poles === "both" ? "" : `${poles} `}${via.join(">")}|${failed ?? ""}`,
         from: from.element,
         to: to.element,
         via,
         conductors: way.conductors,
         failed,
         certainty: sure && unknownParts.length === 0 ? "certain" : "possible",
+        poles,
         unknownParts,
       };
-    }),
-  );
+    });
+  });
 }
 
-function holdsPair({ supply, hot, ret }: Instance, { hot: plus, ret: minus }: Supply): boolean {
-  return (
-    (isReached(hot, plus) && isReached(ret, minus)) ||
-    (supply.domain !== "dc" && isReached(hot, minus) && isReached(ret, plus))
-  );
+function polesHeld({ supply, hot, ret }: Instance, to: Supply): BackwardPath["poles"] | null {
+  const onPins = (reach: Instance["hot"]) => isReached(reach, to.hot) || isReached(reach, to.ret);
+  const both =
+    (isReached(hot, to.hot) && isReached(ret, to.ret)) ||
+    (supply.domain !== "dc" && isReached(hot, to.ret) && isReached(ret, to.hot));
+  if (both) return "both";
+  if (to.domain !== "mains" || supply.domain !== "mains") return null;
+  return onPins(hot) ? "live" : onPins(ret) ? "neutral" : null;
+}
+
+/** The pole of the other source that a pair meets, and with which of its own. */
+function meetingPoint({ hot, ret }: Instance, to: Supply): { target: number; pole: "hot" | "ret" } {
+  if (isReached(hot, to.hot)) return { target: to.hot, pole: "hot" };
+  if (isReached(hot, to.ret) && !isReached(ret, to.hot)) return { target: to.ret, pole: "hot" };
+  return { target: isReached(ret, to.hot) ? to.hot : to.ret, pole: "ret" };
 }
 
 /** Whether the way through an element rests on something that is not known of it. */
@@ -158,77 +184,6 @@ function isInDoubt({ view }: Circuit, id: string): boolean {
     default:
       return false;
   }
-}
-
-interface Steps {
-  elements: string[];
-  conductors: string[];
-}
-
-/** The stages before an instance, each by one way, and every way without repeats inside it. */
-function simpleWays(circuit: Circuit, instance: Instance, target: number, conducts: Uint8Array): Steps[] {
-  const before: Steps[] =
-    instance.parent === null
-      ? [{ elements: [], conductors: [] }]
-      : throughTransfer(circuit, instance.parent.instance, instance.parent.transfer, conducts);
-  const inside = waysInside(circuit, instance, target, conducts);
-  return before
-    .flatMap((first) =>
-      inside.map((then) => ({
-        elements: withoutRepeats([...first.elements, ...then.elements]),
-        conductors: [...first.conductors, ...then.conductors],
-      })),
-    )
-    .slice(0, waysToTell);
-}
-
-function throughTransfer(
-  circuit: Circuit,
-  parent: Instance,
-  transfer: Transfer,
-  conducts: Uint8Array,
-): Steps[] {
-  const node = isReached(parent.hot, transfer.from.hot) ? transfer.from.hot : transfer.from.ret;
-  return simpleWays(circuit, parent, node, conducts).map((way) => ({
-    ...way,
-    elements: [...way.elements, transfer.element],
-  }));
-}
-
-const withoutRepeats = (ids: string[]) => ids.filter((id, index) => id !== ids[index - 1]);
-
-function waysInside(circuit: Circuit, instance: Instance, target: number, conducts: Uint8Array): Steps[] {
-  const start = instance.supply.hot;
-  // With alternating voltage either pole may be the one that meets the other source's.
-  const begin = isReached(instance.hot, target) ? start : instance.supply.ret;
-  const sense = instance.supply.domain === "dc" ? "with" : "either";
-  const found: Steps[] = [];
-  const seen = new Set([begin]);
-  const elements: string[] = [];
-  const conductors: string[] = [];
-  let steps = 0;
-  const go = (node: number) => {
-    if (found.length >= waysToTell || steps++ > 20_000) return;
-    if (node === target) {
-      found.push({ elements: [...elements], conductors: [...conductors] });
-      return;
-    }
-    for (const index of circuit.linksAt[node] ?? []) {
-      const link = circuit.links[index];
-      if (link === undefined || !passes(link, conducts[index] ?? 0, node, sense)) continue;
-      const next = link.a === node ? link.b : link.a;
-      if (seen.has(next)) continue;
-      seen.add(next);
-      if (link.element !== null) elements.push(link.element);
-      if (link.conductor !== null) conductors.push(link.conductor);
-      go(next);
-      if (link.element !== null) elements.pop();
-      if (link.conductor !== null) conductors.pop();
-      seen.delete(next);
-    }
-  };
-  go(begin);
-  return found;
 }
 
 const truthfulSources: Partial<Record<ElementOf<"indicator">["meaning"], string[]>> = {

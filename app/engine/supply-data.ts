@@ -61,8 +61,12 @@ export function batteryFullVolts({ chemistry, cellsInSeries }: ElementOf<"batter
 
 /** Highest voltage between a supply's poles, V (rms where it alternates); `null`: not known. */
 export function suppliedVolts(view: MapView, supply: Supply, facts: UnitFacts): number | null {
-  if (supply.domain === "mains") return facts.supplyVolts;
   const element = view.elements.get(supply.element);
+  if (supply.domain === "mains") {
+    // An inverter may make a higher voltage than the mains of the country; never judge it by the lower one.
+    if (element?.kind !== "converter") return facts.supplyVolts;
+    return element.outputVolts === null ? null : Math.max(facts.supplyVolts, element.outputVolts);
+  }
   switch (element?.kind) {
     case "battery":
       return batteryFullVolts(element);
@@ -79,6 +83,15 @@ export function suppliedVolts(view: MapView, supply: Supply, facts: UnitFacts): 
       return null;
   }
 }
+
+/** Highest voltage at mains potential in a unit, V rms: the supply's, or that of an inverter in it if higher. */
+export const highestMainsVolts = (view: MapView, facts: UnitFacts): number =>
+  Math.max(
+    facts.supplyVolts,
+    ...view
+      .ofKind("converter")
+      .map(({ output, outputVolts }) => (output === "mains" ? (outputVolts ?? 0) : 0)),
+  );
 
 /**
  * What limits the current that a supply can give for long, A. `Infinity`: nothing does; `null`: not known.
