@@ -4,6 +4,7 @@ import { bondingOf } from "./earthing";
 import type { InsulationGrade } from "./energy-map";
 import { figure } from "./figure";
 import { requiredDistances, type PollutionDegree } from "./insulation-data";
+import type { MapView } from "./map-view";
 import type { RuleSet } from "./rule-set";
 import type { UnitFacts } from "./unit-facts";
 
@@ -54,7 +55,8 @@ export function analyseInsulation(circuit: Circuit, ruleSet: RuleSet, facts: Uni
   }
   const bonding = bondingOf(circuit);
   for (const part of view.ofKind("accessible-part")) {
-    const bonded = facts.protectionClass === "I" && bonding.get(part.id)?.bonded === true;
+    const earthed = facts.protectionClass === "I" ? (bonding.get(part.id)?.verdict ?? "fail") : "fail";
+    const bonded = earthed === "pass";
     const grade = bonded ? "basic" : "reinforced";
     const degree: PollutionDegree = ruleSet.values.pollutionDegree.value >= 3 ? 3 : 2;
     const needed = requiredDistances(facts.supplyVolts, grade, {
@@ -67,7 +69,7 @@ export function analyseInsulation(circuit: Circuit, ruleSet: RuleSet, facts: Uni
       [part.id],
       grade,
       bonded ? ruleSet.values.insulationClassI.value : ruleSet.values.insulationClassII.value,
-      judgePart(view.name(part.id), bonded, part, needed),
+      judgePart(view.name(part.id), earthed, part, needed),
     );
   }
   return { barriers };
@@ -75,6 +77,13 @@ export function analyseInsulation(circuit: Circuit, ruleSet: RuleSet, facts: Uni
 
 export const hasMains = ({ view }: Circuit): boolean =>
   view.ofKind("mains-inlet").length > 0 || view.ofKind("converter").some(({ output }) => output === "mains");
+
+/** Where mains voltage comes from: the inlets, in a unit without one the inverters. */
+export function mainsSources(view: MapView): string[] {
+  const inlets = view.ofKind("mains-inlet").map(({ id }) => id);
+  const inverters = view.ofKind("converter").filter(({ output }) => output === "mains");
+  return inlets.length > 0 ? inlets : inverters.map(({ id }) => id);
+}
 
 function judgeGrade(name: string, grade: InsulationGrade): { verdict: Verdict3; text: string } {
   switch (grade) {
@@ -94,7 +103,7 @@ function judgeGrade(name: string, grade: InsulationGrade): { verdict: Verdict3; 
 
 function judgePart(
   name: string,
-  bonded: boolean,
+  earthed: Verdict3,
   part: {
     clearanceMm: number | null;
     creepageMm: number | null;
@@ -102,6 +111,13 @@ function judgePart(
   },
   needed: { clearanceMm: number; creepageMm: number } | null,
 ): { verdict: Verdict3; text: string } {
+  const bonded = earthed === "pass";
+  if (earthed === "unknown" && part.reinforcedFromMains !== "yes") {
+    return {
+      verdict: "unknown",
+      text: `Whether ${name} is well bonded to earth is not known, and it is not known to be double insulated from mains.`,
+    };
+  }
   if (!bonded && part.reinforcedFromMains === "no") {
     return { verdict: "fail", text: `${name} is neither bonded to earth nor double insulated from mains.` };
   }

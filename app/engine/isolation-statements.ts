@@ -128,38 +128,20 @@ export function earthStatements(circuit: Circuit, facts: UnitFacts): Statement[]
     ),
   );
   if (!hasMains(circuit) || facts.protectionClass !== "I") return statements;
-  for (const [id, { bonded, through, conductors }] of bondingOf(circuit)) {
-    const element = view.elements.get(id);
+  for (const { part, verdict, text, through, conductors } of bondingOf(circuit).values()) {
+    const element = view.elements.get(part);
     const doubleInsulated = element?.kind === "accessible-part" && element.reinforcedFromMains === "yes";
-    if (bonded)
-      statements.push(
-        say(
-          "protective-earth",
-          `bond ${id}`,
-          "good",
-          `${view.name(id)} is joined to the earth pin by ${list(conductors)}.`,
-          [id],
-          conductors,
-        ),
-      );
-    else if (!doubleInsulated && through.length > 0) {
-      statements.push(
-        say(
-          "protective-earth",
-          `bond ${id}`,
-          "danger",
-          `${view.name(id)} is joined to earth only through ${list(through.map((each) => view.name(each)))}.`,
-          [id, ...through],
-          conductors,
-        ),
-      );
-    } else if (!doubleInsulated) {
-      statements.push(
-        say("protective-earth", `bond ${id}`, "danger", `${view.name(id)} is not joined to the earth pin.`, [
-          id,
-        ]),
-      );
-    }
+    if (doubleInsulated && verdict !== "pass") continue;
+    statements.push(
+      say(
+        "protective-earth",
+        `bond ${part}`,
+        levelOf(verdict, "danger"),
+        text,
+        [part, ...through],
+        conductors,
+      ),
+    );
   }
   return statements;
 }

@@ -1,6 +1,8 @@
 import type { BenchCheck, CheckDefinition } from "../bench-check";
 import { answer, because, beforeTouching, caution, keyOf, makeDead } from "../check-parts";
+import { originName } from "../earthing";
 import { figure } from "../figure";
+import { mainsSources } from "../insulation";
 import type { InsulationBarrier } from "../analysis";
 import { clearanceCitation, creepageCitation } from "../insulation-data";
 import type { MapView } from "../map-view";
@@ -12,7 +14,7 @@ export const insulation: CheckDefinition = {
   id: "insulation",
   family: "insulation",
   derive(view, ruleSet, facts, analysis) {
-    const inlets = view.ofKind("mains-inlet").map(({ id }) => id);
+    const inlets = mainsSources(view);
     if (analysis.insulation.barriers.length === 0 && inlets.length === 0) return [];
     return [
       ...(facts.protectionClass === "I" && inlets.length > 0 ? [mainsToEarth(view, ruleSet, inlets)] : []),
@@ -44,7 +46,7 @@ function mainsToEarth(view: MapView, ruleSet: RuleSet, inlets: string[]): BenchC
       mains,
     ),
     from: "line and neutral, joined",
-    to: "the earth pin",
+    to: originName(view),
     limit,
     elements: inlets,
     conductors: mains,

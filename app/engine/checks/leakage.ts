@@ -1,38 +1,31 @@
-import type { Verdict3 } from "../analysis";
-import type { BenchCheck, CheckDefinition } from "../bench-check";
+import type { BenchCheck, CheckDefinition, ComputedAnswer } from "../bench-check";
 import { answer, because, caution, keyOf } from "../check-parts";
 import { circuitOf } from "../circuit";
 import { figure } from "../figure";
-import { leakageSum } from "../leakage";
+import { mainsSources } from "../insulation";
+import { earthCurrentLimit, judgeLeakage, leakageSum, type LeakageLimit, type LeakageSum } from "../leakage";
+import type { UnitFacts } from "../unit-facts";
 
 /** Current in the earth conductor of class I, and what a person who touches the unit would feel. */
 export const leakage: CheckDefinition = {
   id: "leakage",
   family: "leakage",
   derive(view, ruleSet, facts) {
-    const inlets = view.ofKind("mains-inlet").map(({ id }) => id);
+    const inlets = mainsSources(view);
     if (inlets.length === 0) return [];
-    const sum = leakageSum(circuitOf(view), facts);
-    const handheld = facts.handheld ?? null;
-    const { protectiveConductorCurrent, protectiveConductorCurrentHandheld, touchCurrent } = ruleSet.values;
-    const earthLimit =
-      handheld === false || protectiveConductorCurrentHandheld.value >= protectiveConductorCurrent.value
-        ? protectiveConductorCurrent
-        : protectiveConductorCurrentHandheld;
-    const note =
-      handheld === null && earthLimit !== protectiveConductorCurrent
-        ? ["Whether it is held in the hand is not stated: the tighter limit is used"]
-        : [];
+    const hasInlet = view.ofKind("mains-inlet").length > 0;
+    const circuit = circuitOf(view);
+    const sum = leakageSum(circuit, facts);
+    const leaking = sum.parts.flatMap(({ elements }) => elements);
+    const { touchCurrent } = ruleSet.values;
+    const earthLimit = earthCurrentLimit(circuit, ruleSet, facts);
     const touched = [
       ...view.ofKind("accessible-part"),
       ...view.ofKind("outlet").filter(({ supply }) => supply === "dc"),
     ].map(({ id }) => id);
     const checks: BenchCheck[] = [];
-    if (facts.protectionClass === "I") {
-      const verdict: Verdict3 = sum.milliamps > earthLimit.value ? "fail" : sum.complete ? "pass" : "unknown";
-      const total = because(
-        `In sum ${sum.complete ? "" : "at least "}${figure(sum.milliamps)} mA at ${figure(facts.supplyVolts)} V and ${figure(facts.supplyHertz)} Hz; the limit is ${figure(earthLimit.value)} mA.`,
-      );
+    // Without a mains inlet no protective conductor leaves the unit.
+    if (facts.protectionClass === "I" && hasInlet) {
       checks.push({
         key: keyOf("earth-current", ...inlets),
         family: "leakage",
@@ -40,7 +33,7 @@ export const leakage: CheckDefinition = {
         why: [
           because(
             "Capacitors and worn insulation send current to earth; if the earth breaks, a person carries it.",
-            [...inlets, ...sum.parts.flatMap(({ elements }) => elements)],
+            [...inlets, ...leaking],
           ),
         ],
         method: [
@@ -48,25 +41,27 @@ export const leakage: CheckDefinition = {
           "Every switch on, unit working. Measure, turn the plug round if it fits both ways, and take the higher.",
         ],
         cautions: [caution.live, caution.licence],
-        computed: sum.parts.length === 0 ? null : answer(verdict, [total, ...sum.parts]),
+        computed: computedSum(sum, earthLimit, facts),
         asks: {
           kind: "reading",
           quantity: "Protective conductor current",
           unit: "mA",
-          limit: { kind: "at-most", value: earthLimit.value, unit: "mA", citation: earthLimit.citation },
+          limit: { kind: "at-most", value: earthLimit.milliamps, unit: "mA", citation: earthLimit.citation },
           instrument: {
             kind: "leakage-meter",
-            range: `0 to ${figure(Math.max(10, earthLimit.value * 2))} mA alternating`,
+            range: `0 to ${figure(Math.max(10, earthLimit.milliamps * 2))} mA alternating`,
           },
-          conditions: ["All switches on", "The higher of both plug positions", ...note],
+          conditions: ["All switches on", "The higher of both plug positions", ...earthLimit.notes],
         },
         photo: "none",
         citations: [earthLimit.citation],
-        subjects: { elements: [...inlets, ...sum.parts.flatMap(({ elements }) => elements)], conductors: [] },
+        subjects: { elements: [...inlets, ...leaking], conductors: [] },
       });
     }
+    // Without an earth to take it, all that leaks reaches whoever touches the unit.
+    const unearthed = facts.protectionClass === "II" || !hasInlet;
     if (
-      facts.protectionClass === "II" ||
+      unearthed ||
       view.ofKind("accessible-part").some(({ reinforcedFromMains }) => reinforcedFromMains === "yes")
     ) {
       checks.push({
@@ -86,7 +81,13 @@ export const leakage: CheckDefinition = {
           "Turn the plug round if it fits both ways, and take the higher.",
         ],
         cautions: [caution.live, caution.licence],
-        computed: null,
+        computed: unearthed
+          ? computedSum(
+              sum,
+              { milliamps: touchCurrent.value, citation: touchCurrent.citation, notes: [] },
+              facts,
+            )
+          : null,
         asks: {
           kind: "reading",
           quantity: "Touch current",
@@ -100,9 +101,18 @@ export const leakage: CheckDefinition = {
           touchCurrent.citation,
           { standard: "IEC 60990", clause: "Figure 4 network", edition: "not checked", mark: "V" },
         ],
-        subjects: { elements: [...inlets, ...touched], conductors: [] },
+        subjects: { elements: [...new Set([...inlets, ...touched, ...leaking])], conductors: [] },
       });
     }
     return checks;
   },
 };
+
+/** The sum of what is known against a limit; `null` when nothing on the map leaks, so that only the bench can tell. */
+function computedSum(sum: LeakageSum, limit: LeakageLimit, facts: UnitFacts): ComputedAnswer | null {
+  if (sum.parts.length === 0) return null;
+  const total = because(
+    `In sum ${sum.complete ? "" : "at least "}${figure(sum.milliamps)} mA at ${figure(facts.supplyVolts)} V and ${figure(facts.supplyHertz)} Hz; the limit is ${figure(limit.milliamps)} mA.`,
+  );
+  return answer(judgeLeakage(sum, limit), [total, ...sum.parts]);
+}

@@ -1,9 +1,20 @@
 import type { BenchCheck, CheckDefinition } from "../bench-check";
-import { answer, because, beforeTouching, caution, examination, keyOf, worstVerdict } from "../check-parts";
+import {
+  answer,
+  because,
+  beforeTouching,
+  caution,
+  examination,
+  keyOf,
+  practice,
+  worstVerdict,
+} from "../check-parts";
 import { circuitOf } from "../circuit";
 import { earthLimit } from "../earth-limit";
-import { bondingOf, devicesInEarth } from "../earthing";
+import { bondingOf, devicesInEarth, originName } from "../earthing";
 import { figure } from "../figure";
+import { hasMains } from "../insulation";
+import type { MapView } from "../map-view";
 import type { Citation } from "../rule-set";
 import type { Verdict3 } from "../analysis";
 import { list } from "../wording";
@@ -16,13 +27,21 @@ const neverSwitched: Citation = {
   note: "Seen for the rule; the clause's wording from memory.",
 };
 
+interface Judged {
+  verdict: Verdict3;
+  text: string;
+  ids: string[];
+}
+
 /** Class I: each part that can be touched has a low resistance to the earth pin, and nothing can open that way. */
 export const protectiveEarth: CheckDefinition = {
   id: "protective-earth",
   family: "protective-earth",
   derive(view, ruleSet, facts) {
-    if (facts.protectionClass !== "I" || view.ofKind("mains-inlet").length === 0) return [];
     const circuit = circuitOf(view);
+    const outlets = view.ofKind("outlet").filter(({ supply }) => supply === "mains");
+    if (!hasMains(circuit)) return [];
+    if (facts.protectionClass !== "I") return outlets.length > 0 ? [contactsWithoutEarth(view)] : [];
     const bonding = bondingOf(circuit);
     const interrupting = devicesInEarth(circuit);
     const limit = earthLimit(ruleSet, facts);
@@ -31,34 +50,34 @@ export const protectiveEarth: CheckDefinition = {
     const parts = view
       .ofKind("accessible-part")
       .filter(({ reinforcedFromMains }) => reinforcedFromMains !== "yes");
-    const outlets = view.ofKind("outlet").filter(({ supply }) => supply === "mains");
-
-    const joined = parts.map(({ id }): { verdict: Verdict3; text: string; ids: string[] } => {
-      const found = bonding.get(id);
-      if (found?.bonded === true)
-        return {
-          verdict: "pass",
-          text: `${view.name(id)} is joined to the earth pin by ${list(found.conductors)}.`,
-          ids: [id],
-        };
-      const through = found?.through ?? [];
-      return through.length > 0
-        ? {
-            verdict: "fail",
-            text: `${view.name(id)} is joined to earth only through ${list(through.map((each) => view.name(each)))}.`,
-            ids: [id, ...through],
-          }
-        : { verdict: "fail", text: `${view.name(id)} is not joined to the earth pin.`, ids: [id] };
-    });
-    const opened = interrupting.map((id) => ({
-      verdict: "fail" as const,
+    const spared = new Set(
+      view.ofKind("accessible-part").flatMap(({ id }) => (parts.some((each) => each.id === id) ? [] : [id])),
+    );
+    const joined: Judged[] = [...bonding.values()]
+      .filter(({ part }) => !spared.has(part))
+      .map(({ part, verdict, text, through }) => ({ verdict, text, ids: [part, ...through] }));
+    // Terminals joined to nothing but each other earth nobody: without any part or contact nothing was judged.
+    if (![...bonding.keys()].some((id) => !spared.has(id) && !inlets.includes(id)))
+      joined.push({
+        verdict: "unknown",
+        text: "Nothing on the map is said to be earthed: no part, no contact, no terminal.",
+        ids: inlets,
+      });
+    if (inlets.length > 0 && !inlets.some((id) => bonding.has(id)))
+      joined.push({
+        verdict: "fail",
+        text: `${list(inlets.map((id) => view.name(id)))} has no earth pin.`,
+        ids: inlets,
+      });
+    const opened = interrupting.map((id): Judged => ({
+      verdict: "fail",
       text: `${view.name(id)} sits in the protective conductor.`,
       ids: [id],
     }));
-    const none = {
-      verdict: "pass" as const,
+    const none: Judged = {
+      verdict: "pass",
       text: "No switch, fuse or other device sits in a protective conductor.",
-      ids: [] as string[],
+      ids: [],
     };
     const all = [...joined, ...(opened.length > 0 ? opened : [none])];
 
@@ -74,7 +93,7 @@ export const protectiveEarth: CheckDefinition = {
         ),
       ],
       method: [
-        "Follow the green-and-yellow conductor from the earth pin to each part. It passes no switch, no fuse, no plug-in link.",
+        `Follow the green-and-yellow conductor from ${originName(view)} to each part. It passes no switch, no fuse, no plug-in link.`,
         "Look at each joint: own fixing, toothed washer or bare metal under it, no paint, locked against turning.",
       ],
       cautions: beforeTouching(view),
@@ -114,14 +133,17 @@ export const protectiveEarth: CheckDefinition = {
         ],
         method: [
           "Null the leads and note that you did.",
-          `Measure from the plug's earth pin to bare metal of ${view.name(id)} with at least ${figure(ruleSet.values.protectiveEarthTestAmps.value)} A.`,
+          `Measure from ${originName(view)} to bare metal of ${view.name(id)} with at least ${figure(ruleSet.values.protectiveEarthTestAmps.value)} A.`,
           "Flex the cord along its length and at both ends while you watch the reading; take the highest.",
         ],
         cautions: [...beforeTouching(view), caution.earthLoop],
         computed: null,
         asks: {
           kind: "reading",
-          quantity: "Resistance from earth pin to part",
+          quantity:
+            inlets.length > 0
+              ? "Resistance from earth pin to part"
+              : "Resistance from earth terminal to part",
           unit: "Ω",
           limit: {
             kind: "at-most",
@@ -143,3 +165,33 @@ export const protectiveEarth: CheckDefinition = {
     return [path, ...readings];
   },
 };
+
+/** Class II has no earth to hand on, so what is plugged into its mains outlets has none either. */
+function contactsWithoutEarth(view: MapView): BenchCheck {
+  const outlets = view
+    .ofKind("outlet")
+    .filter(({ supply }) => supply === "mains")
+    .map(({ id }) => id);
+  const names = list(outlets.map((id) => view.name(id)));
+  return {
+    key: keyOf("earth-path"),
+    family: "protective-earth",
+    title: "No outlet pretends to be earthed",
+    why: [
+      because("A class II unit has no earth, and what is plugged into its outlets may rely on one.", outlets),
+    ],
+    method: [`Look into ${names}: a plug with an earth contact must not fit.`],
+    cautions: beforeTouching(view),
+    computed: answer("unknown", [
+      because(`Whether ${names} takes plugs with an earth contact is not on the map.`, outlets),
+    ]),
+    asks: examination(
+      "Does no plug with an earth contact fit?",
+      "None fits",
+      "One fits, or an earth contact is there",
+    ),
+    photo: "required",
+    citations: [practice("outlets of class II units", "From memory.")],
+    subjects: { elements: outlets, conductors: [] },
+  };
+}
