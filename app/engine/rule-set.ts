@@ -36,6 +36,17 @@ export type ProtectiveEarthRule =
       allowance: RuleValue;
     };
 
+/** Limit of the protective conductor current of heating appliances, by their power. */
+export interface PerKilowattRule {
+  kind: "per-kilowatt";
+  /** Applies above this power; the ordinary limit holds up to it. */
+  above: RuleValue;
+  perKilowatt: RuleValue;
+  /** Never below this. */
+  least: RuleValue;
+  cap: RuleValue;
+}
+
 /** One profile of test limits. A verdict never takes limits from two of them. */
 export interface RuleSet {
   key: string;
@@ -55,6 +66,7 @@ export interface RuleSet {
     insulationMainsToElv: RuleValue;
     protectiveConductorCurrent: RuleValue;
     protectiveConductorCurrentHandheld: RuleValue;
+    protectiveConductorCurrentHeating: PerKilowattRule;
     touchCurrent: RuleValue;
     contactGap: RuleValue;
     residualVolts: RuleValue;

@@ -3,7 +3,7 @@ import { analyseBatteries } from "./battery-analysis";
 import type { Circuit } from "./circuit";
 import { figure } from "./figure";
 import { hasMains } from "./insulation";
-import { leakageSum } from "./leakage";
+import { judgeLeakage, leakageLimit, leakageSum } from "./leakage";
 import type { RuleSet } from "./rule-set";
 import { fromReason, levelOf, say, type Results } from "./statement-parts";
 import { chargesComplete, pinCharges, settingText } from "./stored-charge";
@@ -70,16 +70,14 @@ export function insulationStatements({ insulation }: Results): Statement[] {
 export function leakageStatements(circuit: Circuit, ruleSet: RuleSet, facts: UnitFacts): Statement[] {
   const sum = leakageSum(circuit, facts);
   if (!hasMains(circuit) || sum.parts.length === 0) return [];
-  const limit =
-    facts.protectionClass === "I" ? ruleSet.values.protectiveConductorCurrent : ruleSet.values.touchCurrent;
-  const verdict: Verdict3 = sum.milliamps > limit.value ? "fail" : sum.complete ? "pass" : "unknown";
+  const limit = leakageLimit(circuit, ruleSet, facts);
   const amount = `${sum.complete ? "" : "at least "}${figure(sum.milliamps)} mA`;
   return [
     say(
       "leakage",
       "sum",
-      levelOf(verdict),
-      `Capacitors and supplies leak ${amount} to earth at most; the limit is ${figure(limit.value)} mA.`,
+      levelOf(judgeLeakage(sum, limit)),
+      `Capacitors and supplies leak ${amount} to earth at most; the limit is ${figure(limit.milliamps)} mA.`,
       sum.parts.flatMap(({ elements }) => elements),
     ),
   ];

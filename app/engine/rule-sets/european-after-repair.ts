@@ -29,6 +29,7 @@ const earth = cite(
   "V",
   "Seen for the standard's predecessor; up to 16 A and 1.5 mm².",
 );
+const heating = cite("protective conductor current, heating above 3.5 kW", "V");
 const insulation = cite("insulation resistance", "M");
 
 /** Test after repair and recurrent test of electrical equipment, as used in Europe. */
@@ -63,11 +64,22 @@ export const europeanAfterRepair: RuleSet = {
       cite("insulation resistance", "V", "Only with built-in suppressors."),
     ),
     insulationClassI: value(1.0, "MΩ", insulation),
-    insulationClassIHeating: value(0.3, "MΩ", insulation),
+    insulationClassIHeating: value(
+      0.3,
+      "MΩ",
+      cite("insulation resistance, class I with heating elements", "M", "Elements switched on for the test."),
+    ),
     insulationClassII: value(2.0, "MΩ", insulation),
     insulationMainsToElv: value(2.0, "MΩ", insulation),
     protectiveConductorCurrent: value(3.5, "mA", cite("protective conductor current", "V")),
     protectiveConductorCurrentHandheld: value(3.5, "mA", cite("protective conductor current", "V")),
+    protectiveConductorCurrentHeating: {
+      kind: "per-kilowatt",
+      above: value(3.5, "kW", heating),
+      perKilowatt: value(1, "mA/kW", heating),
+      least: value(3.5, "mA", heating),
+      cap: value(10, "mA", heating),
+    },
     touchCurrent: value(0.5, "mA", cite("touch current", "V")),
     contactGap: fullDisconnectionGap,
     residualVolts,

@@ -26,6 +26,11 @@ const value = (amount: number, unit: string, citation: Citation): RuleValue => (
 
 const weak = "Seen in a secondary page only.";
 const insulation = cite("insulation resistance", "V", weak);
+const heating = cite(
+  "protective conductor current, class I heating",
+  "V",
+  `${weak} Taken for every heating appliance: stricter than 3.5 mA below 4.7 kW.`,
+);
 const notDoubled = `${weak} The code doubles it where there is no control device or an all-pole 3 mm gap; that is not used here, which is stricter.`;
 
 /** In-service inspection and testing as practised in the United Kingdom. */
@@ -56,12 +61,12 @@ export const ukInService: RuleSet = {
     ),
     insulationClassI: value(1.0, "MΩ", insulation),
     insulationClassIHeating: value(
-      0.3,
+      1.0,
       "MΩ",
       cite(
         "insulation resistance",
         "V",
-        "Sources disagree whether it is for 3 kW and above or below; used here only when the workshop says so.",
+        "The code has 0.3 MΩ for some heating appliances. Sources disagree whether it is for 3 kW and above or below, so the ordinary class I value is used here.",
       ),
     ),
     insulationClassII: value(2.0, "MΩ", insulation),
@@ -76,6 +81,13 @@ export const ukInService: RuleSet = {
       "mA",
       cite("protective conductor current, hand-held class I", "V", notDoubled),
     ),
+    protectiveConductorCurrentHeating: {
+      kind: "per-kilowatt",
+      above: value(0, "kW", heating),
+      perKilowatt: value(0.75, "mA/kW", heating),
+      least: value(0.75, "mA", heating),
+      cap: value(5, "mA", heating),
+    },
     touchCurrent: value(0.25, "mA", cite("touch current, class II", "V", notDoubled)),
     contactGap: fullDisconnectionGap,
     residualVolts,
