@@ -3,11 +3,13 @@ import { inTransaction, type Reader, tables, type Transaction } from "~/db/clien
 import { appendEntry } from "~/services/audit/append-entry.server";
 import type { ServiceContext } from "~/services/context.server";
 import { ConflictError, ForbiddenError, GuardError, NotFoundError } from "~/services/errors";
+import { rolesHeld } from "~/services/people/role-holders.server";
 import { type Action, decide, type UnitStanding } from "~/workflow/permissions";
+import type { Role } from "~/workflow/roles";
 import { stateTitles } from "~/workflow/states";
 import { type GuardOf, transition, type TransitionName, transitions } from "~/workflow/transitions";
 
-const { benchTurns, people, units } = tables;
+const { benchTurns, formerBuilders, people, units } = tables;
 
 export type UnitRow = typeof units.$inferSelect;
 
@@ -26,9 +28,11 @@ export interface Act {
   /** The unit as it stands under the row lock. */
   unit: StandingUnit;
   at: Date;
+  /** What the acting person holds in the workshop at this moment, which may be less than when the request began. */
+  roles: readonly Role[];
 }
 
-/** Reads a unit of this workshop with everybody who inspected it; null when there is none, or it was discarded. */
+/** Reads a unit of this workshop with everybody who inspected it or built on it before; null when there is none, or it was discarded. */
 export async function findUnit(
   tx: Reader,
   workshopId: number,
@@ -45,12 +49,20 @@ export async function findUnit(
     .selectDistinct({ inspectorId: benchTurns.inspectorId })
     .from(benchTurns)
     .where(eq(benchTurns.unitId, unit.id));
-  return { ...unit, inspectorIds: turns.map((turn) => turn.inspectorId) };
+  const former = await tx
+    .select({ personId: formerBuilders.personId })
+    .from(formerBuilders)
+    .where(eq(formerBuilders.unitId, unit.id));
+  return {
+    ...unit,
+    inspectorIds: turns.map((turn) => turn.inspectorId),
+    formerBuilderIds: former.map((row) => row.personId),
+  };
 }
 
 /**
- * Does something to one unit: locks its row, asks the permission table again under the lock, does the work, raises
- * the version and appends the audit entry, all in one transaction. `act` names the entry where the action's name says
+ * Does something to one unit: locks its row, asks the permission table again under the lock with the roles held at
+ * that moment, does the work, raises the version and appends the audit entry, all in one transaction. `act` names the entry where the action's name says
  * too little; null leaves it out, for the saving of a draft while it is typed (its submission pins what counts).
  *
  * @throws NotFoundError, ForbiddenError, ConflictError when the unit changed since the form was made
@@ -62,9 +74,10 @@ export function actOnUnit<T>(
   work: (act: Act) => Promise<{ result: T; detail?: Record<string, unknown>; act?: string | null }>,
 ): Promise<T> {
   return inTransaction(context.db, async (tx) => {
-    const { unit, at } = await lockUnit(context, tx, input);
-    authoriseUnder(context, action, unit);
-    const { result, detail, act } = await work({ tx, unit, at });
+    const locked = await lockUnit(context, tx, input);
+    const { unit, at } = locked;
+    authoriseUnder(context, action, locked);
+    const { result, detail, act } = await work(locked);
     await touch(tx, unit, at, {});
     if (act === null) return result;
     await appendEntry(tx, {
@@ -105,42 +118,55 @@ export function moveUnit<Name extends TransitionName, T>(
   input: UnitActInput,
   move: Move<Name, T>,
 ): Promise<T> {
-  return inTransaction(context.db, async (tx) => {
-    const { unit, at } = await lockUnit(context, tx, input);
-    const outcome = transition(unit.state, name);
-    if (!outcome.ok) throw await staleConflict(tx, unit);
-    authoriseUnder(context, transitions[name].action, unit);
-    const act = { tx, unit, at };
-    const answers: Record<string, readonly string[]> = await move.guards(act);
-    const reasons = Object.values(answers).flat();
-    if (reasons.length > 0) throw new GuardError(reasons);
-    const { result, detail, changes } = await move.work(act);
-    await touch(tx, unit, at, { ...changes, state: outcome.to });
-    await appendEntry(tx, {
-      workshopId: context.workshop.id,
-      at,
-      actorId: context.person.id,
-      act: `unit.${name}`,
-      unitId: unit.id,
-      fromState: unit.state,
-      toState: outcome.to,
-      detail: { revision: unit.revision, ...detail },
-    });
-    return result;
-  });
+  return inTransaction(context.db, (tx) => moveUnitWithin(context, tx, name, input, move));
 }
 
-async function lockUnit(context: ServiceContext, tx: Transaction, input: UnitActInput) {
+/**
+ * {@link moveUnit} within the transaction of another unit's move. Whoever locks several units locks the one with the
+ * highest id first, so that no two transactions wait for each other.
+ */
+export async function moveUnitWithin<Name extends TransitionName, T>(
+  context: ServiceContext,
+  tx: Transaction,
+  name: Name,
+  input: UnitActInput,
+  move: Move<Name, T>,
+): Promise<T> {
+  const act = await lockUnit(context, tx, input);
+  const { unit, at } = act;
+  const outcome = transition(unit.state, name);
+  if (!outcome.ok) throw await staleConflict(tx, unit);
+  authoriseUnder(context, transitions[name].action, act);
+  const answers: Record<string, readonly string[]> = await move.guards(act);
+  const reasons = Object.values(answers).flat();
+  if (reasons.length > 0) throw new GuardError(reasons);
+  const { result, detail, changes } = await move.work(act);
+  await touch(tx, unit, at, { ...changes, state: outcome.to });
+  await appendEntry(tx, {
+    workshopId: context.workshop.id,
+    at,
+    actorId: context.person.id,
+    act: `unit.${name}`,
+    unitId: unit.id,
+    fromState: unit.state,
+    toState: outcome.to,
+    detail: { revision: unit.revision, ...detail },
+  });
+  return result;
+}
+
+async function lockUnit(context: ServiceContext, tx: Transaction, input: UnitActInput): Promise<Act> {
   const unit = await findUnit(tx, context.workshop.id, input.unitNumber, "update");
   if (!unit) throw new NotFoundError(`Unit ${input.unitNumber}`);
   if (input.expectedVersion !== undefined && input.expectedVersion !== unit.version) {
     throw await staleConflict(tx, unit);
   }
-  return { unit, at: context.now() };
+  const roles = await rolesHeld(tx, context.workshop.id, context.person.id);
+  return { tx, unit, at: context.now(), roles };
 }
 
-function authoriseUnder(context: ServiceContext, action: Action, unit: UnitStanding): void {
-  const decision = decide(action, { id: context.person.id, roles: context.workshop.roles }, unit);
+function authoriseUnder(context: ServiceContext, action: Action, { unit, roles }: Act): void {
+  const decision = decide(action, { id: context.person.id, roles }, unit);
   if (!decision.allowed) throw new ForbiddenError(decision.reason);
 }
 

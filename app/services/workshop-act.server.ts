@@ -1,11 +1,12 @@
-import { and, eq } from "drizzle-orm";
+import { eq } from "drizzle-orm";
 import { inTransaction, tables, type Transaction } from "~/db/client.server";
 import { appendEntry } from "~/services/audit/append-entry.server";
 import type { ServiceContext } from "~/services/context.server";
 import { ForbiddenError, NotFoundError } from "~/services/errors";
+import { rolesHeld } from "~/services/people/role-holders.server";
 import { type Action, decide } from "~/workflow/permissions";
 
-const { memberships, workshops } = tables;
+const { workshops } = tables;
 
 export interface WorkshopAct {
   tx: Transaction;
@@ -35,11 +36,8 @@ export function actOnWorkshop<T>(
       .where(eq(workshops.id, context.workshop.id))
       .for("update");
     if (!workshop) throw new NotFoundError("The workshop");
-    const held = await tx
-      .select({ role: memberships.role })
-      .from(memberships)
-      .where(and(eq(memberships.workshopId, workshop.id), eq(memberships.personId, context.person.id)));
-    const decision = decide(action, { id: context.person.id, roles: held.map((row) => row.role) });
+    const roles = await rolesHeld(tx, workshop.id, context.person.id);
+    const decision = decide(action, { id: context.person.id, roles });
     if (!decision.allowed) throw new ForbiddenError(decision.reason);
     const at = context.now();
     const { result, detail, unchanged } = await work({ tx, workshop, at });

@@ -7,11 +7,13 @@ const BUILDER = 1;
 const INSPECTOR = 2;
 const EARLIER_INSPECTOR = 3;
 const STRANGER = 4;
+const FORMER_BUILDER = 5;
 
 function unit(changes: Partial<UnitStanding> = {}): UnitStanding {
   return {
     state: "draft",
     builderId: BUILDER,
+    formerBuilderIds: [FORMER_BUILDER],
     inspectorId: INSPECTOR,
     inspectorIds: [INSPECTOR, EARLIER_INSPECTOR],
     ...changes,
@@ -49,8 +51,11 @@ describe("the permission table", () => {
     const submitted = unit({ state: "submitted" });
     expect(may("bench.take", BUILDER, ["builder", "inspector"], submitted)).toBe(false);
     expect(may("bench.take", STRANGER, ["inspector"], submitted)).toBe(true);
-    const own = unit({ state: "on_bench", inspectorId: BUILDER });
-    expect(may("bench.work", BUILDER, ["inspector"], own)).toBe(false);
+    for (const person of [BUILDER, FORMER_BUILDER]) {
+      const own = unit({ state: "on_bench", inspectorId: person });
+      expect(may("bench.work", person, ["inspector"], own)).toBe(false);
+    }
+    expect(may("bench.take", FORMER_BUILDER, ["inspector"], submitted)).toBe(false);
   });
 
   test("only the inspector who has it on the bench works it", () => {
@@ -64,10 +69,26 @@ describe("the permission table", () => {
     const waiting = unit({ state: "awaiting_signature" });
     for (const action of ["signing.sign", "signing.refuse", "signing.send-back"] as const) {
       expect(may(action, STRANGER, ["electrician"], waiting)).toBe(true);
-      for (const person of [BUILDER, INSPECTOR, EARLIER_INSPECTOR]) {
+      for (const person of [BUILDER, FORMER_BUILDER, INSPECTOR, EARLIER_INSPECTOR]) {
         expect(may(action, person, roles, waiting), `${action} by ${person}`).toBe(false);
       }
     }
+  });
+
+  test("whoever built on it before it was handed on can neither edit it nor begin a new version", () => {
+    expect(may("unit.edit", FORMER_BUILDER, ["builder"], unit())).toBe(false);
+    for (const state of ["signed", "refused", "withdrawn"] as const) {
+      expect(may("unit.succeed", FORMER_BUILDER, ["builder"], unit({ state }))).toBe(false);
+      expect(may("unit.succeed", BUILDER, ["builder"], unit({ state }))).toBe(true);
+    }
+    expect(may("unit.succeed", BUILDER, ["builder"], unit({ state: "superseded" }))).toBe(false);
+  });
+
+  test("a steward moves on what is stuck: from an absent inspector's bench, from a builder who left", () => {
+    expect(may("bench.reclaim", STRANGER, ["steward"], unit({ state: "on_bench" }))).toBe(true);
+    expect(may("bench.reclaim", INSPECTOR, ["inspector"], unit({ state: "on_bench" }))).toBe(false);
+    expect(may("unit.hand-over", STRANGER, ["steward"], unit({ state: "sent_back" }))).toBe(true);
+    expect(may("unit.hand-over", BUILDER, ["builder"], unit({ state: "sent_back" }))).toBe(false);
   });
 
   test("tells why", () => {

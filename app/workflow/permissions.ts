@@ -5,11 +5,11 @@ import { stateTitles, type UnitState } from "./states";
 type Relation =
   /** built it */
   | "builder-of-it"
-  /** did not build it */
+  /** neither builds it nor ever built on it */
   | "not-its-builder"
-  /** holds it on the bench now, and did not build it */
+  /** holds it on the bench now, and never built on it */
   | "its-inspector"
-  /** neither built it nor ever inspected it */
+  /** never built on it and never inspected it */
   | "independent";
 
 interface Permission {
@@ -32,6 +32,14 @@ export const permissions = {
   "unit.edit": { roles: ["builder"], states: ["draft", "sent_back"], relation: "builder-of-it" },
   "unit.discard": { roles: ["builder"], states: ["draft"], relation: "builder-of-it" },
   "unit.submit": { roles: ["builder"], states: ["draft", "sent_back"], relation: "builder-of-it" },
+  /** To begin a new version of it; it stays in force until that one is signed. */
+  "unit.succeed": {
+    roles: ["builder"],
+    states: ["signed", "refused", "withdrawn"],
+    relation: "builder-of-it",
+  },
+  /** To give it to another builder, when its own has left. */
+  "unit.hand-over": { roles: ["steward"], states: ["draft", "sent_back"] },
   "finding.answer": { roles: ["builder"], states: ["sent_back"], relation: "builder-of-it" },
   "map.evaluate": { roles: everyone },
   "bench.queue": { roles: ["inspector", "steward"] },
@@ -39,6 +47,8 @@ export const permissions = {
   "bench.read": { roles: ["inspector", "electrician", "steward"] },
   "bench.work": { roles: ["inspector"], states: ["on_bench"], relation: "its-inspector" },
   "bench.release": { roles: ["inspector"], states: ["on_bench"], relation: "its-inspector" },
+  /** To put it back into the queue for an inspector who is absent. */
+  "bench.reclaim": { roles: ["steward"], states: ["on_bench"] },
   "bench.finish": { roles: ["inspector"], states: ["on_bench"], relation: "its-inspector" },
   "bench.send-back": { roles: ["inspector"], states: ["on_bench"], relation: "its-inspector" },
   "signing.queue": { roles: ["electrician", "steward"] },
@@ -49,6 +59,8 @@ export const permissions = {
   "signing.refuse": { roles: ["electrician"], states: ["awaiting_signature"], relation: "independent" },
   "signing.send-back": { roles: ["electrician"], states: ["awaiting_signature"], relation: "independent" },
   "record.withdraw": { roles: ["electrician"], states: ["signed"] },
+  /** Whoever signs a new version thereby ends the signature on the one before it. */
+  "record.supersede": { roles: ["electrician"], states: ["signed"] },
   "archive.search": { roles: ["archivist", "electrician", "inspector", "steward"] },
   "archive.read": { roles: everyone, states: ["signed", "refused", "withdrawn", "superseded"] },
   "trail.read": { roles: ["archivist", "electrician", "steward"] },
@@ -62,11 +74,14 @@ export const permissions = {
 
 export type Action = keyof typeof permissions;
 
-/** What {@link decide} must know of a unit. `inspectorIds` lists everybody who ever took it on the bench. */
+/** What {@link decide} must know of a unit. */
 export interface UnitStanding {
   state: UnitState;
   builderId: number;
+  /** Everybody who built on it before it was handed to its builder of now. */
+  formerBuilderIds: readonly number[];
   inspectorId: number | null;
+  /** Everybody who ever took it on the bench. */
   inspectorIds: readonly number[];
 }
 
@@ -98,16 +113,17 @@ export function decide(
 }
 
 function objectionTo(relation: Relation, personId: number, unit: UnitStanding): string | null {
+  const builtOnIt = unit.builderId === personId || unit.formerBuilderIds.includes(personId);
   switch (relation) {
     case "builder-of-it":
       return unit.builderId === personId ? null : "Only the person who built the unit may do this.";
     case "not-its-builder":
-      return unit.builderId === personId ? "You built this unit; somebody else must inspect it." : null;
+      return builtOnIt ? "You built this unit; somebody else must inspect it." : null;
     case "its-inspector":
-      if (unit.builderId === personId) return "You built this unit; somebody else must inspect it.";
+      if (builtOnIt) return "You built this unit; somebody else must inspect it.";
       return unit.inspectorId === personId ? null : "Another inspector has this unit on the bench.";
     case "independent":
-      if (unit.builderId === personId) return "You built this unit; somebody else must decide on it.";
+      if (builtOnIt) return "You built this unit; somebody else must decide on it.";
       return unit.inspectorIds.includes(personId)
         ? "You inspected this unit; somebody else must decide on it."
         : null;

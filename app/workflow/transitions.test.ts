@@ -22,6 +22,7 @@ describe("a unit's life", () => {
         "awaiting_signature → refused",
         "sent_back → submitted",
         "signed → withdrawn",
+        "signed → superseded",
       ].sort(),
     );
   });
@@ -42,6 +43,12 @@ describe("a unit's life", () => {
         else expect(outcome).toEqual({ ok: false, reason: "stale", state });
       }
     }
+  });
+
+  test("every state is reached, and everybody hears of what ends a signature", () => {
+    const reached: readonly string[] = names.map((name) => transitions[name].to);
+    for (const state of unitStates.filter((one) => one !== "draft")) expect(reached).toContain(state);
+    expect(transitions.withdraw.tells).toEqual(["builder", "inspector", "electricians"]);
   });
 
   test("a signature meets every guard of the design", () => {

@@ -19,13 +19,28 @@ export const guards = [
 
 export type Guard = (typeof guards)[number];
 
+/**
+ * Whom a hand-over is told to. The acting person is never told, nor anybody who has left the workshop, and nobody
+ * twice: see services/mail/hand-over.server.ts.
+ */
+export type Audience =
+  | "builder"
+  /** who has it on the bench, or had it there last */
+  | "inspector"
+  /** every inspector who may take it */
+  | "inspectors"
+  /** every electrician who may decide on it */
+  | "signers"
+  /** every electrician, whatever they have done with it */
+  | "electricians";
+
 interface Transition {
   from: readonly UnitState[];
   to: UnitState;
   action: Action;
   guards: readonly Guard[];
-  /** Who hears of it by mail. */
-  tells: readonly ("builder" | "inspectors" | "inspector" | "electricians")[];
+  /** Who hears of it by mail; whoever belongs to several is told as the first of them. */
+  tells: readonly Audience[];
   /** The verb of the audit entry, as shown in the trail. */
   told: string;
 }
@@ -56,12 +71,20 @@ export const transitions = {
     tells: [],
     told: "put it back in the queue",
   },
+  reclaim: {
+    from: ["on_bench"],
+    to: "submitted",
+    action: "bench.reclaim",
+    guards: ["reason-given"],
+    tells: ["inspector"],
+    told: "put it back in the queue for an absent inspector",
+  },
   finish: {
     from: ["on_bench"],
     to: "awaiting_signature",
     action: "bench.finish",
     guards: ["checks-decided", "photos-present"],
-    tells: ["electricians", "builder"],
+    tells: ["builder", "signers"],
     told: "finished the bench sheet",
   },
   sendBackFromBench: {
@@ -116,8 +139,17 @@ export const transitions = {
     to: "withdrawn",
     action: "record.withdraw",
     guards: ["reason-given", "signer-authenticated"],
-    tells: ["builder", "inspector"],
+    tells: ["builder", "inspector", "electricians"],
     told: "withdrew the signature",
+  },
+  /** Brought about by the signing of a newer version of the unit, in the same transaction. */
+  supersede: {
+    from: ["signed"],
+    to: "superseded",
+    action: "record.supersede",
+    guards: [],
+    tells: ["builder"],
+    told: "signed a newer version in its place",
   },
 } as const satisfies Record<string, Transition>;
 

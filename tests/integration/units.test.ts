@@ -54,7 +54,10 @@ async function sentBack(workshop: TestWorkshop, findings = 1) {
   const unit = await makeUnit(db, workshop, { state: "sent_back", map: starterMap("linear-bench-supply") });
   const row = await unitNow(workshop, unit.number);
   await db.transaction(async (tx) => {
-    const revision = await startRevision(tx, row, workshop.clock.at);
+    const revision = await startRevision(tx, row, workshop.clock.at, {
+      reason: "The lid has no earth.",
+      byId: workshop.people.inspector.id,
+    });
     await tx.update(tables.units).set({ revision }).where(eq(tables.units.id, unit.id));
   });
   const ids: number[] = [];
@@ -414,7 +417,13 @@ describe("discarding", () => {
 });
 
 function query({ workshop }: TestWorkshop, changes: Partial<UnitQuery> = {}): UnitQuery {
-  return { workshopId: workshop.id, today: "2026-05-04", sort: { by: "number", direction: "asc" }, page: 1, ...changes };
+  return {
+    workshopId: workshop.id,
+    today: "2026-05-04",
+    sort: { by: "number", direction: "asc" },
+    page: 1,
+    ...changes,
+  };
 }
 
 describe("the list of units", () => {

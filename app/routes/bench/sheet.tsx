@@ -26,9 +26,9 @@ import { isDecided, lineVerdicts } from "~/engine/bench-answer";
 import { answerTo } from "~/middleware/answers.server";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { standingOf } from "~/services/archive/standing.server";
-import { findPerson } from "~/services/bench/hand-over.server";
 import { listFindings } from "~/services/bench/findings.server";
 import { loadSheet } from "~/services/bench/load-sheet.server";
+import { findPersonName } from "~/services/units/unit-people.server";
 import { dayIn } from "~/services/context.server";
 import { decide } from "~/workflow/permissions";
 import type { Route } from "./+types/sheet";
@@ -56,8 +56,8 @@ export async function loader({ context, params, url }: Route.LoaderArgs) {
         revision: unit.revision,
         version: unit.version,
       },
-      builder: (await findPerson(services.db, unit.builderId)).name,
-      inspector: unit.inspectorId === null ? null : (await findPerson(services.db, unit.inspectorId)).name,
+      builder: await findPersonName(services.db, unit.builderId),
+      inspector: unit.inspectorId === null ? null : await findPersonName(services.db, unit.inspectorId),
       revision: {
         number: sheet.revision.number,
         submittedAt: sheet.revision.submittedAt,

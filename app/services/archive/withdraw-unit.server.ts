@@ -42,7 +42,8 @@ function withdraw(context: ServiceContext, input: WithdrawInput): Promise<void> 
       // Confirmed before the transaction began; without it this line is not reached.
       "signer-authenticated": [],
     }),
-    async work({ tx, unit, at }) {
+    async work(act) {
+      const { tx, unit, at } = act;
       const [signed] = await tx
         .select({ recordId: records.id })
         .from(records)
@@ -52,7 +53,7 @@ function withdraw(context: ServiceContext, input: WithdrawInput): Promise<void> 
         .limit(1);
       if (!signed) throw new Error(`Unit ${unit.number} is signed but has no record.`);
       await tx.insert(withdrawals).values({ recordId: signed.recordId, byId: context.person.id, reason, at });
-      await mailDecision(context, tx, { unit, at, kind: "withdrawn", statement: reason, recheckOn: null });
+      await mailDecision(context, act, { name: "withdraw", statement: reason, recheckOn: null });
       return { result: undefined, detail: { recordId: signed.recordId } };
     },
   });

@@ -5,6 +5,7 @@ import { appendEntry } from "~/services/audit/append-entry.server";
 import type { ServiceContext } from "~/services/context.server";
 import { AuthenticationError, ConflictError, InvalidInputError, NotFoundError } from "~/services/errors";
 import { enqueueMails } from "~/services/mail/enqueue-mail.server";
+import { mailFrom } from "~/services/mail/hand-over.server";
 import { actOnWorkshop } from "~/services/workshop-act.server";
 import { type Role, roles as allRoles, roleTitles } from "~/workflow/roles";
 import { authenticate } from "./authenticate.server";
@@ -274,9 +275,7 @@ async function issue(
         `The link works once, within ${INVITATION_DAYS} days. If you expected no invitation, do nothing.`,
       ],
       link: { label: "Accept the invitation", href: `${context.appUrl}/invitation/${secret}` },
-      from: context.workshop.isDemo
-        ? `${context.workshop.name} (demo, all data invented)`
-        : context.workshop.name,
+      from: mailFrom(context),
     },
   ]);
   return token.id;

@@ -4,6 +4,7 @@ import type { ServiceContext } from "~/services/context.server";
 import { ConflictError, GuardError, NotFoundError } from "~/services/errors";
 import { actOnWorkshop } from "~/services/workshop-act.server";
 import { type Role, roles as allRoles } from "~/workflow/roles";
+import { rolesHeld } from "./role-holders.server";
 
 const { memberships, people, units } = tables;
 
@@ -102,14 +103,6 @@ export function removeMember(context: ServiceContext, personId: number): Promise
     await take(tx, workshop.id, personId, held);
     return { result: undefined, detail: { person: personId, taken: held } };
   });
-}
-
-async function rolesHeld(tx: Transaction, workshopId: number, personId: number): Promise<Role[]> {
-  const rows = await tx
-    .select({ role: memberships.role })
-    .from(memberships)
-    .where(and(eq(memberships.workshopId, workshopId), eq(memberships.personId, personId)));
-  return rows.map((row) => row.role);
 }
 
 /** Counts under the workshop's lock, so two stewards can't remove each other at the same moment. */

@@ -14,12 +14,13 @@ import { loadReview, type Review } from "./load-review.server";
 import { lastRecheckDay, nameMatches } from "./signing-rules";
 import { type GuardReport, reportGuards } from "./signing-guards.server";
 import { prepareSignature } from "./signature-image.server";
+import { supersedePredecessors } from "./supersede-predecessors.server";
 
 const { decisions, records, units } = tables;
 
 export type SignatureInput =
   | { method: "drawn"; png: Uint8Array }
-  /** Typed in the person's own hand instead of drawn: must be their name. */
+  /** Typed in the person's own hand instead of drawn: must be the name on the licence. */
   | { method: "typed"; typedName: string };
 
 interface DecisionInput {
@@ -52,14 +53,14 @@ export interface MadeDecision {
 }
 
 /**
- * Signs a unit: every guard is weighed under the unit's row lock; decision, record, PDF job, mails, new state and trail
- * entry are one transaction. A second click on the same form gets the first one's result.
+ * Signs a unit: every guard is weighed under the unit's row lock; decision, record, PDF job, mails, new state, trail
+ * entry and the end of the version before it are one transaction. A second click on the same form gets the first one's result.
  *
  * @throws InvalidInputError, AuthenticationError, ThrottledError, GuardError, ForbiddenError, ConflictError
  */
 export async function signUnit(context: ServiceContext, input: SignInput): Promise<MadeDecision> {
   checkRecheckDay(input.recheckOn, dayIn(context.workshop.timeZone, context.now()));
-  const signature = await prepare(context, input.signature);
+  const signature = await prepare(input.signature);
   await confirmPassword(context.db, context.person, input, context.now());
   return onceOnly(context, input, "signed", () => {
     let review: Review;
@@ -67,6 +68,7 @@ export async function signUnit(context: ServiceContext, input: SignInput): Promi
     return moveUnit(context, "sign", input, {
       async guards(act) {
         ({ review, report } = await weigh(context, act));
+        checkName(input.signature, report);
         const { guards } = report;
         return {
           "checks-decided": [
@@ -83,15 +85,18 @@ export async function signUnit(context: ServiceContext, input: SignInput): Promi
           "signature-given": [],
         };
       },
-      work: (act) =>
-        writeDecision(context, act, review, report, {
+      async work(act) {
+        const { result, detail } = await writeDecision(context, act, review, report, {
           kind: "signed",
           statement: input.statement,
           departures: report.failed.length > 0 ? input.departures : null,
           conditions: input.conditions,
           recheckOn: input.recheckOn,
           signature,
-        }),
+        });
+        const supersedes = await supersedePredecessors(context, act.tx, act.unit);
+        return { result, detail: supersedes.length > 0 ? { ...detail, supersedes } : detail };
+      },
     });
   });
 }
@@ -102,7 +107,7 @@ export async function signUnit(context: ServiceContext, input: SignInput): Promi
  * @throws the same
  */
 export async function refuseUnit(context: ServiceContext, input: RefuseInput): Promise<MadeDecision> {
-  const signature = await prepare(context, input.signature);
+  const signature = await prepare(input.signature);
   await confirmPassword(context.db, context.person, input, context.now());
   return onceOnly(context, input, "refused", () => {
     let review: Review;
@@ -110,6 +115,7 @@ export async function refuseUnit(context: ServiceContext, input: RefuseInput): P
     return moveUnit(context, "refuse", input, {
       async guards(act) {
         ({ review, report } = await weigh(context, act));
+        checkName(input.signature, report);
         return {
           "licence-in-date": texts(report.guards["licence-in-date"]),
           "licence-in-scope": texts(report.guards["licence-in-scope"]),
@@ -131,9 +137,9 @@ export async function refuseUnit(context: ServiceContext, input: RefuseInput): P
   });
 }
 
-async function weigh(context: ServiceContext, { tx, unit, at }: Act) {
+async function weigh(context: ServiceContext, { tx, unit, at, roles }: Act) {
   const review = await loadReview(context, unit, tx);
-  const signer = { person: context.person, roles: context.workshop.roles };
+  const signer = { person: context.person, roles };
   return { review, report: reportGuards(review, signer, context.workshop.timeZone, at) };
 }
 
@@ -151,12 +157,17 @@ function departuresMissing({ failed }: GuardReport, departures: string | null): 
 
 type PreparedSignature = { method: "drawn"; image: Buffer } | { method: "typed"; typedName: string };
 
-async function prepare({ person }: ServiceContext, signature: SignatureInput): Promise<PreparedSignature> {
+async function prepare(signature: SignatureInput): Promise<PreparedSignature> {
   if (signature.method === "drawn") return { method: "drawn", image: await prepareSignature(signature.png) };
-  if (!nameMatches(signature.typedName, person.name)) {
-    throw new InvalidInputError("typedName", `Type your name as it is known here: ${person.name}`);
-  }
   return { method: "typed", typedName: signature.typedName.trim() };
+}
+
+/** A typed signature is the name on the licence: what an account is called can be changed by its owner. */
+function checkName(signature: SignatureInput, { licence }: GuardReport): void {
+  if (signature.method === "drawn" || licence === null) return;
+  if (!nameMatches(signature.typedName, licence.holderName)) {
+    throw new InvalidInputError("typedName", `Type your name as your licence says it: ${licence.holderName}`);
+  }
 }
 
 function checkRecheckDay(recheckOn: string, today: string): void {
@@ -177,11 +188,12 @@ interface DecisionContent {
 
 async function writeDecision(
   context: ServiceContext,
-  { tx, unit, at }: Act,
+  act: Act,
   review: Review,
   report: GuardReport,
   content: DecisionContent,
 ) {
+  const { tx, unit, at } = act;
   const { licence } = report;
   if (!licence) throw new Error("The licence guards let a decision through without a licence.");
   const { signature, ...decision } = content;
@@ -234,10 +246,8 @@ async function writeDecision(
     .$returningId();
   if (!recordRow) throw new Error("The record got no id.");
   await enqueueJob(tx, "make-record-pdf", recordRow.id, at);
-  await mailDecision(context, tx, {
-    unit,
-    at,
-    kind: content.kind,
+  await mailDecision(context, act, {
+    name: content.kind === "signed" ? "sign" : "refuse",
     statement: content.statement,
     recheckOn: content.recheckOn,
   });

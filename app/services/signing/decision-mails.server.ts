@@ -1,85 +1,71 @@
-import { inArray } from "drizzle-orm";
-import { tables, type Transaction } from "~/db/client.server";
 import type { ServiceContext } from "~/services/context.server";
-import { enqueueMails } from "~/services/mail/enqueue-mail.server";
-import type { UnitRow } from "~/services/unit-act.server";
+import { type Recipient, tellHandOver, unitTitle } from "~/services/mail/hand-over.server";
+import type { Act } from "~/services/unit-act.server";
 
-const { people } = tables;
+type DecisionName = "sign" | "refuse" | "sendBackFromReview" | "withdraw" | "supersede";
 
 interface Told {
-  unit: UnitRow;
-  at: Date;
-  kind: "signed" | "refused" | "sent-back" | "withdrawn";
-  /** Reasons, or what was stated. */
+  name: DecisionName;
+  /** Reasons, or what was stated; of a supersession, the title of the new version. */
   statement: string;
   recheckOn: string | null;
 }
 
-/** Tells the builder and the inspector how it was decided; in the transaction of the decision itself. */
-export async function mailDecision(context: ServiceContext, tx: Transaction, told: Told): Promise<void> {
-  const { unit, at } = told;
-  const { workshop, person, appUrl } = context;
-  const ids = [unit.builderId, unit.inspectorId].filter((id) => id !== null && id !== person.id);
-  if (ids.length === 0) return;
-  const recipients = await tx
-    .select({ id: people.id, name: people.name, email: people.email })
-    .from(people)
-    .where(
-      inArray(
-        people.id,
-        ids.filter((id) => id !== null),
-      ),
-    );
-  const name = `Unit ${unit.number}, “${unit.name}”`;
-  await enqueueMails(
-    tx,
-    recipients.map((recipient) => ({
-      workshopId: workshop.id,
-      recipient: recipient.email,
-      toName: recipient.name,
-      at,
-      subject: subjectOf(told.kind, unit),
-      paragraphs: paragraphsOf(told, name, person.name, recipient.id === unit.builderId),
-      link:
-        told.kind === "sent-back"
-          ? { label: "See what is to be done", href: `${appUrl}/w/${workshop.slug}/units/${unit.number}` }
-          : { label: "See the record", href: `${appUrl}/w/${workshop.slug}/archive/${unit.number}` },
-      from: workshop.isDemo ? `${workshop.name} (demonstration, all data invented)` : workshop.name,
-    })),
-  );
-}
+const done: Record<DecisionName, string> = {
+  sign: "signed",
+  refuse: "refused",
+  sendBackFromReview: "sent back",
+  withdraw: "withdrawn",
+  supersede: "superseded",
+};
 
-function subjectOf(kind: Told["kind"], unit: UnitRow): string {
-  const what = { signed: "signed", refused: "refused", "sent-back": "sent back", withdrawn: "withdrawn" }[
-    kind
-  ];
-  return `Unit ${unit.number} was ${what}: ${unit.name}`.slice(0, 200);
+/** Tells everybody concerned how it was decided; in the transaction of the decision itself. */
+export async function mailDecision(context: ServiceContext, act: Act, told: Told): Promise<void> {
+  const { unit } = act;
+  await tellHandOver(context, act, told.name, (recipient) => ({
+    subject: `Unit ${unit.number} was ${done[told.name]}: ${unit.name}`,
+    paragraphs: paragraphsOf(told, unitTitle(unit), context.person.name, recipient),
+    link:
+      told.name === "sendBackFromReview"
+        ? {
+            label: "See what is to be done",
+            path: recipient.as === "builder" ? `/units/${unit.number}/rework` : `/units/${unit.number}`,
+          }
+        : { label: "See the record", path: `/archive/${unit.number}` },
+  }));
 }
 
 function paragraphsOf(
-  { kind, statement, recheckOn }: Told,
-  name: string,
+  { name, statement, recheckOn }: Told,
+  title: string,
   by: string,
-  toBuilder: boolean,
+  { as }: Recipient,
 ): string[] {
-  switch (kind) {
-    case "signed":
+  switch (name) {
+    case "sign":
       return [
-        `${name}, was signed by ${by}. It may be plugged in under the conditions in the record, until ${recheckOn ?? "the recheck date"}.`,
-        "Any change to the unit ends this: have it examined again first.",
+        `${title}, was signed by ${by}. It may be plugged in under the conditions in the record, until ${recheckOn ?? "the recheck date"}.`,
+        "Any change to the unit ends this. Start a new version on the unit’s page first; it is examined and signed in its own right.",
       ];
-    case "refused":
-      return [`${name}, was refused by ${by}. It must not be plugged in.`, `The reasons: ${statement}`];
-    case "sent-back":
+    case "refuse":
+      return [`${title}, was refused by ${by}. It must not be plugged in.`, `The reasons: ${statement}`];
+    case "sendBackFromReview":
       return [
-        `${name}, was sent back from review by ${by}. It must not be plugged in meanwhile.`,
+        `${title}, was sent back from review by ${by}. It must not be plugged in meanwhile.`,
         `What stands in the way: ${statement}`,
-        ...(toBuilder ? ["Answer the findings, put it right and submit it again as a new revision."] : []),
+        ...(as === "builder"
+          ? ["Answer the findings, put it right and submit it again as a new revision."]
+          : []),
       ];
-    case "withdrawn":
+    case "withdraw":
       return [
-        `The signature on ${name}, was withdrawn by ${by}. It must not be plugged in any more: unplug it now and mark it.`,
+        `The signature on ${title}, was withdrawn by ${by}. It must not be plugged in any more: unplug it now and mark it.`,
         `The reason: ${statement}`,
+      ];
+    case "supersede":
+      return [
+        `${title}, was superseded: ${by} signed its new version, ${statement}.`,
+        "The signature on the old version no longer counts. If the old one still exists beside the new one, unplug it and mark it.",
       ];
   }
 }

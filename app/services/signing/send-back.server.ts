@@ -31,7 +31,8 @@ export function sendBackFromReview(
     guards: () => ({
       "reason-given": reason === "" ? ["Say what stands in the way: the builder must know."] : [],
     }),
-    async work({ tx, unit, at }) {
+    async work(act) {
+      const { tx, unit, at } = act;
       const examined = await loadRevision(tx, unit);
       const [last] = await tx
         .select({ number: max(findings.number) })
@@ -47,8 +48,8 @@ export function sendBackFromReview(
         raisedById: context.person.id,
         raisedAt: at,
       });
-      const revision = await startRevision(tx, unit, at);
-      await mailDecision(context, tx, { unit, at, kind: "sent-back", statement: reason, recheckOn: null });
+      const revision = await startRevision(tx, unit, at, { reason, byId: context.person.id });
+      await mailDecision(context, act, { name: "sendBackFromReview", statement: reason, recheckOn: null });
       return { result: { finding }, changes: { revision }, detail: { finding, newRevision: revision } };
     },
   });

@@ -2,11 +2,18 @@ import { and, asc, eq } from "drizzle-orm";
 import { type Reader, tables } from "~/db/client.server";
 import { type EnergyMap, energyMapSchema } from "~/engine/energy-map";
 import { findRuleSet, type RuleSet } from "~/engine/rule-set";
+import type { UncertaintyPolicy } from "~/engine/verdict";
 import { type UnitFacts, unitFactsSchema } from "~/engine/unit-facts";
 import { NotFoundError } from "~/services/errors";
 import type { UnitRow } from "~/services/unit-act.server";
 
-const { revisions } = tables;
+const { people, revisions } = tables;
+
+/** Why the revision before was sent back, which opened this one. */
+export interface SendBack {
+  reason: string;
+  by: string;
+}
 
 export interface LoadedRevision {
   id: number;
@@ -16,10 +23,14 @@ export interface LoadedRevision {
   mapEdition: number;
   /** The rule set that this revision is judged by; pinned at its submission. */
   ruleSet: RuleSet;
+  /** How accuracies become uncertainties; pinned with the rule set, null while it is a draft. */
+  accuracyPolicy: UncertaintyPolicy | null;
   /** As submitted; of a draft, the unit's facts of now. */
   facts: UnitFacts;
   createdAt: Date;
   submittedAt: Date | null;
+  /** Null for a unit's first revision. */
+  sentBack: SendBack | null;
 }
 
 /** The facts of a unit that the engine reads, from its row. */
@@ -52,10 +63,12 @@ export async function loadRevision(
   unit: UnitRow,
   number: number = unit.revision,
 ): Promise<LoadedRevision> {
-  const [row] = await db
-    .select()
+  const [found] = await db
+    .select({ row: revisions, sentBackBy: people.name })
     .from(revisions)
+    .leftJoin(people, eq(people.id, revisions.sentBackById))
     .where(and(eq(revisions.unitId, unit.id), eq(revisions.number, number)));
+  const row = found?.row;
   if (!row) throw new NotFoundError(`Revision ${number} of unit ${unit.number}`);
   return {
     id: row.id,
@@ -63,10 +76,16 @@ export async function loadRevision(
     map: energyMapSchema.parse(row.map),
     mapEdition: row.mapEdition,
     ruleSet: requireRuleSet(row.ruleSetKey, row.ruleSetVersion),
+    accuracyPolicy: row.accuracyPolicy,
     facts: row.facts === null ? factsOf(unit) : unitFactsSchema.parse(row.facts),
     createdAt: row.createdAt,
     submittedAt: row.submittedAt,
+    sentBack: sendBackOf(row.sentBackReason, found.sentBackBy),
   };
+}
+
+function sendBackOf(reason: string | null, by: string | null): SendBack | null {
+  return reason === null ? null : { reason, by: by ?? "" };
 }
 
 export interface RevisionView {
@@ -74,18 +93,24 @@ export interface RevisionView {
   number: number;
   createdAt: Date;
   submittedAt: Date | null;
+  /** Why the one before was sent back; null for the first. */
+  sentBack: SendBack | null;
 }
 
 /** A unit's revisions, the first one first. */
-export function listRevisions(db: Reader, unitId: number): Promise<RevisionView[]> {
-  return db
+export async function listRevisions(db: Reader, unitId: number): Promise<RevisionView[]> {
+  const rows = await db
     .select({
       id: revisions.id,
       number: revisions.number,
       createdAt: revisions.createdAt,
       submittedAt: revisions.submittedAt,
+      reason: revisions.sentBackReason,
+      by: people.name,
     })
     .from(revisions)
+    .leftJoin(people, eq(people.id, revisions.sentBackById))
     .where(eq(revisions.unitId, unitId))
     .orderBy(asc(revisions.number));
+  return rows.map(({ reason, by, ...row }) => ({ ...row, sentBack: sendBackOf(reason, by) }));
 }

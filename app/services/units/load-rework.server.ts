@@ -25,6 +25,7 @@ export async function loadRework({ db, person }: ServiceContext, unit: StandingU
       version: unit.version,
     },
     personId: person.id,
+    sentBack: revision.sentBack,
     open: findings.filter((finding) => finding.closing === null),
     closed: findings.filter((finding) => finding.closing !== null),
     changes: examined ? compareMaps(examined.map, revision.map) : [],

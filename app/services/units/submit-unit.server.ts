@@ -1,20 +1,20 @@
 import { createHash } from "node:crypto";
 import canonicalize from "canonicalize";
-import { and, asc, eq, ne } from "drizzle-orm";
-import { type Reader, tables, type Transaction } from "~/db/client.server";
+import { asc, eq } from "drizzle-orm";
+import { tables, type Transaction } from "~/db/client.server";
 import { submissionProblems } from "~/engine/submission";
 import type { EnergyMap } from "~/engine/energy-map";
 import { appendEntry } from "~/services/audit/append-entry.server";
 import type { ServiceContext } from "~/services/context.server";
-import { enqueueMails } from "~/services/mail/enqueue-mail.server";
+import { tellHandOver, unitTitle } from "~/services/mail/hand-over.server";
 import { moveUnit, type UnitActInput, type UnitRow } from "~/services/unit-act.server";
 import { factsOf, loadRevision } from "./load-revision.server";
 import { unansweredFindings } from "./answer-finding.server";
 
-const { findingAnswers, findings, memberships, people, revisions } = tables;
+const { findingAnswers, findings, revisions } = tables;
 
 /**
- * Submits a unit for examination: freezes the revision's map and facts, pins the workshop's rule set to it and tells
+ * Submits a unit for examination: freezes map and facts, pins the rule set and accuracy policy of the workshop, and tells
  * the inspectors.
  *
  * @throws NotFoundError, ForbiddenError, ConflictError, GuardError: the map is incomplete, or findings are unanswered
@@ -29,7 +29,8 @@ export function submitUnit(context: ServiceContext, input: UnitActInput): Promis
         "findings-answered": open.map((finding) => `Finding ${finding.number} has no answer yet.`),
       };
     },
-    async work({ tx, unit, at }) {
+    async work(act) {
+      const { tx, unit, at } = act;
       const revision = await loadRevision(tx, unit);
       await tx
         .update(revisions)
@@ -38,27 +39,16 @@ export function submitUnit(context: ServiceContext, input: UnitActInput): Promis
           facts: factsOf(unit),
           ruleSetKey: context.workshop.ruleSetKey,
           ruleSetVersion: context.workshop.ruleSetVersion,
+          accuracyPolicy: context.workshop.accuracyPolicy,
         })
         .where(eq(revisions.id, revision.id));
       await enterAnswers(context, tx, unit, revision.id, at);
-      const inspectors = await listInspectors(tx, context.workshop.id, unit.builderId);
-      await enqueueMails(
-        tx,
-        inspectors.map((inspector) => ({
-          workshopId: context.workshop.id,
-          recipient: inspector.email,
-          toName: inspector.name,
-          at,
-          subject: `Unit ${unit.number} “${unit.name}” waits for the bench`,
-          paragraphs: submissionWords(context, unit),
-          link: {
-            label: "Open the bench queue",
-            href: `${context.appUrl}/w/${context.workshop.slug}/bench`,
-          },
-          from: context.workshop.isDemo ? `${context.workshop.name} (demo)` : context.workshop.name,
-        })),
-      );
-      return { result: undefined, detail: { mapSha256: hashMap(revision.map), told: inspectors.length } };
+      const told = await tellHandOver(context, act, "submit", () => ({
+        subject: `${unitTitle(unit)} waits for the bench`,
+        paragraphs: submissionWords(context, unit),
+        link: { label: "Open the bench queue", path: "/bench" },
+      }));
+      return { result: undefined, detail: { mapSha256: hashMap(revision.map), told } };
     },
   });
 }
@@ -96,22 +86,6 @@ function submissionWords(context: ServiceContext, unit: UnitRow): string[] {
       : `${context.person.name} reworked unit ${unit.number}, “${unit.name}”, and submitted it again as revision ${unit.revision}.`,
     `It is meant for ${unit.supplyVolts} V, ${unit.supplyHertz} Hz, protection class ${unit.protectionClass}. Until it has been signed it must not be plugged in outside the bench.`,
   ];
-}
-
-/** Everybody who may take a unit on the bench, but its builder. */
-async function listInspectors(db: Reader, workshopId: number, builderId: number) {
-  return db
-    .select({ name: people.name, email: people.email })
-    .from(memberships)
-    .innerJoin(people, eq(people.id, memberships.personId))
-    .where(
-      and(
-        eq(memberships.workshopId, workshopId),
-        eq(memberships.role, "inspector"),
-        ne(people.id, builderId),
-      ),
-    )
-    .orderBy(asc(people.id));
 }
 
 function hashMap(map: EnergyMap): string {

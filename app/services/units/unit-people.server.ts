@@ -1,11 +1,11 @@
 import { eq } from "drizzle-orm";
 import { type Reader, tables } from "~/db/client.server";
 
-/** The name of a person that a unit's row names. */
+const { people } = tables;
+
+/** The name of a person whom a unit's row names. */
 export async function findPersonName(db: Reader, personId: number): Promise<string> {
-  const [person] = await db
-    .select({ name: tables.people.name })
-    .from(tables.people)
-    .where(eq(tables.people.id, personId));
-  return person?.name ?? "";
+  const [person] = await db.select({ name: people.name }).from(people).where(eq(people.id, personId));
+  if (!person) throw new Error(`There is no person ${personId}.`);
+  return person.name;
 }
