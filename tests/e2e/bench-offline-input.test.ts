@@ -68,23 +68,6 @@ test("each step keeps its own input while one steps on and back", async () => {
   expect(await page.getByLabel("Note").inputValue()).toBe("");
 });
 
-test("without a connection a reading is kept with words, and saved when it is back; nothing is left over", async () => {
-  browser.tolerate(/ERR_INTERNET_DISCONNECTED/);
-  const { page, reading } = await toUndoneReading();
-  await reading.fill("0.15");
-  await page.context().setOffline(true);
-  await page.getByRole("button", { name: "Save", exact: true }).click();
-  await page.getByText("The server could not be reached").waitFor();
-  expect(await reading.inputValue()).toBe("0.15");
-  await page.context().setOffline(false);
-  await page.getByRole("button", { name: "Save", exact: true }).click();
-  await page.getByRole("button", { name: "Correct this answer" }).waitFor();
-  await page.reload();
-  await hydrated(page);
-  await page.getByRole("region", { name: "Answer" }).getByText("0.15").first().waitFor();
-  expect(await notice(page).count()).toBe(0);
-});
-
 test("arrow and bracket keys step, but not while somebody types", async () => {
   const { page, reading } = await toUndoneReading();
   const title = page.getByRole("heading", { level: 1 });

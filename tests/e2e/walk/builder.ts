@@ -1,3 +1,4 @@
+import { expectNoAxeViolations } from "../../helpers/browser";
 import { arrive, goTo, open, type Person } from "./person";
 import { addPhoto } from "./photo";
 
@@ -40,7 +41,7 @@ export async function startMap({ page }: Person, starter: string): Promise<void>
     .filter({ hasText: /^Saved / })
     .waitFor();
   await page.getByText("Nothing stands against submitting").waitFor();
-  await arrive(page, /./);
+  await expectNoAxeViolations(page);
 }
 
 export interface MapEdit {
@@ -59,7 +60,7 @@ export async function editMap({ page }: Person, { element, field, value }: MapEd
     .getByRole("status")
     .filter({ hasText: /^Saved / })
     .waitFor();
-  await arrive(page, /./);
+  await expectNoAxeViolations(page);
   await page.getByRole("button", { name: "Review and submit" }).click();
 }
 
@@ -68,16 +69,16 @@ export async function submitWithPhoto({ page }: Person, number: number): Promise
   await page.waitForURL(new RegExp(`/units/${number}$`));
   await addPhoto(page, "Add photos or drawings", "inside.jpg");
   await page.getByText("1 photo added.").waitFor();
-  await arrive(page, /./);
+  await expectNoAxeViolations(page);
   await page.getByRole("button", { name: "Submit", exact: true }).click();
   await page.getByText(`Unit ${number} is submitted.`).waitFor();
-  await arrive(page, /./);
+  await expectNoAxeViolations(page);
 }
 
 /** Answers the one open finding in words and with a photo, and goes on to the map. */
 export async function answerFinding({ page, home }: Person, number: number, words: string): Promise<void> {
   await open(page, `${home}/units/${number}/rework`);
-  await arrive(page, /./);
+  await expectNoAxeViolations(page);
   await page.getByLabel("Your answer to finding 1").fill(words);
   await page
     .getByRole("status")
@@ -93,7 +94,7 @@ export async function resubmit({ page }: Person, number: number): Promise<string
   await page.waitForURL(/\/rework$/);
   await page.getByText("Every open finding is answered.").waitFor();
   const changes = await page.getByRole("region", { name: "Changes to the map" }).innerText();
-  await arrive(page, /./);
+  await expectNoAxeViolations(page);
   await page.getByRole("button", { name: "Submit again" }).click();
   await page.getByText(`Revision 2 of unit ${number} is submitted.`).waitFor();
   return changes;

@@ -1,5 +1,6 @@
 import { expect } from "vitest";
 import type { Page } from "playwright-core";
+import { expectNoAxeViolations } from "../../helpers/browser";
 import { arrive, goTo, type Person } from "./person";
 
 export interface Terms {
@@ -61,11 +62,11 @@ async function drawSignature(page: Page): Promise<void> {
 
 /** Signs by the button and waits for the record's page. */
 export async function sign({ page }: Person, number: number): Promise<void> {
-  await arrive(page, /./);
+  await expectNoAxeViolations(page);
   await page.getByRole("button", { name: "Sign", exact: true }).click();
   await page.waitForURL(new RegExp(`/archive/${number}$`));
   await page.getByText(`Unit ${number} is signed.`).waitFor();
-  await arrive(page, /./);
+  await expectNoAxeViolations(page);
 }
 
 export async function withdraw({ page, password }: Person, number: number, reason: string): Promise<void> {
@@ -76,5 +77,5 @@ export async function withdraw({ page, password }: Person, number: number, reaso
   await page.getByRole("button", { name: "Withdraw the signature" }).click();
   await page.waitForURL(new RegExp(`/archive/${number}$`));
   await page.getByRole("region", { name: "Withdrawn" }).getByText(reason).waitFor();
-  await arrive(page, /./);
+  await expectNoAxeViolations(page);
 }

@@ -1,5 +1,6 @@
 import type { Locator, Page } from "playwright-core";
 import { expect } from "vitest";
+import { expectNoAxeViolations } from "../../helpers/browser";
 import { arrive, goTo, open, type Person } from "./person";
 import { addPhoto } from "./photo";
 
@@ -10,7 +11,7 @@ export async function takeUnit(inspector: Person, number: number): Promise<void>
   await page.getByRole("button", { name: `Take unit ${number}` }).click();
   await page.waitForURL(new RegExp(`/bench/${number}$`));
   await page.getByText(`Unit ${number} is on your bench.`).waitFor();
-  await arrive(page, /./);
+  await expectNoAxeViolations(page);
 }
 
 export interface Fault {
@@ -32,7 +33,7 @@ export async function workSheet({ page }: Person, fault?: Fault): Promise<string
   for (;;) {
     const steps = page.getByRole("navigation", { name: "Steps" });
     await steps.waitFor();
-    await arrive(page, /./);
+    await expectNoAxeViolations(page);
     const title = await page.getByRole("heading", { level: 1 }).innerText();
     const here = page.url();
     if (done.length === 0) await stepByKeys(page);
@@ -98,7 +99,7 @@ async function raiseFinding(page: Page, { words, element }: Fault): Promise<void
 
 export async function sendBack({ page }: Person, number: number, reason: string): Promise<void> {
   await page.getByRole("link", { name: "Sheet", exact: true }).click();
-  await arrive(page, /./);
+  await expectNoAxeViolations(page);
   await page.getByRole("link", { name: "Finish or send back" }).click();
   await arrive(page, "Finish or send back");
   await page.getByText("1 open finding goes with it.").waitFor();
@@ -136,7 +137,7 @@ export async function carryOver({ page }: Person): Promise<Changes> {
   await page.getByText(/answers? (was|were) carried over\./).waitFor();
   await arrive(page, /^What changed/);
   await page.getByRole("link", { name: "Whole sheet" }).click();
-  await arrive(page, /./);
+  await expectNoAxeViolations(page);
   return { map, again, carried };
 }
 
