@@ -1,3 +1,4 @@
+import { farther, reachOf } from "./change-reach";
 import { deriveBenchSheet } from "./bench-sheet";
 import type { BenchCheck } from "./bench-check";
 import type { EnergyMap } from "./energy-map";
@@ -93,8 +94,10 @@ export function affectedChecks(
   const old = new Map(deriveBenchSheet(before, ruleSet, facts).map((check) => [check.key, check]));
   const changes = compareMaps(before, after);
   const touched = touchedBy(changes, before, after);
+  const reach = reachOf(changes, before, after);
   return deriveBenchSheet(after, ruleSet, facts).map((check) => {
-    const because = [...differences(old.get(check.key), check), ...nearby(check, touched)];
+    const direct = [...differences(old.get(check.key), check), ...nearby(check, touched)];
+    const because = direct.length > 0 ? direct : farther(check, reach);
     return { key: check.key, affected: because.length > 0, because };
   });
 }
