@@ -4,6 +4,8 @@ import { transitions, type TransitionName } from "~/workflow/transitions";
 const words: Record<string, string> = {
   "unit.create": "created it",
   "unit.edit": "changed its description",
+  "unit.succeed": "started a new version of it",
+  "unit.hand-over": "handed it to another builder",
   "unit.discard": "discarded it",
   "bench.observe": "recorded a reading or answer",
   "bench.work": "worked on the sheet",

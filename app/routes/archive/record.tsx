@@ -11,8 +11,10 @@ import { TitleBlock } from "~/components/ui/title-block";
 import { answerTo } from "~/middleware/answers.server";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { findRecord, type PdfState } from "~/services/archive/find-record.server";
+import { loadVersions } from "~/services/units/versions.server";
 import { tally } from "~/services/records/record-words";
 import { decide } from "~/workflow/permissions";
+import { VersionNotes } from "../units/version-notes";
 import type { Route } from "./+types/record";
 import { RecordConditions } from "./record-conditions";
 import { RecordTerms } from "./record-terms";
@@ -40,6 +42,7 @@ export async function loader({ context, params }: Route.LoaderArgs) {
         openFindings: record.findings.filter((finding) => finding.closing === null).length,
         photos: record.files.filter((file) => file.kind === "photo").length,
       },
+      versions: await loadVersions(services.db, unit),
       mayReadTrail: decide("trail.read", holder).allowed,
       mayWithdraw: decide("record.withdraw", holder, unit).allowed,
       maySearch: decide("archive.search", holder).allowed,
@@ -106,6 +109,7 @@ export default function RecordPage({ loaderData, params }: Route.ComponentProps)
             Its stored data no longer give its SHA-256. Don’t rely on it; tell the workshop’s steward.
           </Caution>
         )}
+        <VersionNotes slug={params.workshop} {...loaderData.versions} />
         <RecordTerms validity={stored.validity} decision={record.decision} failed={record.failed}>
           {stored.withdrawal ? (
             <Sheet title="Withdrawn">

@@ -55,7 +55,7 @@ export default function ArchiveSearch({ loaderData }: Route.ComponentProps) {
     <>
       <PageHeader
         title="Archive"
-        lead="Every record that was signed, refused or withdrawn. Nothing in it is edited."
+        lead="Every record that was signed or refused, also those withdrawn or superseded since. Nothing in it is edited."
       />
       <Sheet title="Records" flush>
         <ArchiveFilters params={params} people={people} filtered={filtered} slug={slug} />

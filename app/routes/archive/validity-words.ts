@@ -41,13 +41,16 @@ export function validityWords(validity: Validity, departures: boolean): Validity
     case "lapsed":
       return {
         title: "Must not be plugged in: lapsed",
-        text: "The day of its recheck has passed. Have it examined again.",
+        text: "The day of its recheck has passed. Unplug it; a new version of it must be examined and signed first.",
         tone: "fail",
       };
     case "must-not-be-used":
       return {
         title: `Must not be plugged in: ${stateTitles[validity.because].toLowerCase()}`,
-        text: "Unplug it and mark it, so that nobody uses it.",
+        text:
+          validity.because === "superseded"
+            ? "A newer version was signed in its place; the code on that one counts. Unplug this one and mark it, so that nobody uses it."
+            : "Unplug it and mark it, so that nobody uses it.",
         tone: "fail",
       };
   }

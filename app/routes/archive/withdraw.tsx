@@ -51,7 +51,7 @@ export async function action({ request, context, params }: Route.ActionArgs) {
   }
   return redirectWithFlash(
     `/w/${params.workshop}/archive/${unit.number}`,
-    `The signature on unit ${unit.number} is withdrawn. Builder and inspector have been told.`,
+    `The signature on unit ${unit.number} is withdrawn. Builder, inspector and electricians have been told.`,
   );
 }
 
@@ -93,7 +93,8 @@ export default function Withdraw({ loaderData, actionData, params }: Route.Compo
           />
           <Caution title="This can’t be taken back">
             From this moment the unit’s code tells everybody that it must not be plugged in. The record stays
-            as it is; to use the unit again it must be examined and signed anew.
+            as it is. To go on, its builder starts a new version of the unit, which is examined and signed in
+            its own right.
           </Caution>
           <input type="hidden" name="version" value={unit.version} />
           <TextareaField field={fields.reason} label="Why it is withdrawn" rows={4} />

@@ -7,8 +7,11 @@ export const queueParamsSchema = z.object({
   battery: z.enum(["any", "yes", "no"]).catch("any"),
 });
 
-export const turnSchema = z.object({
-  act: z.enum(["take", "release"]),
-  unit: z.number().int().positive(),
-  version: z.number().int().positive(),
-});
+const turn = { unit: z.number().int().positive(), version: z.number().int().positive() };
+
+export const turnSchema = z.discriminatedUnion("act", [
+  z.object({ act: z.literal("take"), ...turn }),
+  z.object({ act: z.literal("release"), ...turn }),
+  /** Puts it back for an inspector who is absent. */
+  z.object({ act: z.literal("reclaim"), ...turn, reason: z.string().trim().max(1000).default("") }),
+]);

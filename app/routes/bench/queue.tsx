@@ -20,7 +20,7 @@ import { Time } from "~/components/ui/time";
 import { answerTo } from "~/middleware/answers.server";
 import { authorise, authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
-import { releaseUnit, takeUnit } from "~/services/bench/bench-turns.server";
+import { reclaimUnit, releaseUnit, takeUnit } from "~/services/bench/bench-turns.server";
 import { listOwnBench, loadQueue, type QueueRow, queueSorts } from "~/services/bench/queue.server";
 import { ConflictError, GuardError, ServiceError } from "~/services/errors";
 import type { Route } from "./+types/queue";
@@ -52,6 +52,9 @@ export async function loader({ context, url }: Route.LoaderArgs) {
   return { queue, own, params, sort, page, mayTake, slug: services.workshop.slug };
 }
 
+/** "take" is weighed by its transition alone, so that the second of two inspectors hears who was first. */
+const actionFor = { take: "bench.queue", release: "bench.release", reclaim: "bench.reclaim" } as const;
+
 export async function action({ request, context, params }: Route.ActionArgs) {
   const submission = parseWithZod(await request.formData(), { schema: turnSchema });
   if (submission.status !== "success") {
@@ -60,22 +63,28 @@ export async function action({ request, context, params }: Route.ActionArgs) {
       { status: 400 },
     );
   }
-  const { act, unit, version } = submission.value;
-  const { services } = await authoriseUnit(
-    context,
-    act === "take" ? "bench.queue" : "bench.release",
-    String(unit),
-  );
+  const { value } = submission;
+  const { unit } = value;
+  const { services } = await authoriseUnit(context, actionFor[value.act], String(unit));
+  const target = { unitNumber: unit, expectedVersion: value.version };
   try {
-    if (act === "take") {
-      await takeUnit(services, { unitNumber: unit, expectedVersion: version });
-      return await redirectWithFlash(
-        `/w/${params.workshop}/bench/${unit}`,
-        `Unit ${unit} is on your bench. The builder has been told.`,
-      );
+    switch (value.act) {
+      case "take":
+        await takeUnit(services, target);
+        return await redirectWithFlash(
+          `/w/${params.workshop}/bench/${unit}`,
+          `Unit ${unit} is on your bench. The builder has been told.`,
+        );
+      case "release":
+        await releaseUnit(services, target);
+        return await redirectWithFlash(`/w/${params.workshop}/bench`, `Unit ${unit} is back in the queue.`);
+      case "reclaim":
+        await reclaimUnit(services, { ...target, reason: value.reason });
+        return await redirectWithFlash(
+          `/w/${params.workshop}/bench/${unit}`,
+          `Unit ${unit} is back in the queue. Its inspector is told, if still in the workshop.`,
+        );
     }
-    await releaseUnit(services, { unitNumber: unit, expectedVersion: version });
-    return await redirectWithFlash(`/w/${params.workshop}/bench`, `Unit ${unit} is back in the queue.`);
   } catch (error) {
     if (!(error instanceof ServiceError)) throw error;
     if (error instanceof ConflictError || error instanceof GuardError) {

@@ -20,6 +20,7 @@ import { Progress } from "~/components/ui/progress";
 import { SeverityBadge } from "~/components/ui/severity-badge";
 import { Sheet as Paper } from "~/components/ui/sheet";
 import { StateBadge } from "~/components/ui/state-badge";
+import { TextareaField } from "~/components/ui/textarea-field";
 import { Time } from "~/components/ui/time";
 import { TitleBlock } from "~/components/ui/title-block";
 import { isDecided, lineVerdicts } from "~/engine/bench-answer";
@@ -31,6 +32,7 @@ import { loadSheet } from "~/services/bench/load-sheet.server";
 import { findPersonName } from "~/services/units/unit-people.server";
 import { dayIn } from "~/services/context.server";
 import { decide } from "~/workflow/permissions";
+import { SentBackNote } from "../units/sent-back-note";
 import type { Route } from "./+types/sheet";
 import { checkHref } from "./check-href";
 import { EngineAnswers } from "./engine-answers";
@@ -61,6 +63,7 @@ export async function loader({ context, params, url }: Route.LoaderArgs) {
       revision: {
         number: sheet.revision.number,
         submittedAt: sheet.revision.submittedAt,
+        sentBack: sheet.revision.sentBack,
         map: sheet.revision.map,
         facts: sheet.revision.facts,
         ruleSet: `${sheet.revision.ruleSet.title}, version ${sheet.revision.ruleSet.version}`,
@@ -71,6 +74,8 @@ export async function loader({ context, params, url }: Route.LoaderArgs) {
       findings: await listFindings(services.db, unit.id),
       show: parseShow(url.searchParams.get("show")),
       mayTake: decide("bench.take", person, unit).allowed,
+      // Who holds it puts it back without a reason.
+      mayReclaim: unit.inspectorId !== services.person.id && decide("bench.reclaim", person, unit).allowed,
       mayWork: number === unit.revision && decide("bench.work", person, unit).allowed,
     };
   } catch (error) {
@@ -83,7 +88,7 @@ export const meta: Route.MetaFunction = ({ loaderData }) => [
 ];
 
 export default function BenchSheet({ loaderData, params }: Route.ComponentProps) {
-  const { unit, revision, lines, progress, findings, mayTake, mayWork } = loaderData;
+  const { unit, revision, lines, progress, findings, mayTake, mayWork, mayReclaim } = loaderData;
   const bench = `/w/${params.workshop}/bench`;
   const nextOpen = lines.find((line) => !isDecided(line.verdict) || line.photoMissing);
   return (
@@ -142,6 +147,30 @@ export default function BenchSheet({ loaderData, params }: Route.ComponentProps)
                 </ConfirmDialog>
               </>
             ) : null}
+            {mayReclaim ? (
+              <ConfirmDialog
+                trigger="Put back for the inspector"
+                triggerVariant="quiet"
+                triggerIcon={Undo2}
+                title={`Put unit ${unit.number} back into the queue for ${loaderData.inspector ?? "its inspector"}?`}
+                confirm="Put back"
+                confirmVariant="primary"
+                action={bench}
+                fields={{ act: "reclaim", unit: String(unit.number), version: String(unit.version) }}
+              >
+                <p>
+                  What was recorded stays on its sheet, and any other inspector can take the unit. Make sure
+                  that it doesn’t lie open and live on a bench.
+                </p>
+                <TextareaField
+                  field={{ name: "reason", id: "reclaim-reason" }}
+                  label="Why, for its inspector"
+                  rows={2}
+                  maxLength={1000}
+                  required
+                />
+              </ConfirmDialog>
+            ) : null}
             <LinkButton to="#checks" variant="quiet" icon={ArrowDown} className="lg:hidden">
               Checks
             </LinkButton>
@@ -160,6 +189,7 @@ export default function BenchSheet({ loaderData, params }: Route.ComponentProps)
         </p>
       ) : null}
       <div className="space-y-5">
+        {revision.sentBack ? <SentBackNote sentBack={revision.sentBack} revision={revision.number} /> : null}
         <TitleBlock
           items={[
             { label: "Builder", value: loaderData.builder },

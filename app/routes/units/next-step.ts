@@ -32,13 +32,26 @@ export function nextStepFor(unit: { state: UnitState; isOwn: boolean }): { what:
     case "signed":
       return {
         what: "Signed.",
-        who: "It may be used under the conditions of its record, until its recheck date. Any change to it ends that.",
+        who: `It may be used under the conditions of its record, until its recheck date. Any change to it ends that: ${anew(unit.isOwn)} before.`,
       };
     case "refused":
-      return { what: "Refused.", who: "It must not be plugged in. The record says why." };
+      return {
+        what: "Refused.",
+        who: `It must not be plugged in; the record says why. To go on, ${anew(unit.isOwn)}.`,
+      };
     case "withdrawn":
-      return { what: "The signature was withdrawn.", who: "It must not be plugged in. The record says why." };
+      return {
+        what: "The signature was withdrawn.",
+        who: `It must not be plugged in; the record says why. To go on, ${anew(unit.isOwn)}.`,
+      };
     case "superseded":
-      return { what: "Superseded.", who: "A newer record stands in the place of this one." };
+      return {
+        what: "Superseded.",
+        who: "Its new version was signed in its place. If the old one still exists, it must not be plugged in.",
+      };
   }
+}
+
+function anew(isOwn: boolean): string {
+  return isOwn ? "start a new version of it" : "its builder starts a new version of it";
 }

@@ -1,7 +1,8 @@
-import { FilePen, ListChecks, PenLine, ScrollText, Zap, History } from "lucide-react";
+import { CopyPlus, FilePen, History, ListChecks, PenLine, ScrollText, Zap } from "lucide-react";
 import { ConflictNotice } from "~/components/shell/conflict-notice";
 import { PhotoStrip } from "~/components/photo-strip";
 import { PhotoUpload } from "~/components/photo-upload";
+import { ConfirmDialog } from "~/components/ui/confirm-dialog";
 import { LinkButton } from "~/components/ui/link-button";
 import { Sheet } from "~/components/ui/sheet";
 import { Time } from "~/components/ui/time";
@@ -9,16 +10,21 @@ import { TitleBlock } from "~/components/ui/title-block";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
 import { discardUnit } from "~/services/units/discard-unit.server";
+import { handOverUnit } from "~/services/units/hand-over-unit.server";
 import { loadOverview } from "~/services/units/load-overview.server";
+import { succeedUnit } from "~/services/units/succeed-unit.server";
 import { submitUnit } from "~/services/units/submit-unit.server";
 import type { Route } from "./+types/overview";
 import { FindingList } from "./finding-list";
+import { HandOverPanel } from "./hand-over-panel";
 import { MapOverview } from "./map-overview";
 import { nextStepFor } from "./next-step";
 import { SubmitPanel } from "./submit-panel";
 import { unitActionSchema } from "./unit-action.schema";
 import { refuse, refuseForm } from "./refusal.server";
+import { SentBackNote } from "./sent-back-note";
 import { UnitHead } from "./unit-head";
+import { VersionNotes } from "./version-notes";
 
 export async function loader({ params, context }: Route.LoaderArgs) {
   const { services, unit } = await authoriseUnit(context, "unit.read", params.unit);
@@ -29,19 +35,34 @@ export async function action({ request, params, context }: Route.ActionArgs) {
   const { services, unit } = await authoriseUnit(context, "unit.read", params.unit);
   const input = unitActionSchema.safeParse(Object.fromEntries(await request.formData()));
   if (!input.success) return refuseForm();
-  const { intent, version } = input.data;
   const home = `/w/${services.workshop.slug}/units`;
+  const target = { unitNumber: unit.number, expectedVersion: input.data.version };
   try {
-    const target = { unitNumber: unit.number, expectedVersion: version };
-    if (intent === "submit") {
-      await submitUnit(services, target);
-      return await redirectWithFlash(
-        `${home}/${unit.number}`,
-        `Unit ${unit.number} is submitted. The inspectors have been told.`,
-      );
+    switch (input.data.intent) {
+      case "submit":
+        await submitUnit(services, target);
+        return await redirectWithFlash(
+          `${home}/${unit.number}`,
+          `Unit ${unit.number} is submitted. The inspectors have been told.`,
+        );
+      case "discard":
+        await discardUnit(services, target);
+        return await redirectWithFlash(home, `The draft of unit ${unit.number} is discarded.`);
+      case "succeed": {
+        const number = await succeedUnit(services, target);
+        return await redirectWithFlash(
+          `${home}/${number}`,
+          `Unit ${number} is begun as the new version of unit ${unit.number}.`,
+        );
+      }
+      case "hand-over": {
+        const { name } = await handOverUnit(services, { ...target, toId: input.data.to });
+        return await redirectWithFlash(
+          `${home}/${unit.number}`,
+          `Unit ${unit.number} is now ${name}’s to go on with.`,
+        );
+      }
     }
-    await discardUnit(services, target);
-    return await redirectWithFlash(home, `The draft of unit ${unit.number} is discarded.`);
   } catch (error) {
     return refuse(error);
   }
@@ -58,6 +79,8 @@ export const meta: Route.MetaFunction = ({ loaderData }) => [
 export default function UnitOverview({ loaderData, actionData }: Route.ComponentProps) {
   const { slug, unit, standing, may, map, ruleSet, facts, files, findings, revisions, submission } =
     loaderData;
+  const { versions, handOver } = loaderData;
+  const sentBack = revisions.at(-1)?.sentBack ?? null;
   const base = `/w/${slug}/units/${unit.number}`;
   const api = `/api/w/${slug}`;
   const conflict = actionData?.conflict ? actionData.message : null;
@@ -76,6 +99,11 @@ export default function UnitOverview({ loaderData, actionData }: Route.Component
       <div className="space-y-5">
         {conflict ? <ConflictNotice message={conflict} reloadHref={base} /> : null}
         <NextStep unit={unit} />
+        <VersionNotes slug={slug} {...versions} />
+        {unit.state === "sent_back" && sentBack ? (
+          <SentBackNote sentBack={sentBack} revision={unit.revision} />
+        ) : null}
+        {handOver ? <HandOverPanel unit={unit} builder={loaderData.builder} candidates={handOver} /> : null}
         {may.edit ? (
           <SubmitPanel
             base={base}
@@ -137,6 +165,12 @@ export default function UnitOverview({ loaderData, actionData }: Route.Component
                     "being drafted"
                   )}
                 </span>
+                {revision.sentBack ? (
+                  <span className="w-full text-ink-soft">
+                    {revision.sentBack.by} had sent revision {revision.number - 1} back:{" "}
+                    {revision.sentBack.reason}
+                  </span>
+                ) : null}
               </li>
             ))}
           </ol>
@@ -198,6 +232,30 @@ function Links({
         <LinkButton to={`${home}/archive/${unit.number}/trail`} icon={History}>
           Trail
         </LinkButton>
+      ) : null}
+      {may.succeed ? (
+        <ConfirmDialog
+          trigger="Start a new version"
+          triggerVariant="secondary"
+          triggerIcon={CopyPlus}
+          title={`Start a new version of unit ${unit.number}?`}
+          confirm="Start it"
+          confirmVariant="primary"
+          fields={{ intent: "succeed", version: String(unit.version) }}
+        >
+          <p>
+            A new unit with the next number begins as a draft, with a copy of the facts and the energy map.
+            Photos are not copied: they must show the new version.
+          </p>
+          {unit.state === "signed" ? (
+            <p>
+              Unit {unit.number} stays as it is, and in force, until the new version is signed; then it is
+              superseded. If you change this unit itself, unplug it and mark it first.
+            </p>
+          ) : (
+            <p>Unit {unit.number} stays as it is and must not be plugged in.</p>
+          )}
+        </ConfirmDialog>
       ) : null}
     </>
   );

@@ -14,6 +14,7 @@ import { FindingList } from "./finding-list";
 import { SubmitPanel } from "./submit-panel";
 import { unitActionSchema } from "./unit-action.schema";
 import { refuse, refuseForm } from "./refusal.server";
+import { SentBackNote } from "./sent-back-note";
 import { UnitHead } from "./unit-head";
 
 export async function loader({ params, context }: Route.LoaderArgs) {
@@ -52,6 +53,9 @@ export default function Rework({ loaderData, actionData }: Route.ComponentProps)
       <div className="space-y-5">
         {actionData?.conflict ? (
           <ConflictNotice message={actionData.message} reloadHref={`${base}/rework`} />
+        ) : null}
+        {loaderData.sentBack ? (
+          <SentBackNote sentBack={loaderData.sentBack} revision={unit.revision} />
         ) : null}
         <Sheet
           title={`Findings to answer (${open.length})`}

@@ -163,7 +163,7 @@ export const recordSchema = z.object({
   facts: unitFactsSchema,
   map: energyMapSchema,
   ruleSet: z.object({ key: z.string(), version: z.string(), title: z.string(), region: z.string() }),
-  /** How an instrument's accuracy became an uncertainty. */
+  /** How an instrument's accuracy became an uncertainty, pinned like the rule set when the revision was submitted. */
   accuracyPolicy: z.enum(["rect", "maker-k2"]),
   statements: z.array(
     z.object({
@@ -195,8 +195,10 @@ export const recordSchema = z.object({
     conditions: conditionsSchema.nullable(),
     recheckOn: day.nullable(),
     signer: z.object({
+      /** What the account was called; the licence's own holder is the person who decided. */
       name: z.string(),
       licence: z.object({
+        holder: z.string(),
         number: z.string(),
         authority: z.string(),
         validFrom: day,
@@ -225,5 +227,5 @@ export const recordCautions = [
   "Dangerous voltages may be present inside the unit, also with its switches off. Only a competent person may open it, after unplugging it, disconnecting its batteries and letting it discharge.",
   "This record states what was examined and measured on that day, on that revision of the unit. It is no promise about any other day.",
   "The codes in force at the place of use and the judgement of the licensed person prevail over anything computed here.",
-  "Any change to the unit ends its validity: have it examined again before it is plugged in.",
+  "Any change to the unit ends its validity: a new version of it must be examined and signed before it is plugged in.",
 ] as const;
