@@ -35,7 +35,6 @@ export async function workSheet({ page }: Person, fault?: Fault): Promise<string
     await steps.waitFor();
     await expectNoAxeViolations(page);
     const title = await page.getByRole("heading", { level: 1 }).innerText();
-    const here = page.url();
     if (done.length === 0) await stepByKeys(page);
     if (await page.getByText("The required photo is missing.").isVisible()) {
       await addPhoto(page, "Add photos", `step-${done.length}.jpg`);
@@ -47,13 +46,20 @@ export async function workSheet({ page }: Person, fault?: Fault): Promise<string
     const goOn = page.getByRole("button", { name: "Save and go on" });
     if (await goOn.isVisible()) {
       await goOn.click();
-      await page.waitForURL((url) => url.href !== here);
+      await stepChanged(page, title);
       continue;
     }
     await page.getByRole("button", { name: "Save", exact: true }).click();
     await page.getByRole("button", { name: "Correct this answer" }).waitFor();
     return done;
   }
+}
+
+/** Waits until another step than the one with that title is shown: the address changes before the page does. */
+export async function stepChanged(page: Page, from: string): Promise<void> {
+  await expect
+    .poll(() => page.getByRole("heading", { level: 1 }).innerText(), { timeout: 30_000 })
+    .not.toBe(from);
 }
 
 /** Next and previous by the keyboard, in both ways of writing them, and back where one was. */
@@ -65,9 +71,9 @@ async function stepByKeys(page: Page): Promise<void> {
     ["ArrowRight", "ArrowLeft"],
   ] as const) {
     await page.keyboard.press(forward);
-    await expect.poll(title).not.toBe(first);
+    await stepChanged(page, first);
     await page.keyboard.press(back);
-    await expect.poll(title).toBe(first);
+    await expect.poll(title, { timeout: 30_000 }).toBe(first);
   }
 }
 
