@@ -30,7 +30,7 @@ CREATE TABLE `observations` (
 	`id` int unsigned AUTO_INCREMENT NOT NULL,
 	`unit_id` int unsigned NOT NULL,
 	`revision_id` int unsigned NOT NULL,
-	`check_key` varchar(190) NOT NULL,
+	`check_key` varchar(190) character set utf8mb4 collate utf8mb4_bin NOT NULL,
 	`kind` enum('measured','examined','not-applicable','not-possible','carried-over') NOT NULL,
 	`value` double,
 	`bound` enum('over','under'),
@@ -149,6 +149,7 @@ CREATE TABLE `licences` (
 	`id` int unsigned AUTO_INCREMENT NOT NULL,
 	`workshop_id` int unsigned NOT NULL,
 	`person_id` int unsigned NOT NULL,
+	`holder_name` varchar(120) NOT NULL,
 	`number` varchar(60) NOT NULL,
 	`authority` varchar(120) NOT NULL,
 	`valid_from` date NOT NULL,
@@ -262,7 +263,7 @@ CREATE TABLE `files` (
 	`revision_id` int unsigned NOT NULL,
 	`kind` enum('photo','drawing') NOT NULL,
 	`subject` enum('unit','check','finding','answer') NOT NULL,
-	`check_key` varchar(190),
+	`check_key` varchar(190) character set utf8mb4 collate utf8mb4_bin,
 	`finding_id` int unsigned,
 	`content_type` varchar(60) NOT NULL,
 	`bytes` int unsigned NOT NULL,
@@ -297,7 +298,7 @@ CREATE TABLE `findings` (
 	`revision_id` int unsigned NOT NULL,
 	`number` int unsigned NOT NULL,
 	`severity` enum('danger','defect','advice') NOT NULL,
-	`check_key` varchar(190),
+	`check_key` varchar(190) character set utf8mb4 collate utf8mb4_bin,
 	`element_id` varchar(40),
 	`text` text NOT NULL,
 	`raised_by_id` int unsigned NOT NULL,
@@ -327,6 +328,7 @@ CREATE TABLE `revisions` (
 	`facts` json,
 	`rule_set_key` varchar(60) NOT NULL,
 	`rule_set_version` varchar(20) NOT NULL,
+	`accuracy_policy` enum('rect','maker-k2'),
 	`created_at` datetime(3) NOT NULL,
 	`submitted_at` datetime(3),
 	`sent_back_reason` text,
@@ -428,6 +430,7 @@ CREATE INDEX `records_by_unit` ON `records` (`unit_id`);--> statement-breakpoint
 CREATE INDEX `jobs_due` ON `jobs` (`done_at`,`due_at`);--> statement-breakpoint
 CREATE INDEX `outbox_due` ON `outbox` (`sent_at`,`due_at`);--> statement-breakpoint
 CREATE INDEX `failed_tries_by_key` ON `failed_tries` (`key`,`at`);--> statement-breakpoint
+CREATE INDEX `failed_tries_by_moment` ON `failed_tries` (`at`);--> statement-breakpoint
 CREATE INDEX `licences_by_person` ON `licences` (`workshop_id`,`person_id`);--> statement-breakpoint
 CREATE INDEX `memberships_by_person` ON `memberships` (`person_id`);--> statement-breakpoint
 CREATE INDEX `sessions_by_person` ON `sessions` (`person_id`);--> statement-breakpoint
@@ -438,4 +441,5 @@ CREATE INDEX `audit_entries_by_unit` ON `audit_entries` (`unit_id`,`sequence`);-
 CREATE INDEX `bench_turns_by_unit` ON `bench_turns` (`unit_id`,`taken_at`);--> statement-breakpoint
 CREATE INDEX `files_by_unit` ON `files` (`unit_id`,`subject`,`check_key`);--> statement-breakpoint
 CREATE INDEX `units_by_state` ON `units` (`workshop_id`,`state`,`changed_at`);--> statement-breakpoint
+CREATE INDEX `units_by_change` ON `units` (`workshop_id`,`changed_at`);--> statement-breakpoint
 CREATE INDEX `units_by_builder` ON `units` (`workshop_id`,`builder_id`,`changed_at`);

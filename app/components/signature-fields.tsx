@@ -1,6 +1,6 @@
 /**
  * The signature of a form: drawn, or typed as a choice of equal standing, and the password that is asked for in the act.
- *   <SignatureFields fields={fields} signer={person.name} />
+ *   <SignatureFields fields={fields} signer={licence.holderName} />
  */
 import { useId, useState } from "react";
 import { SignaturePad } from "./signature-pad";
@@ -53,7 +53,7 @@ export function SignatureFields({ fields, signer }: SignatureFieldsProps) {
         <InputField
           field={fields.typedName}
           label="Your name"
-          hint={`As it is known here: ${signer}`}
+          hint={`As your licence says it: ${signer}`}
           autoComplete="off"
           spellCheck={false}
         />

@@ -19,26 +19,33 @@ test.each(["2026-01-01", "2026-06-15", "2026-12-31"])("counts on %s", (day) => {
 test("does not count the day before it begins or the day after it ends, and says so", () => {
   expect(fitLicence([licence], lamp, "2025-12-31")).toEqual({
     kind: "not-in-date",
-    reason: "Licence E-1 (Test Authority) counts from 2026-01-01 on.",
+    reasons: ["Licence E-1 (Test Authority) begins only on 2026-01-01."],
   });
   expect(fitLicence([licence], lamp, "2027-01-01")).toEqual({
     kind: "not-in-date",
-    reason: "Licence E-1 (Test Authority) lapsed after 2026-12-31.",
+    reasons: ["Licence E-1 (Test Authority) lapsed: its last day was 2026-12-31."],
   });
 });
 
 test("no licence, or a revoked one, is no licence", () => {
-  expect(fitLicence([], lamp, "2026-06-15").kind).toBe("not-in-date");
+  expect(fitLicence([], lamp, "2026-06-15")).toMatchObject({
+    kind: "not-in-date",
+    reasons: [expect.stringContaining("no licence on file")],
+  });
   expect(fitLicence([{ ...licence, revoked: true }], lamp, "2026-06-15")).toMatchObject({
     kind: "not-in-date",
-    reason: expect.stringContaining("revoked"),
+    reasons: [expect.stringContaining("revoked")],
   });
 });
 
 test("the scope is the supply voltage and batteries, each named when it is too small", () => {
-  const fit = fitLicence([licence], { supplyVolts: 400, hasBattery: true }, "2026-06-15");
-  expect(fit).toMatchObject({ kind: "not-in-scope", reason: expect.stringContaining("up to 230 V") });
-  expect(fit).toMatchObject({ reason: expect.stringContaining("batteries") });
+  expect(fitLicence([licence], { supplyVolts: 400, hasBattery: true }, "2026-06-15")).toEqual({
+    kind: "not-in-scope",
+    reasons: [
+      "Licence E-1 (Test Authority) covers supplies up to 230 V; this unit is for 400 V.",
+      "Licence E-1 (Test Authority) does not cover battery equipment; this unit has a battery.",
+    ],
+  });
   expect(fitLicence([licence], { supplyVolts: 230.1, hasBattery: false }, "2026-06-15").kind).toBe(
     "not-in-scope",
   );

@@ -15,16 +15,17 @@ export interface LicenceNeed {
   hasBattery: boolean;
 }
 
+/** `reasons` are sentences for the person whose licences were looked at. */
 export type LicenceFit<T extends LicenceTerms> =
   | { kind: "fits"; licence: T }
   /** No licence counts on that day. */
-  | { kind: "not-in-date"; reason: string }
+  | { kind: "not-in-date"; reasons: string[] }
   /** One counts on that day, but doesn't reach as far as the unit. */
-  | { kind: "not-in-scope"; reason: string };
+  | { kind: "not-in-scope"; reasons: string[] };
 
 /** Whether a licence counts on a day (YYYY-MM-DD in the workshop's time zone). */
 export function licenceInDate(licence: LicenceTerms, day: string): boolean {
-  return !licence.revoked && licence.validFrom <= day && day <= licence.validTo;
+  return objectionsToDate(licence, day).length === 0;
 }
 
 /** Finds, among a person's licences, the one that covers a unit on a day, or says in words why none does. */
@@ -33,33 +34,38 @@ export function fitLicence<T extends LicenceTerms>(
   need: LicenceNeed,
   day: string,
 ): LicenceFit<T> {
+  if (licences.length === 0) {
+    return {
+      kind: "not-in-date",
+      reasons: ["You have no licence on file in this workshop. A steward enters it after seeing it."],
+    };
+  }
   const counting = licences.filter((licence) => licenceInDate(licence, day));
-  if (counting.length === 0) return { kind: "not-in-date", reason: whyNoneCounts(licences, day) };
-  const fitting = counting.find((licence) => objectionsOf(licence, need).length === 0);
+  if (counting.length === 0) {
+    return { kind: "not-in-date", reasons: licences.flatMap((licence) => objectionsToDate(licence, day)) };
+  }
+  const fitting = counting.find((licence) => objectionsToScope(licence, need).length === 0);
   if (fitting) return { kind: "fits", licence: fitting };
-  const reason = counting
-    .map((licence) => `${name(licence)} ${objectionsOf(licence, need).join(" and ")}.`)
-    .join(" ");
-  return { kind: "not-in-scope", reason };
+  return { kind: "not-in-scope", reasons: counting.flatMap((licence) => objectionsToScope(licence, need)) };
 }
 
-function objectionsOf(licence: LicenceTerms, need: LicenceNeed): string[] {
+function objectionsToDate(licence: LicenceTerms, day: string): string[] {
+  if (licence.revoked) return [`${name(licence)} has been revoked.`];
+  if (day < licence.validFrom) return [`${name(licence)} begins only on ${licence.validFrom}.`];
+  if (day > licence.validTo) return [`${name(licence)} lapsed: its last day was ${licence.validTo}.`];
+  return [];
+}
+
+function objectionsToScope(licence: LicenceTerms, need: LicenceNeed): string[] {
   return [
     // Written so that a voltage that is no number fits nothing.
     !(need.supplyVolts <= licence.maxSupplyVolts)
-      ? `covers supplies up to ${licence.maxSupplyVolts} V, and this unit takes ${need.supplyVolts} V`
+      ? `${name(licence)} covers supplies up to ${licence.maxSupplyVolts} V; this unit is for ${need.supplyVolts} V.`
       : null,
-    need.hasBattery && !licence.coversBatteries ? "doesn’t cover equipment with batteries" : null,
+    need.hasBattery && !licence.coversBatteries
+      ? `${name(licence)} does not cover battery equipment; this unit has a battery.`
+      : null,
   ].filter((objection) => objection !== null);
-}
-
-function whyNoneCounts(licences: readonly LicenceTerms[], day: string): string {
-  if (licences.length === 0) return "No licence is recorded for you in this workshop.";
-  const latest = licences.reduce((a, b) => (b.validTo > a.validTo ? b : a));
-  if (latest.revoked) return `${name(latest)} was revoked.`;
-  return day < latest.validFrom
-    ? `${name(latest)} counts from ${latest.validFrom} on.`
-    : `${name(latest)} lapsed after ${latest.validTo}.`;
 }
 
 function name(licence: LicenceTerms): string {

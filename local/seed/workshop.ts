@@ -114,7 +114,7 @@ export async function seedWorkshop(
     },
     passwordOf: (name) => find(name).password,
   };
-  await seedLicences(workshop, idOf, start, today);
+  await seedLicences(workshop, (name) => ({ id: idOf(name), name: find(name).name }), start, today);
   return { workshop, steps: [await seedInstruments(workshop, start, today)] };
 }
 
@@ -135,14 +135,16 @@ async function insertWorkshop(db: Database, values: typeof MAIN, at: Date): Prom
 /** Elif's licence is in order; Emeka's ran out yesterday, so that the guard can be met. */
 async function seedLicences(
   workshop: DemoWorkshop,
-  idOf: (name: string) => number,
+  personCalled: (name: string) => { id: number; name: string },
   start: Date,
   today: Date,
 ): Promise<void> {
   const steward = workshop.as("Stina", "steward", start);
   const authority = "Demo Licensing Office";
+  const [elif, emeka] = [personCalled("Elif"), personCalled("Emeka")];
   await addLicence(steward, {
-    personId: idOf("Elif"),
+    personId: elif.id,
+    holderName: elif.name,
     number: "DEMO-4471",
     authority,
     validFrom: day(start, -200),
@@ -151,7 +153,8 @@ async function seedLicences(
     coversBatteries: true,
   });
   await addLicence(steward, {
-    personId: idOf("Emeka"),
+    personId: emeka.id,
+    holderName: emeka.name,
     number: "DEMO-5120",
     authority,
     validFrom: day(start, -200),

@@ -213,6 +213,7 @@ test("a steward keeps licences, instruments and settings", async () => {
 
   await page.goto(`${home}/licences`);
   await page.getByLabel("Electrician").selectOption({ label: "Test electrician" });
+  await page.getByLabel("Holder’s name").fill("Tess Electrician");
   await page.getByLabel("Number").fill("E-77");
   await page.getByLabel("Issued by").fill("Test Authority");
   await page.getByLabel("Counts from").fill("2026-01-01");
@@ -224,6 +225,7 @@ test("a steward keeps licences, instruments and settings", async () => {
   await page.getByRole("button", { name: "Record the licence" }).click();
   await page.getByText("The licence is recorded.").waitFor();
   await page.getByText("Counts today").waitFor();
+  await page.getByText("Tess Electrician (Test electrician here)").first().waitFor();
   await expectNoAxeViolations(page);
 
   await page.goto(`${home}/instruments/new`);

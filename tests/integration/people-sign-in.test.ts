@@ -133,7 +133,7 @@ test("one address gets thirty wrong tries whoever they aim at, and no success cl
   ).resolves.toEqual(person);
 });
 
-test("confirming one's password counts with the tries to sign in", async () => {
+test("wrong passwords at confirming count apart from those at signing in, so that no stranger keeps anybody from withdrawing", async () => {
   const person = await newPerson();
   const address = newAddress();
   await confirmPassword(db, person, { password, address }, now);
@@ -142,9 +142,19 @@ test("confirming one's password counts with the tries to sign in", async () => {
       "That is not your password.",
     );
   }
-  await expect(authenticate(db, { email: person.email, password, address }, now)).rejects.toThrow(
-    ThrottledError,
-  );
+  await expect(confirmPassword(db, person, { password, address }, now)).rejects.toThrow(ThrottledError);
+  // Their own tries to confirm don't lock them out of signing in either.
+  await authenticate(db, { email: person.email, password, address }, now);
+
+  const besieged = await newPerson();
+  for (let i = 0; i < 5; i++) {
+    const stranger = { email: besieged.email, password: "wrong", address: newAddress() };
+    await expect(authenticate(db, stranger, now)).rejects.toThrow(AuthenticationError);
+  }
+  await expect(
+    authenticate(db, { email: besieged.email, password, address: newAddress() }, now),
+  ).rejects.toThrow(ThrottledError);
+  await confirmPassword(db, besieged, { password, address }, now);
 });
 
 test("a session is found by its secret until it is revoked or unused for two weeks", async () => {

@@ -1,3 +1,4 @@
+import { createHash } from "node:crypto";
 import { and, desc, eq } from "drizzle-orm";
 import { expect, test } from "vitest";
 import { tables } from "~/db/client.server";
@@ -11,12 +12,15 @@ import {
   listInvitations,
   resendInvitation,
 } from "~/services/people/invitations.server";
-import { addLicence, licenceFor, listLicences, revokeLicence } from "~/services/people/licences.server";
+import { addLicence, licencesOf, listLicences, revokeLicence } from "~/services/people/licences.server";
+import { renamePerson } from "~/services/people/account.server";
 import { changeRoles, getMember, listMembers, removeMember } from "~/services/people/members.server";
 import { hashPassword } from "~/services/people/passwords.server";
 import { findWorkshop, listWorkshops } from "~/services/people/workshops.server";
+import { fitLicence } from "~/workflow/licence-fit";
 import {
   everyRole,
+  grantRoles,
   makeLicence,
   makeMember,
   makePerson,
@@ -43,6 +47,8 @@ async function mailedInvitation(email: string): Promise<string> {
   if (!secret) throw new Error(`No invitation was mailed to ${email}.`);
   return secret;
 }
+
+const sha256 = (text: string) => createHash("sha256").update(text).digest("hex");
 
 async function trail(workshopId: number) {
   const rows = await db
@@ -307,10 +313,12 @@ test("a licence counts within its dates and scope until it is revoked", async ()
   const { as, workshop, people } = await makeWorkshop(db);
   const { id: personId } = people.electrician;
   const lamp = { supplyVolts: 230, hasBattery: false };
-  const fit = (day: string, need = lamp) => licenceFor(db, workshop.id, personId, need, day);
+  const fit = async (day: string, need = lamp) =>
+    fitLicence(await licencesOf(db, workshop.id, personId), need, day);
   expect(await fit("2026-05-04")).toMatchObject({ kind: "not-in-date" });
   const id = await addLicence(as("steward"), {
     personId,
+    holderName: "Tess Electrician",
     number: "L-1",
     authority: "Authority",
     validFrom: "2026-01-01",
@@ -318,10 +326,13 @@ test("a licence counts within its dates and scope until it is revoked", async ()
     maxSupplyVolts: 230,
     coversBatteries: false,
   });
-  expect(await fit("2026-05-03")).toMatchObject({ kind: "fits", licence: { id } });
+  expect(await fit("2026-05-03")).toMatchObject({
+    kind: "fits",
+    licence: { id, holderName: "Tess Electrician" },
+  });
   expect(await fit("2026-05-04")).toMatchObject({
     kind: "not-in-date",
-    reason: expect.stringContaining("lapsed"),
+    reasons: [expect.stringContaining("lapsed")],
   });
   expect(await fit("2026-05-03", { supplyVolts: 230, hasBattery: true })).toMatchObject({
     kind: "not-in-scope",
@@ -329,7 +340,7 @@ test("a licence counts within its dates and scope until it is revoked", async ()
   await revokeLicence(as("steward"), id);
   expect(await fit("2026-05-03")).toMatchObject({
     kind: "not-in-date",
-    reason: expect.stringContaining("revoked"),
+    reasons: [expect.stringContaining("revoked")],
   });
   await revokeLicence(as("steward"), id);
   expect((await trail(workshop.id)).map(({ act }) => act)).toEqual(["licence.add", "licence.revoke"]);
@@ -339,6 +350,7 @@ test("only an electrician of the workshop gets a licence, and a number only once
   const made = await makeWorkshop(db);
   const input = {
     personId: made.people.electrician.id,
+    holderName: "Tess Electrician",
     number: "L-2",
     authority: "Authority",
     validFrom: "2026-01-01",
@@ -355,6 +367,25 @@ test("only an electrician of the workshop gets a licence, and a number only once
     ForbiddenError,
   );
   expect(await listLicences(made.as("steward"))).toMatchObject([
-    { number: "L-2", holder: "Test electrician" },
+    { number: "L-2", holderName: "Tess Electrician", account: "Test electrician" },
   ]);
+});
+
+test("who renames themselves is told of in the trail of each workshop that they belong to, without the names", async () => {
+  const first = await makeWorkshop(db);
+  const second = await makeWorkshop(db);
+  const foreign = await makeWorkshop(db);
+  const person = await makeMember(db, first, ["builder", "inspector"], { name: "Nadia Before" });
+  await grantRoles(db, second.workshop.id, person.id, ["builder"]);
+  await renamePerson(db, person.id, "Nadia After", now);
+  await renamePerson(db, person.id, "Nadia After", now);
+  for (const { workshop } of [first, second]) {
+    const entries = await trail(workshop.id);
+    expect(entries.map(({ act }) => act)).toEqual(["person.rename"]);
+    expect(JSON.stringify(entries)).not.toContain("Nadia");
+    expect(entries[0]?.detail).toMatchObject({ person: person.id, after: sha256("Nadia After") });
+  }
+  expect(await trail(foreign.workshop.id)).toEqual([]);
+  const [row] = await db.select().from(tables.people).where(eq(tables.people.id, person.id));
+  expect(row?.name).toBe("Nadia After");
 });

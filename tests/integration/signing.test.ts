@@ -6,6 +6,9 @@ import { and, eq } from "drizzle-orm";
 import sharp from "sharp";
 import { describe, expect, test } from "vitest";
 import { tables } from "~/db/client.server";
+import { findRecord } from "~/services/archive/find-record.server";
+import { loadSheet } from "~/services/bench/load-sheet.server";
+import type { ServiceContext } from "~/services/context.server";
 import { database } from "~/services/database.server";
 import {
   AuthenticationError,
@@ -276,6 +279,47 @@ describe("a guard stops the signature, in words:", () => {
 });
 
 describe("the act of signing", () => {
+  test("a typed name is the one on the licence, which the record carries, whatever the account is called now", async () => {
+    const bench = await makeReviewable(db, { licence: { holderName: "Tess Licensed" } });
+    const electrician = bench.as("electrician");
+    const typed = (typedName: string) =>
+      signInput(electrician, bench.unit.number, { signature: { method: "typed", typedName } });
+    await expect(signUnit(electrician, await typed(electrician.person.name))).rejects.toMatchObject({
+      field: "typedName",
+      message: expect.stringContaining("Tess Licensed"),
+    });
+    expect(await decisionsOf(bench)).toEqual([]);
+    await signUnit(electrician, await typed("tess  licensed"));
+    const { record } = await findRecord(electrician, await unitNow(electrician, bench.unit.number));
+    expect(record.decision.signer).toMatchObject({
+      name: electrician.person.name,
+      licence: { holder: "Tess Licensed" },
+    });
+  });
+
+  test("judges by the accuracy policy of the submission, also when the workshop has another one by now", async () => {
+    const bench = await makeReviewable(db);
+    const changed: ServiceContext = {
+      ...bench.as("electrician"),
+      workshop: { ...bench.as("electrician").workshop, accuracyPolicy: "maker-k2" },
+    };
+    const unit = await unitNow(changed, bench.unit.number);
+    const uncertainties = async (context: ServiceContext) =>
+      (await loadSheet(context, unit)).lines.flatMap(({ judged }) => judged?.expandedUncertainty ?? []);
+    const pinned = await uncertainties(bench.as("electrician"));
+    expect(pinned.length).toBeGreaterThan(0);
+    expect(await uncertainties(changed)).toEqual(pinned);
+    await signUnit(changed, await signInput(changed, bench.unit.number));
+    const { record } = await findRecord(changed, await unitNow(changed, bench.unit.number));
+    expect(record.accuracyPolicy).toBe("rect");
+    // The pin is what does it: unpinned, the sheet would be judged by the workshop's policy of now.
+    await db
+      .update(tables.revisions)
+      .set({ accuracyPolicy: null })
+      .where(eq(tables.revisions.unitId, bench.unit.id));
+    expect(await uncertainties(changed)).not.toEqual(pinned);
+  });
+
   test("asks for the password again and throttles wrong ones", async () => {
     const bench = await makeReviewable(db);
     const electrician = bench.as("electrician");

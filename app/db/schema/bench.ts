@@ -12,7 +12,7 @@ import {
   unique,
   varchar,
 } from "drizzle-orm/mysql-core";
-import { id, moment, ref } from "./columns";
+import { checkKeyColumn, id, moment, ref } from "./columns";
 import { people, workshops } from "./people";
 import { revisions, units } from "./units";
 
@@ -82,7 +82,7 @@ export const observations = mysqlTable(
     revisionId: ref()
       .notNull()
       .references(() => revisions.id),
-    checkKey: varchar({ length: 190 }).notNull(),
+    checkKey: checkKeyColumn().notNull(),
     kind: mysqlEnum(observationKinds).notNull(),
     /** The value displayed, for "measured"; `bound` tells that the display read over or under its range. */
     value: double(),

@@ -14,6 +14,9 @@ import {
 import { roles, type Role } from "~/workflow/roles";
 import { id, moment, ref } from "./columns";
 
+/** The policies of engine/verdict.ts by which a stated accuracy becomes an uncertainty. */
+export const accuracyPolicies = ["rect", "maker-k2"] as const;
+
 export const people = mysqlTable("people", {
   id: id(),
   email: varchar({ length: 254 }).notNull().unique(),
@@ -32,7 +35,7 @@ export const workshops = mysqlTable("workshops", {
   ruleSetKey: varchar({ length: 60 }).notNull(),
   ruleSetVersion: varchar({ length: 20 }).notNull(),
   /** How an instrument's accuracy becomes an uncertainty: see engine/verdict.ts. */
-  accuracyPolicy: mysqlEnum(["rect", "maker-k2"]).notNull(),
+  accuracyPolicy: mysqlEnum(accuracyPolicies).notNull(),
   /** Months until the recheck date that the signing page proposes. */
   recheckMonths: int({ unsigned: true }).notNull(),
   /** The number that the next unit gets; incremented under this row's lock. */
@@ -68,6 +71,8 @@ export const licences = mysqlTable(
     personId: ref()
       .notNull()
       .references(() => people.id),
+    /** As the licence itself says it: signatures and records carry this name, whatever the account is called. */
+    holderName: varchar({ length: 120 }).notNull(),
     number: varchar({ length: 60 }).notNull(),
     authority: varchar({ length: 120 }).notNull(),
     validFrom: date({ mode: "string" }).notNull(),
@@ -131,5 +136,8 @@ export const failedTries = mysqlTable(
     key: varchar({ length: 320 }).notNull(),
     at: moment().notNull(),
   },
-  (table) => [index("failed_tries_by_key").on(table.key, table.at)],
+  (table) => [
+    index("failed_tries_by_key").on(table.key, table.at),
+    index("failed_tries_by_moment").on(table.at),
+  ],
 );

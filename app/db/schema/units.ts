@@ -15,8 +15,8 @@ import {
   varchar,
 } from "drizzle-orm/mysql-core";
 import { unitStates } from "~/workflow/states";
-import { id, moment, ref } from "./columns";
-import { people, workshops } from "./people";
+import { checkKeyColumn, id, moment, ref } from "./columns";
+import { accuracyPolicies, people, workshops } from "./people";
 
 export const units = mysqlTable(
   "units",
@@ -58,6 +58,7 @@ export const units = mysqlTable(
   (table) => [
     unique("units_number").on(table.workshopId, table.number),
     index("units_by_state").on(table.workshopId, table.state, table.changedAt),
+    index("units_by_change").on(table.workshopId, table.changedAt),
     index("units_by_builder").on(table.workshopId, table.builderId, table.changedAt),
     foreignKey({ name: "units_predecessor", columns: [table.predecessorId], foreignColumns: [table.id] }),
     check("units_supply", sql`supply_volts > 0 and supply_hertz >= 0`),
@@ -81,6 +82,8 @@ export const revisions = mysqlTable(
     facts: json().$type<unknown>(),
     ruleSetKey: varchar({ length: 60 }).notNull(),
     ruleSetVersion: varchar({ length: 20 }).notNull(),
+    /** How accuracies become uncertainties on this revision, pinned at its submission; null while it is a draft. */
+    accuracyPolicy: mysqlEnum(accuracyPolicies),
     createdAt: moment().notNull(),
     submittedAt: moment(),
     /** Why the revision before this one was sent back, and by whom; null for a unit's first. */
@@ -154,7 +157,7 @@ export const files = mysqlTable(
     kind: mysqlEnum(["photo", "drawing"]).notNull(),
     subject: mysqlEnum(fileSubjects).notNull(),
     /** The check's key when the subject is a check. */
-    checkKey: varchar({ length: 190 }),
+    checkKey: checkKeyColumn(),
     findingId: ref().references(() => findings.id),
     contentType: varchar({ length: 60 }).notNull(),
     bytes: int({ unsigned: true }).notNull(),
@@ -191,7 +194,7 @@ export const findings = mysqlTable(
     /** Counts up within the unit: "Finding 3". */
     number: int({ unsigned: true }).notNull(),
     severity: mysqlEnum(severities).notNull(),
-    checkKey: varchar({ length: 190 }),
+    checkKey: checkKeyColumn(),
     elementId: varchar({ length: 40 }),
     text: text().notNull(),
     raisedById: ref()

@@ -49,7 +49,7 @@ export async function action({ request, context, url }: Route.ActionArgs) {
   const { value } = submission;
   switch (value.intent) {
     case "rename":
-      await renamePerson(database(), person.id, value.name);
+      await renamePerson(database(), person.id, value.name, new Date());
       return redirectWithFlash("/account", "Your name is changed.");
     case "end-session":
       await revokeSession(database(), person.id, value.session);

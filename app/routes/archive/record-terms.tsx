@@ -3,6 +3,7 @@ import { Caution } from "~/components/ui/caution";
 import { Sheet } from "~/components/ui/sheet";
 import { Day, Time } from "~/components/ui/time";
 import type { UnitRecord } from "~/services/records/record-format";
+import { nameMatches } from "~/services/signing/signing-rules";
 import type { Validity } from "~/workflow/states";
 import { ValidityBanner } from "./validity-banner";
 
@@ -41,10 +42,13 @@ export function RecordTerms({
       <Sheet title={decision.kind === "signed" ? "Signed" : "Refused"}>
         <p className="max-w-prose whitespace-pre-line">{decision.statement}</p>
         <p className="mt-3 font-medium">
-          {signer.name}, <Time at={decision.at} />
+          {signer.licence.holder}, <Time at={decision.at} />
+          {nameMatches(signer.name, signer.licence.holder) ? null : (
+            <span className="font-normal text-ink-soft"> (signed in as {signer.name})</span>
+          )}
         </p>
         <p className="text-sm text-ink-soft">
-          Licence {signer.licence.number}, {signer.licence.authority}, valid{" "}
+          Licence {signer.licence.number} of {signer.licence.holder}, {signer.licence.authority}, valid{" "}
           <Day on={signer.licence.validFrom} /> to <Day on={signer.licence.validTo} />, up to{" "}
           {signer.licence.maxSupplyVolts} V,{" "}
           {signer.licence.coversBatteries ? "batteries included" : "no batteries"}. Signature{" "}

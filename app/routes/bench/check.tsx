@@ -38,7 +38,7 @@ export async function loader({ context, params, url }: Route.LoaderArgs) {
       total: sheet.lines.length,
       decided: sheet.progress.decided,
       elements: sheet.revision.map.elements.map(({ id, label }) => ({ id, label })),
-      policy: services.workshop.accuracyPolicy,
+      policy: sheet.accuracyPolicy,
       whyNot: decision.allowed ? null : decision.reason,
       personId: services.person.id,
     };

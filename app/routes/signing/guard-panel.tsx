@@ -23,7 +23,7 @@ export function GuardPanel({
 }: {
   guards: readonly { guard: ReviewGuard; reasons: GuardReason[] }[];
   /** The one that a decision would rest on. */
-  licence: { number: string; authority: string; validTo: string } | null;
+  licence: { holder: string; number: string; authority: string; validTo: string } | null;
   /** The address of the unit on the bench. */
   benchBase: string;
 }) {
@@ -55,7 +55,8 @@ export function GuardPanel({
               </p>
               {guard === "licence-in-date" && licence ? (
                 <p className="text-sm text-ink-soft">
-                  {licence.number}, {licence.authority}, until <Day on={licence.validTo} />
+                  {licence.number}, {licence.authority}, of {licence.holder}, until{" "}
+                  <Day on={licence.validTo} />
                 </p>
               ) : null}
               {reasons.length > 0 ? (

@@ -62,9 +62,10 @@ export async function loader({ context, params, url }: Route.LoaderArgs) {
         version: unit.version,
       },
       builder: review.builder,
-      signer: person.name,
+      signer: report.licence?.holderName ?? person.name,
       guards: reviewGuards.map((guard) => ({ guard, reasons: report.guards[guard] })),
       licence: report.licence && {
+        holder: report.licence.holderName,
         number: report.licence.number,
         authority: report.licence.authority,
         validTo: report.licence.validTo,

@@ -50,6 +50,12 @@ export function LicenceForm({
           placeholder="Choose"
           options={electricians.map(({ id, name }) => ({ value: String(id), label: name }))}
         />
+        <InputField
+          field={fields.holderName}
+          label={labels.holderName}
+          hint="As the licence itself says it. The electrician signs with this name, and records carry it."
+          autoComplete="off"
+        />
         <InputField field={fields.number} label={labels.number} autoComplete="off" />
         <InputField field={fields.authority} label={labels.authority} autoComplete="off" />
         <div className="grid gap-4 sm:grid-cols-2">
@@ -73,6 +79,7 @@ export function LicenceForm({
 
 const labels = {
   personId: "Electrician",
+  holderName: "Holder’s name",
   number: "Number",
   authority: "Issued by",
   validFrom: "Counts from",

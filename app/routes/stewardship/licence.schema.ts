@@ -8,6 +8,7 @@ export const addLicenceSchema = z
   .object({
     intent: z.literal("add"),
     personId: z.number({ error: "Choose the electrician." }).int().positive(),
+    holderName: text("Enter the holder’s name as the licence says it.", 120),
     number: text("Enter the licence’s number.", 60),
     authority: text("Enter who issued it.", 120),
     validFrom: day("Enter the first day on which it counts."),

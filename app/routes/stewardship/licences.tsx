@@ -119,7 +119,13 @@ const standings: Record<Standing, { word: string; tone: "pass" | "fail" | "idle"
 };
 
 const columns: Column<LicenceRow>[] = [
-  { id: "holder", header: "Holder", primary: true, cell: (row) => row.holder },
+  {
+    id: "holder",
+    header: "Holder",
+    primary: true,
+    cell: (row) =>
+      row.account === row.holderName ? row.holderName : `${row.holderName} (${row.account} here)`,
+  },
   { id: "number", header: "Number", cell: (row) => `${row.number}, ${row.authority}` },
   {
     id: "dates",
@@ -158,8 +164,8 @@ const columns: Column<LicenceRow>[] = [
           fields={{ intent: "revoke", licence: String(row.id) }}
         >
           <p>
-            {row.holder} can sign nothing under it any more. What was signed stays signed. A renewed licence
-            is recorded as a new one.
+            {row.holderName} can sign nothing under it any more. What was signed stays signed. A renewed
+            licence is recorded as a new one.
           </p>
         </ConfirmDialog>
       ),

@@ -32,6 +32,8 @@ export async function loadSheet(
   db: Reader = services.db,
 ): Promise<Sheet> {
   const revision = await loadRevision(db, unit, revisionNumber);
+  // A draft will be judged by what the workshop uses when it is submitted.
+  const accuracyPolicy = revision.accuracyPolicy ?? services.workshop.accuracyPolicy;
   const analysis = analyse(revision.map, revision.ruleSet, revision.facts);
   const checks = deriveBenchSheet(revision.map, revision.ruleSet, revision.facts, analysis);
   const observations = (await listObservations(db, unit.id)).filter(
@@ -48,7 +50,7 @@ export async function loadSheet(
     );
     return {
       check,
-      ...judgeLine(check, observation, services.workshop.accuracyPolicy),
+      ...judgeLine(check, observation, accuracyPolicy),
       observation,
       history,
       photos: ownPhotos,
@@ -56,7 +58,7 @@ export async function loadSheet(
       findings: findings.filter((finding) => finding.checkKey === check.key),
     };
   });
-  return { revision, analysis, lines, progress: progressOf(lines) };
+  return { revision, accuracyPolicy, analysis, lines, progress: progressOf(lines) };
 }
 
 /** The verdict of one check from its latest observation: the reading judged, then combined with the engine's answer. */

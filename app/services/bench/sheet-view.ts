@@ -1,7 +1,7 @@
 import type { Analysis } from "~/engine/analysis";
 import type { LineVerdict } from "~/engine/bench-answer";
 import type { BenchCheck, InstrumentKind } from "~/engine/bench-check";
-import type { Accuracy, Judgement } from "~/engine/verdict";
+import type { Accuracy, Judgement, UncertaintyPolicy } from "~/engine/verdict";
 import type { FileView } from "~/services/files/list-files.server";
 import type { LoadedRevision } from "~/services/units/load-revision.server";
 
@@ -105,6 +105,8 @@ export interface SheetProgress {
 
 export interface Sheet {
   revision: LoadedRevision;
+  /** How accuracies became uncertainties on this sheet. */
+  accuracyPolicy: UncertaintyPolicy;
   analysis: Analysis;
   /** In working order. */
   lines: SheetLine[];

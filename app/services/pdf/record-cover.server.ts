@@ -1,6 +1,7 @@
 import QRCode from "qrcode";
 import type { UnitRecord } from "~/services/records/record-format";
 import { dayWords, familyWords, momentWords, tally } from "~/services/records/record-words";
+import { nameMatches } from "~/services/signing/signing-rules";
 import { cautionBox, drawSign, paragraph, type Sign, titleBlock } from "./blocks.server";
 import {
   cautionWash,
@@ -212,7 +213,11 @@ async function drawSignature(
   paper.line(x, top, x, top - SIGNATURE_HEIGHT, strongRule, 0.5);
   const width = CONTENT - signWidth - qrSize - NOTE_WIDTH - 28;
   const facts = [
-    { text: decision.signer.name, size: 10.5, weight: "bold" as const },
+    { text: licence.holder, size: 10.5, weight: "bold" as const },
+    // The account's own name only where it says something else.
+    ...(nameMatches(decision.signer.name, licence.holder)
+      ? []
+      : [{ text: `signed in as ${decision.signer.name}`, size: 7.4 }]),
     { text: `Licence ${licence.number}`, size: 8.4 },
     { text: licence.authority, size: 8.4 },
     { text: `valid ${licence.validFrom} to ${licence.validTo}`, size: 8.4 },

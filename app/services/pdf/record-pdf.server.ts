@@ -52,7 +52,7 @@ export async function renderRecordPdf(input: RecordPdfInput): Promise<Uint8Array
   document.setTitle(`Unit ${record.unit.number}, ${record.unit.name}: ${decision}`, {
     showInWindowTitleBar: true,
   });
-  document.setAuthor(record.decision.signer.name);
+  document.setAuthor(record.decision.signer.licence.holder);
   document.setSubject(`Record of examination, SHA-256 ${sha256}`);
   document.setProducer("Mainsgate");
   document.setCreator("Mainsgate");

@@ -3,7 +3,7 @@ import type { SignedInPerson } from "~/context";
 import { type Database, tables } from "~/db/client.server";
 import { AuthenticationError } from "~/services/errors";
 import { passwordMatches } from "./passwords.server";
-import { addressKey, mailKey, noteTry } from "./throttle.server";
+import { addressKey, confirmKey, mailKey, noteTry } from "./throttle.server";
 
 const { people } = tables;
 
@@ -35,21 +35,25 @@ export async function authenticate(
 }
 
 /**
- * Asks a signed-in person for their password again, as before a signature or a change of password. Counts with the
- * tries to sign in.
+ * Asks a signed-in person for their password again, as before a signature or a change of password. Wrong ones count per
+ * person and address, and apart from the tries to sign in.
  *
  * @throws AuthenticationError when it is wrong, ThrottledError
  */
 export async function confirmPassword(
   db: Database,
-  person: SignedInPerson,
+  { id }: SignedInPerson,
   { password, address }: { password: string; address: string },
   now: Date,
 ): Promise<void> {
-  try {
-    await authenticate(db, { email: person.email, password, address }, now);
-  } catch (error) {
-    if (error instanceof AuthenticationError) throw new AuthenticationError("That is not your password.");
-    throw error;
+  const key = confirmKey(id);
+  const attempt = await noteTry(db, [key, addressKey("confirm", address)], now);
+  const [person] = await db
+    .select({ passwordHash: people.passwordHash })
+    .from(people)
+    .where(eq(people.id, id));
+  if (!(await passwordMatches(person?.passwordHash ?? null, password))) {
+    throw new AuthenticationError("That is not your password.");
   }
+  await attempt.forgive([key]);
 }

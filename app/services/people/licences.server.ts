@@ -3,18 +3,22 @@ import { isDuplicate, type Reader, tables } from "~/db/client.server";
 import type { ServiceContext } from "~/services/context.server";
 import { InvalidInputError, NotFoundError } from "~/services/errors";
 import { actOnWorkshop } from "~/services/workshop-act.server";
-import { fitLicence, type LicenceFit, type LicenceNeed, type LicenceTerms } from "~/workflow/licence-fit";
+import type { LicenceTerms } from "~/workflow/licence-fit";
 
 const { licences, memberships, people } = tables;
 
 export interface LicenceView extends LicenceTerms {
   id: number;
   personId: number;
+  /** As the licence itself says it. */
+  holderName: string;
   revokedAt: Date | null;
 }
 
 export interface LicenceInput {
   personId: number;
+  /** As the licence itself says it: this is the name that the holder signs with. */
+  holderName: string;
   number: string;
   authority: string;
   validFrom: string;
@@ -25,37 +29,36 @@ export interface LicenceInput {
 
 /** A person's licences recorded by one workshop, the one that lasts longest first. */
 export async function licencesOf(db: Reader, workshopId: number, personId: number): Promise<LicenceView[]> {
-  const rows = await db
+  return (await selectLicences(db, workshopId, personId)).map(view);
+}
+
+/** The same, locked against a revocation until the transaction ends. */
+export async function lockLicencesOf(
+  db: Reader,
+  workshopId: number,
+  personId: number,
+): Promise<LicenceView[]> {
+  // MariaDB has no "for share", and drizzle no "lock in share mode".
+  return (await selectLicences(db, workshopId, personId).for("update")).map(view);
+}
+
+function selectLicences(db: Reader, workshopId: number, personId: number) {
+  return db
     .select()
     .from(licences)
     .where(and(eq(licences.workshopId, workshopId), eq(licences.personId, personId)))
     .orderBy(desc(licences.validTo), desc(licences.id));
-  return rows.map(view);
 }
 
-/**
- * The licence of a person that covers a unit on a day, or why none does.
- * @param day YYYY-MM-DD in the workshop's time zone, see `dayIn`
- */
-export async function licenceFor(
-  db: Reader,
-  workshopId: number,
-  personId: number,
-  need: LicenceNeed,
-  day: string,
-): Promise<LicenceFit<LicenceView>> {
-  return fitLicence(await licencesOf(db, workshopId, personId), need, day);
-}
-
-/** All licences of the workshop with their holders, by name. */
+/** All licences of the workshop with the accounts of their holders, by name. */
 export async function listLicences({ db, workshop }: ServiceContext) {
   const rows = await db
-    .select({ licence: licences, holder: people.name })
+    .select({ licence: licences, account: people.name })
     .from(licences)
     .innerJoin(people, eq(people.id, licences.personId))
     .where(eq(licences.workshopId, workshop.id))
     .orderBy(asc(people.name), desc(licences.validTo));
-  return rows.map((row) => ({ ...view(row.licence), holder: row.holder }));
+  return rows.map((row) => ({ ...view(row.licence), account: row.account }));
 }
 
 /** The workshop's electricians, who alone can hold a licence here. */

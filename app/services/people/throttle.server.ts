@@ -18,8 +18,16 @@ export function mailKey(purpose: "sign-in" | "reset", email: string): ThrottleKe
   return { key: `${purpose}:mail:${email.trim().toLowerCase()}`, limit: 5 };
 }
 
+/**
+ * Tries of a signed-in person to confirm their password. Apart from the tries to sign in: those anybody can use up who
+ * knows the mail, and so keep an electrician from withdrawing a signature.
+ */
+export function confirmKey(personId: number): ThrottleKey {
+  return { key: `confirm:person:${personId}`, limit: 5 };
+}
+
 /** Tries from one address, at any password. A whole IPv6 /64 is one customer, hence one key. */
-export function addressKey(purpose: "sign-in" | "reset", address: string): ThrottleKey {
+export function addressKey(purpose: "sign-in" | "reset" | "confirm", address: string): ThrottleKey {
   return { key: `${purpose}:address:${network(address)}`, limit: 30 };
 }
 

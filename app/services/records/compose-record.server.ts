@@ -1,7 +1,7 @@
 import type { CurrentWorkshop } from "~/context";
 import type { SigningConditions } from "~/db/schema/decisions";
 import type { FindingView, ObservationView, SheetLine } from "~/services/bench/sheet-view";
-import type { LicenceRow } from "~/services/signing/assess-licences";
+import type { LicenceView } from "~/services/people/licences.server";
 import type { Review } from "~/services/signing/load-review.server";
 import { recordCautions, type RecordCheck, type RecordObservation, type UnitRecord } from "./record-format";
 
@@ -13,7 +13,7 @@ export interface DecisionFacts {
   conditions: SigningConditions | null;
   recheckOn: string | null;
   signer: string;
-  licence: LicenceRow;
+  licence: LicenceView;
   signature: { method: "drawn"; imageSha256: string } | { method: "typed"; typedName: string };
 }
 
@@ -25,7 +25,8 @@ export function composeRecord(
   address: { publicCode: string; publicAddress: string },
 ): UnitRecord {
   const { unit, sheet, findings } = review;
-  const { number, authority, validFrom, validTo, maxSupplyVolts, coversBatteries } = decision.licence;
+  const { holderName, number, authority, validFrom, validTo, maxSupplyVolts, coversBatteries } =
+    decision.licence;
   return {
     format: "mainsgate-record",
     version: 1,
@@ -51,7 +52,7 @@ export function composeRecord(
       title: sheet.revision.ruleSet.title,
       region: sheet.revision.ruleSet.region,
     },
-    accuracyPolicy: workshop.accuracyPolicy,
+    accuracyPolicy: sheet.accuracyPolicy,
     statements: sheet.analysis.statements.map(({ family, level, text, elements, conductors }) => ({
       family,
       level,
@@ -92,7 +93,15 @@ export function composeRecord(
       recheckOn: decision.recheckOn,
       signer: {
         name: decision.signer,
-        licence: { number, authority, validFrom, validTo, maxSupplyVolts, coversBatteries },
+        licence: {
+          holder: holderName,
+          number,
+          authority,
+          validFrom,
+          validTo,
+          maxSupplyVolts,
+          coversBatteries,
+        },
       },
       signature: decision.signature,
     },

@@ -1,15 +1,15 @@
-import { and, asc, desc, eq } from "drizzle-orm";
+import { asc, eq } from "drizzle-orm";
 import { type Reader, tables } from "~/db/client.server";
 import { listFindings } from "~/services/bench/findings.server";
 import { loadSheet } from "~/services/bench/load-sheet.server";
 import type { FindingView, Sheet } from "~/services/bench/sheet-view";
 import type { ServiceContext } from "~/services/context.server";
 import { type FileView, listFiles } from "~/services/files/list-files.server";
+import { type LicenceView, lockLicencesOf } from "~/services/people/licences.server";
 import type { StandingUnit } from "~/services/unit-act.server";
 import { listRevisions, type RevisionView } from "~/services/units/load-revision.server";
-import type { LicenceRow } from "./assess-licences";
 
-const { benchTurns, licences, people, revisions } = tables;
+const { benchTurns, people, revisions } = tables;
 
 export interface BenchTurnView {
   inspector: string;
@@ -28,7 +28,7 @@ export interface Review {
   revisions: RevisionView[];
   turns: BenchTurnView[];
   /** Of the person who looks: theirs alone can carry a signature. */
-  licences: LicenceRow[];
+  licences: LicenceView[];
 }
 
 /**
@@ -50,7 +50,7 @@ export async function loadReview(
     files: await listFiles(db, unit.id),
     revisions: await listRevisions(db, unit.id),
     turns: await listTurns(db, unit.id),
-    licences: await ownLicences(db, services.workshop.id, services.person.id),
+    licences: await lockLicencesOf(db, services.workshop.id, services.person.id),
   };
 }
 
@@ -68,17 +68,4 @@ export function listTurns(db: Reader, unitId: number): Promise<BenchTurnView[]> 
     .innerJoin(revisions, eq(revisions.id, benchTurns.revisionId))
     .where(eq(benchTurns.unitId, unitId))
     .orderBy(asc(benchTurns.id));
-}
-
-/** A person's licences in a workshop, the one that lasts longest first; locked against a revocation meanwhile. */
-function ownLicences(db: Reader, workshopId: number, personId: number): Promise<LicenceRow[]> {
-  return (
-    db
-      .select()
-      .from(licences)
-      .where(and(eq(licences.workshopId, workshopId), eq(licences.personId, personId)))
-      .orderBy(desc(licences.validTo), desc(licences.id))
-      // MariaDB has no "for share", and drizzle no "lock in share mode".
-      .for("update")
-  );
 }

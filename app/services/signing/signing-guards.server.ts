@@ -2,15 +2,17 @@ import { sheetGuards } from "~/services/bench/load-sheet.server";
 import type { SheetLine } from "~/services/bench/sheet-view";
 import { dayIn } from "~/services/context.server";
 import type { SignedInPerson } from "~/context";
+import type { LicenceView } from "~/services/people/licences.server";
 import { decide } from "~/workflow/permissions";
+import { fitLicence, type LicenceFit } from "~/workflow/licence-fit";
 import type { Role } from "~/workflow/roles";
-import { assessLicences, type LicenceAssessment } from "./assess-licences";
 import type { Review } from "./load-review.server";
 import type { GuardReason, ReviewGuard } from "./review-guards";
 
 export interface GuardReport {
   guards: Record<ReviewGuard, GuardReason[]>;
-  licence: LicenceAssessment["licence"];
+  /** The licence that a decision would rest on; null when none is both in date and in scope. */
+  licence: LicenceView | null;
   /** Checks that fail: a signature in spite of them needs the signer's reasons. */
   failed: SheetLine[];
 }
@@ -25,16 +27,13 @@ export function reportGuards(
   const { sheet, unit, findings } = review;
   const decision = decide("signing.sign", { id: signer.person.id, roles: signer.roles }, unit);
   const hasBattery = sheet.revision.map.elements.some((element) => element.kind === "battery");
-  const licences = assessLicences(
-    review.licences,
-    { facts: sheet.revision.facts, hasBattery },
-    dayIn(timeZone, at),
-  );
+  const { supplyVolts } = sheet.revision.facts;
+  const fit = fitLicence(review.licences, { supplyVolts, hasBattery }, dayIn(timeZone, at));
   return {
     guards: {
       independent: decision.allowed ? [] : [{ text: decision.reason }],
-      "licence-in-date": sentences(licences.inDate),
-      "licence-in-scope": sentences(licences.inScope),
+      "licence-in-date": sentences(fit.kind === "not-in-date" ? fit.reasons : []),
+      "licence-in-scope": sentences(scopeReasons(fit)),
       "checks-decided": sheetReasons(sheet.lines, "checks-decided"),
       "photos-present": sheetReasons(sheet.lines, "photos-present"),
       "no-open-danger": findings
@@ -45,9 +44,20 @@ export function reportGuards(
         })),
       "instruments-in-calibration": calibrationReasons(sheet.lines, timeZone),
     },
-    licence: licences.licence,
+    licence: fit.kind === "fits" ? fit.licence : null,
     failed: sheet.lines.filter((line) => line.verdict === "fail"),
   };
+}
+
+function scopeReasons(fit: LicenceFit<LicenceView>): string[] {
+  switch (fit.kind) {
+    case "fits":
+      return [];
+    case "not-in-scope":
+      return fit.reasons;
+    case "not-in-date":
+      return ["Without a licence in date there is no scope to compare with."];
+  }
 }
 
 function sentences(texts: readonly string[]): GuardReason[] {
