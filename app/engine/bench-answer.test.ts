@@ -134,6 +134,15 @@ describe("a line of the sheet", () => {
     expect(line.because).toContain("unknown");
   });
 
+  test("stays undecided where the map leaves something unknown and the step is called not applicable", () => {
+    const line = lineVerdict("unknown", { kind: "not-applicable" });
+    expect(line.verdict).toBe("undecided");
+    expect(line.because).toContain("does apply");
+    expect(lineVerdict("unknown", { kind: "not-possible" }).verdict).toBe("not-possible");
+    expect(lineVerdict("pass", { kind: "not-applicable" }).verdict).toBe("not-applicable");
+    expect(lineVerdict(null, { kind: "not-applicable" }).verdict).toBe("not-applicable");
+  });
+
   test("is decided unless it is open or undecided", () => {
     expect(lineVerdicts.filter((verdict) => !isDecided(verdict))).toEqual(["undecided", "open"]);
   });

@@ -99,9 +99,19 @@ export function lineVerdict(
 ): { verdict: LineVerdict; because: string } {
   if (answer === null) return { verdict: "open", because: "Nobody has answered this on the bench yet." };
   if (answer.kind === "not-applicable" || answer.kind === "not-possible") {
-    return computed === "fail"
-      ? { verdict: "fail", because: "The map alone already fails this, whatever can be tried on the bench." }
-      : { verdict: answer.kind, because: "For the reason that the inspector gave." };
+    if (computed === "fail")
+      return {
+        verdict: "fail",
+        because: "The map alone already fails this, whatever can be tried on the bench.",
+      };
+    if (computed === "unknown" && answer.kind === "not-applicable") {
+      return {
+        verdict: "undecided",
+        because:
+          "The map has this to decide and leaves something unknown, so it does apply: fill it in, or answer that the step is not possible with a reason.",
+      };
+    }
+    return { verdict: answer.kind, because: "For the reason that the inspector gave." };
   }
   const { measured, bench } = benchSays(answer);
   const verdict = combineVerdict(computed, measured);

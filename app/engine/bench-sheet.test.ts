@@ -4,6 +4,7 @@ import { checkFamilies } from "./bench-check";
 import { deriveBenchSheet } from "./bench-sheet";
 import { checkRegistry } from "./check-registry";
 import { demoMaps } from "./demo-maps";
+import { mapOf, part, wire } from "./map-builder";
 import { ruleSets } from "./rule-set";
 import { starterMaps } from "./starter-maps";
 
@@ -93,6 +94,30 @@ test("the limits that a person would look up", () => {
   });
   expect(limit("residual-voltage:X1")).toEqual(["at-most", 34, "V"]);
   expect(limit("backfeed:BT1:X1")).toEqual(["at-most", 30, "V"]);
+});
+
+test("a small mains heater has the ordinary insulation limit by the UK code, since sources disagree on the lower one", () => {
+  const heater = mapOf(
+    [
+      part("mains-inlet", "X1", "", { earthPin: "yes" }),
+      part("load", "LD1", "", { supply: "mains", amps: 0.2, heating: "yes" }),
+    ],
+    [wire("W1", "X1.L", "LD1.L", "mains", 0.75, 1), wire("W2", "X1.N", "LD1.N", "mains", 0.75, 1)],
+  );
+  const limit = (ruleSet: typeof europe) =>
+    deriveBenchSheet(heater, ruleSet, facts).find(({ key }) => key === "insulation-earth:X1")?.asks;
+  expect(limit(uk)).toMatchObject({ limit: { value: 1 } });
+  expect(limit(europe)).toMatchObject({ limit: { value: 0.3 } });
+});
+
+test("metal held in the hand may be 48 °C, touched for seconds 60 °C; where it is not stated the tighter holds", () => {
+  // IEC 62368-1 Table 38, from memory.
+  const limit = (handheld: boolean | null) =>
+    deriveBenchSheet(demoMaps.sound, europe, { ...facts, handheld }).find(({ key }) => key === "heat-surface")
+      ?.asks;
+  expect(limit(true)).toMatchObject({ limit: { value: 48 } });
+  expect(limit(false)).toMatchObject({ limit: { value: 60 } });
+  expect(limit(null)).toMatchObject({ limit: { value: 48 } });
 });
 
 test("height raises the clearance that is asked for", () => {

@@ -38,6 +38,15 @@ export function earthLimit(ruleSet: RuleSet, facts: UnitFacts): EarthLimit {
         citations,
       };
     }
+    const area = facts.cordAreaMm2 ?? null;
+    if (area !== null && area > rule.largestArea.value + 1e-9) {
+      const cord = conductorOhms(area, length);
+      return {
+        ohms: round(Math.max(rule.floor.value, cord)),
+        basis: `${figure(length)} m of ${figure(area)} mm², above ${figure(rule.largestArea.value)} mm²: ${figure(cord)} Ω computed, at least ${figure(rule.floor.value)} Ω`,
+        citations: [rule.floor.citation, class5Citation],
+      };
+    }
     const ohms = steppedEarthLimit(length, {
       base: rule.base.value,
       baseLength: rule.baseLength.value,
@@ -45,7 +54,11 @@ export function earthLimit(ruleSet: RuleSet, facts: UnitFacts): EarthLimit {
       stepLength: rule.stepLength.value,
       cap: rule.cap.value,
     });
-    return { ohms: round(ohms), basis: `cord of ${figure(length)} m`, citations };
+    return {
+      ohms: round(ohms),
+      basis: `cord of ${figure(length)} m${area === null ? `, taken as at most ${figure(rule.largestArea.value)} mm²` : ""}`,
+      citations,
+    };
   }
   const area = facts.cordAreaMm2 ?? null;
   if (length === null || area === null) {

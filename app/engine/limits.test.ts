@@ -38,6 +38,17 @@ test("UK code of practice, 2 m of 0.75 mm²: 0.1 Ω and 52 mΩ", () => {
   expect(earthLimit(uk, { ...facts, cordLengthM: 2, cordAreaMm2: 0.75 }).ohms).toBeCloseTo(0.152, 9);
 });
 
+test("a European cord above 1.5 mm² allows its computed resistance, never less than 0.1 Ω", () => {
+  // IEC 60228 class 5: 2.5 mm² has 7.98 Ω/km, so 3 m have 24 mΩ and 20 m 160 mΩ.
+  const limit = (cordLengthM: number, cordAreaMm2: number) =>
+    earthLimit(europe, { ...facts, cordLengthM, cordAreaMm2 });
+  expect(limit(3, 2.5).ohms).toBe(0.1);
+  expect(limit(20, 2.5).ohms).toBeCloseTo(0.1596, 6);
+  expect(limit(3, 1.5).ohms).toBeCloseTo(0.3, 9);
+  expect(limit(20, 2.5).basis).toContain("above 1.5 mm²");
+  expect(earthLimit(europe, { ...facts, cordLengthM: 3 }).basis).toContain("taken as at most 1.5 mm²");
+});
+
 test("the steps hold for any length", () => {
   const rule = { base: 0.3, baseLength: 5, step: 0.1, stepLength: 7.5, cap: 1 };
   let last = 0;

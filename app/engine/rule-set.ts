@@ -29,6 +29,10 @@ export type ProtectiveEarthRule =
       step: RuleValue;
       stepLength: RuleValue;
       cap: RuleValue;
+      /** The steps hold for cords up to this area; above it the resistance is computed, */
+      largestArea: RuleValue;
+      /** and the limit is never below this. */
+      floor: RuleValue;
     }
   | {
       /** An allowance above the cord's own resistance. */

@@ -122,3 +122,35 @@ test("a poorer instrument never turns an open verdict into a decided one", () =>
     ),
   );
 });
+
+test("a reading of nought decides nothing under a maximum or between two limits, and says how to write it", () => {
+  const judged = judgeReading(atMost(0.3, "Ω"), { value: 0 }, lowOhm, "rect");
+  expect(judged.verdict).toBe("undecided");
+  expect(judged.neededAccuracy).toContain("below 0.001 Ω");
+  const between: Limit = { kind: "between", lower: 12.8, upper: 14.6, unit: "V", citation };
+  expect(
+    judgeReading(between, { value: 0 }, { percent: 0.5, digits: 2, resolution: 0.01 }, "rect").verdict,
+  ).toBe("undecided");
+  // Written as under-range it is a statement about the instrument, and passes.
+  expect(judgeReading(atMost(0.3, "Ω"), { value: 0.001, bound: "<" }, lowOhm, "rect").verdict).toBe("pass");
+  expect(judgeReading(atMost(0.3, "Ω"), { value: 0, bound: "<" }, lowOhm, "rect").verdict).toBe("undecided");
+});
+
+test("nought counts where the last place is too coarse for less, and says so; at a minimum it fails", () => {
+  const coarse: Accuracy = { percent: 2, digits: 1, resolution: 0.1 };
+  const judged = judgeReading(atMost(3.5, "mA"), { value: 0 }, coarse, "rect");
+  expect(judged.verdict).toBe("pass");
+  expect(judged.reason).toContain("too coarse to show less");
+  expect(judgeReading(atLeast(1, "MΩ"), { value: 0 }, { ...coarse, resolution: 0.01 }, "rect").verdict).toBe(
+    "fail",
+  );
+});
+
+test("no instrument is exact: an accuracy of nothing at all is not known", () => {
+  for (const accuracy of [
+    { percent: 0, digits: 0, resolution: 0 },
+    { percent: 0, digits: 5, resolution: 0 },
+    { percent: 0, digits: 0, resolution: 0.001 },
+  ])
+    expect(judgeReading(atMost(0.3, "Ω"), { value: 0.3 }, accuracy, "rect").verdict).toBe("undecided");
+});

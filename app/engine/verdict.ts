@@ -44,7 +44,8 @@ export function expandedUncertainty(value: number, accuracy: Accuracy, policy: U
 
 /**
  * Judges a reading against a limit with a guard band of U: pass only when the reading is clear of the limit by U on the
- * good side, fail only when it is clear by U on the bad side, else undecided. A reading that is no number decides nothing.
+ * good side, fail only when it is clear by U on the bad side, else undecided. A reading that is no number decides nothing,
+ * nor does nought under a maximum, unless the instrument is too coarse to show a good value otherwise.
  */
 export function judgeReading(
   limit: Limit,
@@ -74,8 +75,9 @@ export function judgeReading(
       neededAccuracy: `An instrument whose accuracy at ${figure(reading.value)} ${unit} is stated.`,
     };
   }
-  const uncertainty = expandedUncertainty(reading.value, accuracy, policy);
   const sides = sidesOf(limit);
+  if (reading.value === 0 && !isPlausibleZero(limit, accuracy)) return zeroDecidesNothing(limit, accuracy);
+  const uncertainty = expandedUncertainty(reading.value, accuracy, policy);
   const verdicts = sides.map(({ kind, value }) => judgeSide(kind, value, reading.value, uncertainty));
   const verdict: MeasuredVerdict = verdicts.includes("fail")
     ? "fail"
@@ -96,7 +98,7 @@ export function judgeReading(
       .join("; "),
     reason:
       verdict === "pass"
-        ? `${shown} is clear of the limit on the good side.`
+        ? `${shown} is clear of the limit on the good side.${reading.value === 0 && limit.kind === "at-most" ? ` Nought is believable here: the last place of ${figure(accuracy.resolution)} ${unit} is too coarse to show less.` : ""}`
         : verdict === "fail"
           ? `${shown} is beyond the limit by more than the uncertainty.`
           : `${shown} straddles the limit: the instrument cannot decide it.`,
@@ -109,8 +111,36 @@ export function judgeReading(
   };
 }
 
+/** An accuracy of nothing at all is no accuracy: no instrument is exact, and U would be nought. */
 function isUsable({ percent, digits, resolution }: Accuracy): boolean {
-  return [percent, digits, resolution].every((each) => Number.isFinite(each) && each >= 0);
+  return (
+    [percent, digits, resolution].every((each) => Number.isFinite(each) && each >= 0) &&
+    (percent > 0 || digits * resolution > 0)
+  );
+}
+
+/** A last place of at least this share of the limit makes a nought believable: smaller values are all shown as nought. */
+const coarseShare = 0.01;
+
+/**
+ * Nought is what an instrument shows that is not connected. It counts only where it is the failing side anyway, or where the
+ * last place is so coarse against the limit that a good value would be shown as nought. Own rule after "zero is not tested".
+ */
+function isPlausibleZero(limit: Limit, { resolution }: Accuracy): boolean {
+  if (limit.kind === "at-least" || limit.unit === "°C") return true;
+  const edge = limit.kind === "between" ? limit.upper : limit.value;
+  return limit.kind === "at-most" && resolution >= Math.abs(edge) * coarseShare;
+}
+
+function zeroDecidesNothing(limit: Limit, { resolution }: Accuracy): Judgement {
+  const last = `${figure(resolution)} ${limit.unit}`;
+  return {
+    verdict: "undecided",
+    expandedUncertainty: null,
+    guardBand: "none",
+    reason: `Nought is what an instrument that is not connected shows, and this one would show ${last}: a reading of nought decides nothing.`,
+    neededAccuracy: `Check the connections on something known and measure again. If it still shows nought, write it as below ${last}.`,
+  };
 }
 
 function sidesOf(limit: Limit): { kind: "at-most" | "at-least"; value: number }[] {
@@ -140,7 +170,8 @@ function judgeOutOfRange(limit: Limit, value: number, bound: ">" | "<"): Judgeme
       if (kind === "at-least") return value * (1 - overRangeMargin) >= edge ? "pass" : "undecided";
       return "fail";
     }
-    if (kind === "at-most") return value * (1 + overRangeMargin) <= edge ? "pass" : "undecided";
+    // "Below nought" names no value: the display's last place has to be told.
+    if (kind === "at-most") return value > 0 && value * (1 + overRangeMargin) <= edge ? "pass" : "undecided";
     return value <= edge ? "fail" : "undecided";
   });
   const verdict: MeasuredVerdict = verdicts.includes("fail")

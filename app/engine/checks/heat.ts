@@ -1,12 +1,13 @@
 import type { CheckDefinition } from "../bench-check";
 import { because, keyOf, whileWorking } from "../check-parts";
 import type { Citation } from "../rule-set";
+import { sentence } from "../wording";
 
-const touchLimit = (value: number, mark: Citation["mark"]) => ({
+const touchLimit = (value: number, mark: Citation["mark"], contact: string) => ({
   value,
   citation: {
     standard: "IEC 62368-1",
-    clause: "Table 38, touched 1 to 10 s",
+    clause: `Table 38, ${contact}`,
     edition: "not checked",
     mark,
     note: "Judged at 25 °C of air.",
@@ -17,7 +18,7 @@ const touchLimit = (value: number, mark: Citation["mark"]) => ({
 export const heat: CheckDefinition = {
   id: "heat",
   family: "heat",
-  derive(view) {
+  derive(view, _ruleSet, facts) {
     const working = [
       ...view.ofKind("load"),
       ...view.ofKind("outlet"),
@@ -28,7 +29,13 @@ export const heat: CheckDefinition = {
     ];
     if (working.length === 0) return [];
     const metal = view.ofKind("accessible-part").map(({ id }) => id);
-    const limit = metal.length > 0 ? touchLimit(60, "M") : touchLimit(77, "V");
+    const material = metal.length > 0 ? "metal" : "plastic";
+    const handheld = facts.handheld ?? null;
+    const limit =
+      handheld === false
+        ? touchLimit(material === "metal" ? 60 : 77, material === "metal" ? "M" : "V", "touched 1 to 10 s")
+        : touchLimit(48, "M", "held for more than 1 min");
+    const touched = handheld === false ? "touched 1 to 10 s" : "held for more than 1 min";
     const ids = [...metal, ...working.map(({ id }) => id)];
     return [
       {
@@ -43,7 +50,9 @@ export const heat: CheckDefinition = {
         ],
         method: [
           "Run the unit at its largest load with all covers on until the hottest place rises by less than 1 K in half an hour.",
-          `Measure the hottest ${metal.length > 0 ? "metal" : "plastic"} surface that a hand touches for a few seconds.`,
+          handheld === false
+            ? `Measure the hottest ${material} surface that a hand touches for a few seconds.`
+            : "Measure the hottest place that the hand holds in use, and write down apart what is only touched.",
           "Add nothing for a warmer room; note the air's temperature.",
         ],
         cautions: [
@@ -58,7 +67,10 @@ export const heat: CheckDefinition = {
           limit: { kind: "at-most", value: limit.value, unit: "°C", citation: limit.citation },
           instrument: { kind: "thermometer", range: "0 to 150 °C, contact probe" },
           conditions: [
-            metal.length > 0 ? "Metal, touched 1 to 10 s" : "Plastic, touched 1 to 10 s",
+            `${sentence(material)}, ${touched}`,
+            ...(handheld === null
+              ? ["Whether it is held in the hand is not stated: the tighter limit is used"]
+              : []),
             "Air at 25 °C",
             "Largest load, covers on, settled",
           ],

@@ -35,6 +35,7 @@ const conditions = (view: MapView): string[] => [
 
 function mainsToEarth(view: MapView, ruleSet: RuleSet, inlets: string[]): BenchCheck {
   const heating = view.ofKind("load").some((each) => each.heating === "yes" && each.supply === "mains");
+  // Its value and citation say whether the rule set allows less for heating elements at all.
   const limit = heating ? ruleSet.values.insulationClassIHeating : ruleSet.values.insulationClassI;
   const mains = view.wired.filter(({ circuit }) => circuit !== "elv").map(({ id }) => id);
   return resistance(view, ruleSet, {
@@ -51,7 +52,10 @@ function mainsToEarth(view: MapView, ruleSet: RuleSet, inlets: string[]): BenchC
     elements: inlets,
     conductors: mains,
     computed: null,
-    extra: heating ? ["Limit for class I with a mains heating element"] : [],
+    extra:
+      heating && limit.value < ruleSet.values.insulationClassI.value
+        ? ["Limit for class I with a mains heating element, switched on"]
+        : [],
   });
 }
 

@@ -50,6 +50,16 @@ export const europeanAfterRepair: RuleSet = {
       step: value(0.1, "Ω", earth),
       stepLength: value(7.5, "m", earth),
       cap: value(1.0, "Ω", earth),
+      largestArea: value(1.5, "mm²", earth),
+      floor: value(
+        0.1,
+        "Ω",
+        cite(
+          "protective conductor resistance, larger cords",
+          "V",
+          "The cord's computed resistance, but never below this.",
+        ),
+      ),
     },
     protectiveEarthTestAmps: value(0.2, "A", {
       standard: "IEC 61557-4",
