@@ -74,6 +74,16 @@ const pages: Record<string, Line> = {
     change: {
       submit: { body: { intent: "submit", version: "1" }, may: ["its builder"] },
       discard: { body: { intent: "discard", version: "1" }, may: ["its builder"] },
+      "start a new version": {
+        state: "signed",
+        body: { intent: "succeed", version: "1" },
+        may: ["its builder"],
+      },
+      "hand over": {
+        state: "sent_back",
+        body: { intent: "hand-over", version: "1", to: ":person" },
+        may: ["steward"],
+      },
     },
   },
   "routes/units/facts": { get: { may: ["its builder"] }, change: { edit: { may: ["its builder"] } } },
@@ -90,6 +100,11 @@ const pages: Record<string, Line> = {
     change: {
       take: { state: "submitted", body: { act: "take", version: "1" }, may: inspectors },
       release: { state: "on_bench", body: { act: "release", version: "1" }, may: ["its inspector"] },
+      reclaim: {
+        state: "on_bench",
+        body: { act: "reclaim", version: "1", reason: "Its inspector is ill." },
+        may: ["steward"],
+      },
     },
   },
   "routes/bench/sheet": { get: { state: "on_bench", may: atTheBench } },

@@ -3,7 +3,7 @@ import { tables } from "~/db/client.server";
 import type { ServiceContext } from "~/services/context.server";
 import type { UnitState } from "~/workflow/states";
 
-const { benchTurns, units } = tables;
+const { benchTurns, formerBuilders, units } = tables;
 
 export interface QueueCounts {
   /** What waits for the signed-in person, whichever roles they hold; nought where they lack the role. */
@@ -23,7 +23,15 @@ export interface QueueCounts {
 /** How many units wait, for the badges of the navigation and the overview. */
 export async function countQueues({ db, workshop, person }: ServiceContext): Promise<QueueCounts> {
   const here = and(eq(units.workshopId, workshop.id), isNull(units.discardedAt));
-  const notBuilt = ne(units.builderId, person.id);
+  const notBuilt = and(
+    ne(units.builderId, person.id),
+    notExists(
+      db
+        .select({ one: sql`1` })
+        .from(formerBuilders)
+        .where(and(eq(formerBuilders.unitId, units.id), eq(formerBuilders.personId, person.id))),
+    ),
+  );
   const neverInspected = notExists(
     db
       .select({ one: sql`1` })
