@@ -50,9 +50,28 @@ export interface PoleReport {
   partedWhenAllOff: boolean | null;
 }
 
+export interface ConsumerPole {
+  pole: "L" | "N";
+  /** It comes to the consumer with everything switched on, over another consumer in series too. */
+  inUse: boolean;
+  /** Each switch that by itself parts it from this consumer. */
+  brokenBy: string[];
+  /** Parts over which it still comes to the consumer although that switch is off. */
+  past: { switch: string; through: string[] }[];
+  /** Parted with all hand switches off, whatever relays do. */
+  partedByHand: boolean;
+}
+
+export interface ConsumerIsolation {
+  consumer: string;
+  poles: ConsumerPole[];
+}
+
 export interface SourceIsolation {
   source: string;
   poles: PoleReport[];
+  /** Of a mains inlet, what it feeds without anything between that makes another circuit of it. */
+  consumers: ConsumerIsolation[];
   /** Switches that part all poles of this source together in one body. */
   allPoleSwitches: string[];
 }
@@ -170,6 +189,8 @@ export interface DeviceReport {
   loadVerdict: Verdict3;
   breakingVerdict: Verdict3;
   voltageVerdict: Verdict3;
+  /** It sits in a pole where opening makes dead what is behind it. */
+  placementVerdict: Verdict3;
   texts: string[];
 }
 
@@ -185,6 +206,8 @@ export interface FusingResult {
   conductors: ConductorProtection[];
   devices: DeviceReport[];
   contacts: ContactReport[];
+  /** Changeovers of which not every position was worked out; what would pass is then not known. Empty when all were. */
+  unchecked: string[];
 }
 
 export interface InsulationBarrier {
@@ -206,11 +229,23 @@ export interface InsulationResult {
   barriers: InsulationBarrier[];
 }
 
+/** Something found about one part by itself: a voltage where it is touched, or a rating against what it carries. */
+export interface PartFinding {
+  kind: "touch" | "rating";
+  element: string;
+  verdict: Verdict3;
+  text: string;
+  elements: string[];
+  conductors: string[];
+}
+
 export interface Analysis {
   problems: Problem[];
   isolation: IsolationResult;
   reverse: ReverseResult;
   fusing: FusingResult;
   insulation: InsulationResult;
+  /** Touched contacts and parts above the limit, and parts whose ratings don't suit or aren't known; those that suit are left out. */
+  parts: PartFinding[];
   statements: Statement[];
 }

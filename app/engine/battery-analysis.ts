@@ -5,7 +5,7 @@ import type { Reason } from "./bench-check";
 import type { Circuit } from "./circuit";
 import type { ElementOf } from "./energy-map";
 import { figure } from "./figure";
-import { worst } from "./mains-isolation";
+import { worst } from "./isolation-parts";
 import { batteryFullVolts, cellLimits } from "./supply-data";
 import { list } from "./wording";
 

@@ -6,8 +6,17 @@ import type {
   SwitchReport,
 } from "./analysis";
 import type { Circuit, Supply } from "./circuit";
+import { consumerIsolation, usingLinks } from "./consumer-isolation";
 import { findJoins } from "./joins";
-import { conduction, configurations, energise, isReached, walk, type Position } from "./energise";
+import {
+  conduction,
+  configurations,
+  energise,
+  isReached,
+  uncheckedChangeovers,
+  walk,
+  type Position,
+} from "./energise";
 import { liveConductors, liveSets } from "./live";
 
 /** Up to this many switches every combination is worked out; any one can be asked for with `liveInStates`. */
@@ -23,7 +32,7 @@ export function analyseIsolation(circuit: Circuit): IsolationResult {
     combinations,
     combinationsComplete: complete,
     joins: findJoins(circuit),
-    joinsComplete: circuit.switches.filter((each) => each.throw === "changeover").length <= 6,
+    joinsComplete: uncheckedChangeovers(circuit).length === 0,
   };
 }
 
@@ -32,32 +41,16 @@ export function allAt(circuit: Circuit, position: Position): Map<string, Positio
   return new Map(circuit.switches.map(({ id }) => [id, position]));
 }
 
-const usingKinds = new Set([
-  "load",
-  "fan",
-  "outlet",
-  "isolated-supply",
-  "transformer",
-  "charger",
-  "converter",
-]);
-
-/** Nodes where energy is used or passed on. Lamps are left out: one before a switch does not undo what the switch does. */
-function usingNodes(circuit: Circuit): number[] {
-  return circuit.links
-    .filter(({ kind, element }) => {
-      const found = element === null ? undefined : circuit.view.elements.get(element);
-      return kind === "consumer" && found !== undefined && usingKinds.has(found.kind);
-    })
-    .flatMap(({ a, b }) => [a, b]);
-}
-
 function isolationOf(circuit: Circuit, source: Supply): SourceIsolation {
   const poles = [poleReport(circuit, source, "hot"), poleReport(circuit, source, "ret")];
-  const used = poles.filter(({ inUse }) => inUse);
+  // Mains has two poles that may be live, whether the map uses both or not.
+  const used = poles.some(({ inUse }) => inUse)
+    ? poles.filter(({ inUse }) => inUse || source.domain === "mains")
+    : [];
   return {
     source: source.element,
     poles: poles.map(({ report }) => report),
+    consumers: source.domain === "mains" ? consumerIsolation(circuit, source) : [],
     allPoleSwitches:
       used.length === 0
         ? []
@@ -72,7 +65,7 @@ function poleReport(
   source: Supply,
   pole: "hot" | "ret",
 ): { report: PoleReport; inUse: boolean } {
-  const using = usingNodes(circuit);
+  const using = usingLinks(circuit).flatMap(({ a, b }) => [a, b]);
   const reaches = (positions: ReadonlyMap<string, Position>, includePossible: boolean) => {
     const sense = source.domain === "dc" ? (pole === "hot" ? "with" : "against") : "either";
     const reach = walk(circuit, conduction(circuit, { positions, includePossible }), source[pole], sense);

@@ -11,7 +11,8 @@ import {
   worstVerdict,
 } from "../check-parts";
 import { figure } from "../figure";
-import { judgeMainsIsolation, mixedBody, type MainsIsolation } from "../mains-isolation";
+import { mixedBody, type MainsIsolation } from "../isolation-parts";
+import { judgeMainsIsolation } from "../mains-isolation";
 import type { MapView } from "../map-view";
 import type { RuleSet } from "../rule-set";
 import { list } from "../wording";

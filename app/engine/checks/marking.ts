@@ -1,7 +1,7 @@
 import type { BenchCheck, CheckDefinition } from "../bench-check";
 import { because, caution, examination, keyOf, practice } from "../check-parts";
 import { figure } from "../figure";
-import { stillLive } from "../mains-isolation";
+import { stillLive } from "../isolation-parts";
 import { list } from "../wording";
 
 /** Plate, fuse and switch marks, and the warning where something stays live with the plug pulled. */
