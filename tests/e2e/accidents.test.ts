@@ -192,7 +192,7 @@ test("while the file store is away an upload says so, and goes through at anothe
 
 test("while the mail server is away a unit is submitted all the same, and the mails come when it is back", async () => {
   const number = await numberOf(units.draft);
-  const subject = `Unit ${number} “${units.draft}” waits for the bench`;
+  const subject = `Unit ${number}, “${units.draft}” waits for the bench`;
   const { page, home } = await signIn(browser, server(), "Betje");
   await open(page, `${home}/units/${number}`);
   await server().services.mail.stop();

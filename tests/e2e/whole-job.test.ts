@@ -90,7 +90,7 @@ test.each([
     await editMap(builder, job.firstEdit);
     await submitWithPhoto(builder, number);
     const inspectors = ["ilse@demo.example", "idris@demo.example", "betje@demo.example"];
-    await expectMail(server(), `Unit ${number} “${unit.name}” waits for the bench`, inspectors);
+    await expectMail(server(), `Unit ${number}, “${unit.name}” waits for the bench`, inspectors);
 
     // The inspector works the sheet and finds a fault.
     const inspector = await signIn(browser, server(), "Ilse", size);
@@ -105,7 +105,7 @@ test.each([
     await answerFinding(builder, number, "It is replaced by the right one; see the photo.");
     await editMap(builder, job.rework);
     expect(await resubmit(builder, number)).toMatch(job.changed);
-    const again = `Unit ${number} “${unit.name}” waits for the bench`;
+    const again = `Unit ${number}, “${unit.name}” waits for the bench`;
     await expectMail(server(), again, [...inspectors, ...inspectors]);
 
     // The inspector does again what the change touches, and carries the rest over.
