@@ -85,6 +85,13 @@ export const clearanceCitation: Citation = {
   mark: "V",
   note: "Overvoltage category II. The rows 1.5, 2.5, 4 and 6 kV were seen, the others are from memory; the rule for reinforced insulation is from memory.",
 };
+export const altitudeCitation: Citation = {
+  standard: "IEC 60664-1",
+  clause: "Table A.2, factor on clearances by height",
+  edition: "not checked",
+  mark: "V",
+  note: "1.14 to 1.48 and 2.25 to 6.67 were seen, 1.70, 1.95 and 14.5 are from memory.",
+};
 export const creepageCitation: Citation = {
   standard: "IEC 60664-1",
   clause: "Table F.4",

@@ -4,7 +4,7 @@ import { originName } from "../earthing";
 import { figure } from "../figure";
 import { mainsSources } from "../insulation";
 import type { InsulationBarrier } from "../analysis";
-import { clearanceCitation, creepageCitation } from "../insulation-data";
+import { altitudeCitation, altitudeFactor, clearanceCitation, creepageCitation } from "../insulation-data";
 import type { MapView } from "../map-view";
 import type { RuleSet, RuleValue } from "../rule-set";
 import type { UnitFacts } from "../unit-facts";
@@ -137,7 +137,13 @@ function barrierChecks(
           ],
         },
         photo: "optional",
-        citations: [citation, ruleSet.values.pollutionDegree.citation],
+        citations: [
+          citation,
+          ruleSet.values.pollutionDegree.citation,
+          altitudeFactor(facts.altitudeM ?? ruleSet.values.altitude.value) === 1
+            ? ruleSet.values.altitude.citation
+            : altitudeCitation,
+        ],
         subjects: { elements: [...inlets, ...barrier.elements], conductors: [] },
       },
     ];
