@@ -1,11 +1,13 @@
 import { createHash } from "node:crypto";
 import { readFileSync } from "node:fs";
+import { Readable } from "node:stream";
 import { buffer } from "node:stream/consumers";
 import { S3Client } from "@aws-sdk/client-s3";
 import { eq } from "drizzle-orm";
 import sharp from "sharp";
 import { describe, expect, test } from "vitest";
 import { tables } from "~/db/client.server";
+import { loadSheet } from "~/services/bench/load-sheet.server";
 import { database } from "~/services/database.server";
 import {
   ConflictError,
@@ -16,12 +18,14 @@ import {
 } from "~/services/errors";
 import { changeFile } from "~/services/files/change-file.server";
 import { listFiles } from "~/services/files/list-files.server";
+import { makePhoto } from "~/services/files/make-photo.server";
 import { findFile } from "~/services/files/open-file.server";
 import { receiveUpload } from "~/services/files/receive-upload.server";
 import { PDF_BYTES, PHOTO_BYTES } from "~/services/files/upload-limits";
 import { type ObjectStore, objectStore, s3ObjectStore } from "~/services/storage/object-store.server";
 import { findUnit, type StandingUnit } from "~/services/unit-act.server";
 import type { UnitState } from "~/workflow/states";
+import { makeBench } from "../fixtures/bench";
 import { makeBombPng, makeJpeg, makePdf } from "../fixtures/pictures";
 import { makeUnit, makeWorkshop, type TestWorkshop } from "../fixtures/workshop";
 
@@ -157,6 +161,22 @@ describe("a photo", () => {
     // The disc's copper, not a black or green frame.
     expect(red).toBeGreaterThan(120);
     expect(blue).toBeLessThan(60);
+  });
+
+  test("waits for others to be decoded: two at a time, however many arrive together", async () => {
+    const picture = await makeJpeg({ width: 1200, height: 900 });
+    let most = 0;
+    const look = () => {
+      const { queue, process } = sharp.counters();
+      most = Math.max(most, queue + process);
+    };
+    sharp.queue.on("change", look);
+    const made = await Promise.all(
+      Array.from({ length: 8 }, () => makePhoto(Readable.from([picture]), "image/jpeg")),
+    );
+    sharp.queue.off("change", look);
+    expect(made.map(({ width }) => width)).toEqual(Array(8).fill(1200));
+    expect(most).toBe(2);
   });
 
   test("its name is kept for showing, without folders; its key is ours", async () => {
@@ -332,12 +352,69 @@ describe("who may add a file", () => {
     await expect(receiveUpload(onBench.workshop.as("builder"), onBench.unit, upload(jpeg))).rejects.toThrow(
       ForbiddenError,
     );
-    const photo = await receiveUpload(
-      onBench.workshop.as("inspector"),
-      onBench.unit,
-      upload(jpeg, "a.jpg", { subject: "check", checkKey: "visual-case" }),
-    );
-    expect(photo).toMatchObject({ subject: "check", checkKey: "visual-case" });
+  });
+
+  test("belongs to a check of the unit's sheet, named letter by letter, or is not kept", async () => {
+    const bench = await makeBench(db);
+    const inspector = bench.as("inspector");
+    const unit = await unitNow(bench, bench.unit.number);
+    const jpeg = bytesOf(await makeJpeg({ width: 20, height: 20 }));
+    const [line] = (await loadSheet(inspector, unit)).lines;
+    const checkKey = line?.check.key ?? "";
+    const store = watched(objectStore());
+    for (const wrong of ["no-such-check", checkKey.toUpperCase()]) {
+      const request = upload(jpeg, "a.jpg", { subject: "check", checkKey: wrong });
+      await expect(receiveUpload(inspector, unit, request, store)).rejects.toThrow(NotFoundError);
+    }
+    expect(store.kept.size).toBe(0);
+    const request = upload(jpeg, "a.jpg", { subject: "check", checkKey });
+    expect(await receiveUpload(inspector, unit, request, store)).toMatchObject({
+      subject: "check",
+      checkKey,
+    });
+    expect(await listFiles(db, unit.id, { checkKey })).toHaveLength(1);
+    // The database too tells F1 from f1.
+    expect(await listFiles(db, unit.id, { checkKey: checkKey.toUpperCase() })).toEqual([]);
+  });
+
+  test("is not added to the answer of a finding that is closed", async () => {
+    const { workshop, unit } = await setUp("sent_back");
+    const { inspector } = workshop.people;
+    const at = workshop.clock.at;
+    const [revision] = await db
+      .select({ id: tables.revisions.id })
+      .from(tables.revisions)
+      .where(eq(tables.revisions.unitId, unit.id));
+    const raise = async (number: number, closing: Partial<typeof tables.findings.$inferInsert>) => {
+      const [row] = await db
+        .insert(tables.findings)
+        .values({
+          unitId: unit.id,
+          revisionId: revision?.id ?? 0,
+          number,
+          severity: "defect",
+          text: "The lid is loose",
+          raisedById: inspector.id,
+          raisedAt: at,
+          ...closing,
+        })
+        .$returningId();
+      return String(row?.id);
+    };
+    const closed = await raise(1, { closedAt: at, closedById: inspector.id, closingText: "Seen" });
+    const open = await raise(2, {});
+    const jpeg = bytesOf(await makeJpeg({ width: 20, height: 20 }));
+    const store = watched(objectStore());
+    const answer = (findingId: string) =>
+      receiveUpload(
+        workshop.as("builder"),
+        unit,
+        upload(jpeg, "a.jpg", { subject: "answer", findingId }),
+        store,
+      );
+    await expect(answer(closed)).rejects.toThrow(ConflictError);
+    expect(store.kept.size).toBe(0);
+    expect(await answer(open)).toMatchObject({ subject: "answer", findingId: Number(open) });
   });
 
   test("is asked again under the lock: what was stored meanwhile is taken back", async () => {

@@ -1,10 +1,10 @@
-import convertHeic from "heic-convert";
 import { createHash } from "node:crypto";
 import type { Readable } from "node:stream";
-import { pipeline } from "node:stream/promises";
 import { buffer } from "node:stream/consumers";
+import pLimit from "p-limit";
 import sharp, { type Sharp } from "sharp";
 import { InvalidInputError } from "~/services/errors";
+import { convertHeic } from "./convert-heic.server";
 import { FULL_EDGE, PHOTO_PIXELS, THUMB_EDGE } from "./upload-limits";
 
 /** A photo ready to be kept: upright, without metadata or position, in two sizes, both JPEG. */
@@ -19,15 +19,25 @@ export interface MadePhoto {
 
 const reading = { failOn: "error", limitInputPixels: PHOTO_PIXELS } as const;
 
+/** An unfolded picture takes hundreds of megabytes: those that arrive together wait for one another. */
+const decoding = pLimit(2);
+
 /**
- * Decodes an image as it arrives and makes the two sizes that are kept.
+ * Decodes an image once it has arrived and makes the two sizes that are kept; two images at most are decoded at a time.
  *
  * @throws InvalidInputError (422) for an image that is damaged, cut off or unfolds to too many pixels; whatever the
  *   stream fails with
  */
 export async function makePhoto(stream: Readable, mime: string): Promise<MadePhoto> {
+  // Outside the limit, so that a slow connection holds nobody up.
+  const bytes = await buffer(stream).catch(refuse);
+  return decoding(() => decode(bytes, mime));
+}
+
+async function decode(bytes: Buffer, mime: string): Promise<MadePhoto> {
   const isHeic = mime === "image/heic" || mime === "image/heif";
-  const { data, info } = isHeic ? await fromHeic(stream) : await fromStream(stream);
+  const image = isHeic ? await fromHeic(bytes).catch(refuse) : sharp(bytes, reading);
+  const { data, info } = await fit(image, FULL_EDGE, 84).toBuffer({ resolveWithObject: true }).catch(refuse);
   const thumb = await fit(sharp(data), THUMB_EDGE, 78).toBuffer();
   return {
     full: data,
@@ -38,26 +48,12 @@ export async function makePhoto(stream: Readable, mime: string): Promise<MadePho
   };
 }
 
-async function fromStream(stream: Readable) {
-  const decoder = sharp(reading);
-  const output = fit(decoder, FULL_EDGE, 84).toBuffer({ resolveWithObject: true });
-  const [made] = await Promise.all([output.catch(refuse), pipeline(stream, decoder).catch(refuse)]);
-  return made;
-}
-
 /** Sharp's build can't decode HEIC (a patent matter), but knows its size; so a bomb is refused before decoding. */
-async function fromHeic(stream: Readable) {
-  const bytes = await buffer(stream);
-  try {
-    const { width, height } = await sharp(bytes, reading).metadata();
-    if (!width || !height || width * height > PHOTO_PIXELS) throw new Error("pixel limit");
-    // The converter has already turned the picture upright.
-    const jpeg = await convertHeic({ buffer: bytes, format: "JPEG", quality: 0.92 });
-    const upright = sharp(new Uint8Array(jpeg), reading);
-    return await fit(upright, FULL_EDGE, 84).toBuffer({ resolveWithObject: true });
-  } catch (error) {
-    return refuse(error);
-  }
+async function fromHeic(bytes: Buffer): Promise<Sharp> {
+  const { width, height } = await sharp(bytes, reading).metadata();
+  if (!width || !height || width * height > PHOTO_PIXELS) throw new Error("pixel limit");
+  // The converter has already turned the picture upright.
+  return sharp(await convertHeic(bytes), reading);
 }
 
 function fit(image: Sharp, edge: number, quality: number): Sharp {

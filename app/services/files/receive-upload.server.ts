@@ -5,10 +5,18 @@ import { and, eq } from "drizzle-orm";
 import { z } from "zod";
 import { tables } from "~/db/client.server";
 import { fileSubjects } from "~/db/schema/units";
+import { deriveBenchSheet } from "~/engine/bench-sheet";
 import type { ServiceContext } from "~/services/context.server";
-import { ForbiddenError, InvalidInputError, NotFoundError, ServiceError } from "~/services/errors";
+import {
+  ConflictError,
+  ForbiddenError,
+  InvalidInputError,
+  NotFoundError,
+  ServiceError,
+} from "~/services/errors";
 import { objectStore, type ObjectStore } from "~/services/storage/object-store.server";
 import { type Act, actOnUnit, type StandingUnit } from "~/services/unit-act.server";
+import { loadRevision } from "~/services/units/load-revision.server";
 import { type Action, decide } from "~/workflow/permissions";
 import { type FileView, listFiles } from "./list-files.server";
 import { makePhoto } from "./make-photo.server";
@@ -16,7 +24,7 @@ import { type IncomingFile, readMultipart, tooLarge } from "./read-multipart.ser
 import { sniffFile } from "./sniff-file.server";
 import { PDF_BYTES } from "./upload-limits";
 
-const { files, findings, revisions } = tables;
+const { files, findings } = tables;
 
 export type FileSubject = (typeof fileSubjects)[number];
 
@@ -66,7 +74,8 @@ interface StoredFile {
  * `caption`.
  *
  * @param unit as the route has read it; everything is asked again under the row lock
- * @throws InvalidInputError (400, 413, 415, 422), ForbiddenError, NotFoundError, UnavailableError: nothing is kept then
+ * @throws InvalidInputError (400, 413, 415, 422), ForbiddenError, NotFoundError, ConflictError, UnavailableError:
+ *   nothing is kept then
  */
 export async function receiveUpload(
   context: ServiceContext,
@@ -182,17 +191,20 @@ async function insertFile(
   fields: UploadFields,
   stored: StoredFile,
 ) {
-  const [revision] = await tx
-    .select({ id: revisions.id })
-    .from(revisions)
-    .where(and(eq(revisions.unitId, unit.id), eq(revisions.number, unit.revision)));
-  if (!revision) throw new NotFoundError(`Revision ${unit.revision} of unit ${unit.number}`);
+  const revision = await loadRevision(tx, unit);
+  if (fields.checkKey !== undefined) {
+    const checks = deriveBenchSheet(revision.map, revision.ruleSet, revision.facts);
+    if (!checks.some(({ key }) => key === fields.checkKey)) throw new NotFoundError("This check");
+  }
   if (fields.findingId !== undefined) {
     const [finding] = await tx
-      .select({ id: findings.id })
+      .select({ number: findings.number, closedAt: findings.closedAt })
       .from(findings)
       .where(and(eq(findings.id, fields.findingId), eq(findings.unitId, unit.id)));
     if (!finding) throw new NotFoundError("The finding");
+    if (fields.subject === "answer" && finding.closedAt !== null) {
+      throw new ConflictError(`Finding ${finding.number} is closed: nothing can be added to its answer.`);
+    }
   }
   const [row] = await tx
     .insert(files)
