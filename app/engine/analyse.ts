@@ -5,10 +5,12 @@ import { analyseFusing } from "./fusing";
 import { analyseInsulation } from "./insulation";
 import { analyseIsolation } from "./isolation";
 import { viewOf } from "./map-view";
+import { ratingFindings } from "./part-ratings";
 import { mapProblems } from "./problems";
 import { analyseReverse } from "./reverse";
 import type { RuleSet } from "./rule-set";
 import { statementsOf } from "./statements";
+import { touchFindings } from "./touch-voltage";
 import type { UnitFacts } from "./unit-facts";
 
 export type { Analysis, Statement, StatementFamily, StatementLevel } from "./analysis";
@@ -23,6 +25,7 @@ export function analyse(map: EnergyMap, ruleSet: RuleSet, facts: UnitFacts): Ana
     reverse: analyseReverse(circuit),
     fusing: analyseFusing(circuit, facts),
     insulation: analyseInsulation(circuit, ruleSet, facts),
+    parts: [...touchFindings(circuit, facts), ...ratingFindings(circuit, facts)],
   };
   return {
     problems: mapProblems(map, facts),

@@ -1,7 +1,9 @@
 import type { Circuit, Link } from "./circuit";
-import { isReached, passes, type Sense } from "./energise";
+import { earthTerminals } from "./earth-net";
+import { isReached, passes, type Reach, type Sense } from "./energise";
 import type { Element } from "./energy-map";
 import type { Feed } from "./feeds";
+import { leadsTo } from "./series-loads";
 import type { UnitFacts } from "./unit-facts";
 
 /** Both ends of a link lie on the same pole of the feeding supply: its current can pass there. */
@@ -61,7 +63,12 @@ export function loadThrough(circuit: Circuit, feed: Feed, index: number, facts: 
       continue;
     const fed = (beyond.has(a) && isReached(opposite, b)) || (beyond.has(b) && isReached(opposite, a));
     const found = circuit.view.elements.get(element);
-    if (!fed || found === undefined) continue;
+    if (found === undefined) continue;
+    if (!fed) {
+      // Current goes on through something else, in series or by earth: how much is not worked out.
+      if (goesOn(circuit, feed, element, beyond, opposite, a, b)) complete = false;
+      continue;
+    }
     counted.add(element);
     const draw = drawOf(found, facts, feed.limitAmps);
     if (draw === null || !Number.isFinite(draw)) complete = false;
@@ -73,6 +80,26 @@ export function loadThrough(circuit: Circuit, feed: Feed, index: number, facts: 
     return { amps: limit, complete: true };
   return { amps, complete };
 }
+
+/** One end of a load hangs on what is fed, and from its other end current can find the way back. */
+function goesOn(
+  circuit: Circuit,
+  { instance, conducts }: Feed,
+  element: string,
+  beyond: ReadonlySet<number>,
+  opposite: Reach,
+  a: number,
+  b: number,
+): boolean {
+  if (beyond.has(a) === beyond.has(b)) return false;
+  const far = beyond.has(a) ? b : a;
+  if (isReached(instance.hot, far) || isReached(instance.ret, far)) return false;
+  const isEarth = (node: number) => instance.supply.domain === "mains" && isEarthTerminal(circuit, node);
+  return leadsTo(circuit, conducts, far, element, (node) => isReached(opposite, node) || isEarth(node));
+}
+
+const isEarthTerminal = ({ view }: Circuit, node: number): boolean =>
+  earthTerminals(view).some((each) => each.node === node);
 
 function reachWithout(
   circuit: Circuit,

@@ -8,6 +8,7 @@ import { insulation } from "./checks/insulation";
 import { leakage } from "./checks/leakage";
 import { marking } from "./checks/marking";
 import { operation } from "./checks/operation";
+import { partsAlone } from "./checks/parts-alone";
 import { protectiveEarth } from "./checks/protective-earth";
 import { reverseCurrent } from "./checks/reverse-current";
 import { storedCharge } from "./checks/stored-charge";
@@ -23,6 +24,7 @@ export const checkRegistry: CheckDefinition[] = [
   visualWiring,
   marking,
   fusing,
+  partsAlone,
   battery,
   protectiveEarth,
   circuitsApart,

@@ -62,6 +62,13 @@ export const applianceCordAmps: readonly (readonly [number, number])[] = [
   [10, 63],
 ];
 
+export const applianceCordCitation: Citation = {
+  standard: "IEC 60335-1",
+  clause: "Table 11, clause 25.8",
+  edition: "not checked",
+  mark: "V",
+};
+
 /** Free-air "chassis" currents, A, by gauge: hobby figures, not a mains rating. */
 export const chassisAmps: readonly (readonly [number, number])[] = [
   [10, 55],
@@ -104,6 +111,8 @@ export function conductorOhms(mm2: number, lengthM: number, celsius = 20): numbe
 
 export interface Ampacity {
   amps: number;
+  /** The conductor is thicker than the table goes: it carries this at least. */
+  atLeast: boolean;
   citation: Citation;
   /** How it was got, in words. */
   basis: string;
@@ -121,6 +130,7 @@ export function ampacityOf(conductor: Conductor): Ampacity | null {
     if (amps === null) return null;
     return {
       amps: roundDown((amps / 2) * factor),
+      atLeast: false,
       citation: chassisCitation,
       basis: `half the free-air current${warm}`,
     };
@@ -128,10 +138,12 @@ export function ampacityOf(conductor: Conductor): Ampacity | null {
   const table = conductor.circuit === "elv" ? applianceCordAmps : cordAmpacity;
   const row = [...table].reverse().find(([area]) => area <= mm2 + 1e-9);
   if (row === undefined) return null;
+  const isThicker = row === table.at(-1) && mm2 > row[0] + 1e-9;
   return {
     amps: roundDown(row[1] * factor),
-    citation: cordCitation,
-    basis: `the cord table's ${row[0]} mm²${warm}`,
+    atLeast: isThicker,
+    citation: conductor.circuit === "elv" ? applianceCordCitation : cordCitation,
+    basis: `the cord table's ${row[0]} mm²${isThicker ? ", where the table ends" : ""}${warm}`,
   };
 }
 

@@ -4,7 +4,7 @@ import type { Circuit } from "./circuit";
 import type { ElementOf } from "./energy-map";
 import type { Feed } from "./feeds";
 import { figure } from "./figure";
-import { suppliedVolts } from "./supply-data";
+import { stackOf } from "./series";
 import type { UnitFacts } from "./unit-facts";
 
 /** Direct voltage and current below which a switch without a rating for it is let pass. From memory. */
@@ -15,6 +15,7 @@ export function contactReports(circuit: Circuit, feeds: Feed[], facts: UnitFacts
   const reports = new Map<string, ContactReport>();
   for (const element of circuit.switches) {
     for (const feed of feeds) {
+      if (feed.reversed) continue;
       circuit.links.forEach((link, index) => {
         if (link.element !== element.id || !carries(feed, link)) return;
         const load = loadThrough(circuit, feed, index, facts);
@@ -39,7 +40,7 @@ function contactReport(
   const { view } = circuit;
   const source = feed.instance.supply.element;
   const direct = feed.instance.supply.domain === "dc";
-  const volts = suppliedVolts(view, feed.instance.supply, facts);
+  const volts = stackOf(circuit, feed.instance.supply, facts).volts;
   const rated = direct
     ? { volts: element.dcVolts, amps: element.dcAmps, kind: "direct" }
     : { volts: element.acVolts, amps: element.acAmps, kind: "alternating" };

@@ -1,5 +1,5 @@
-import type { Circuit } from "./circuit";
-import { configurations, energise, isReached, type Instance } from "./energise";
+import type { Circuit, Supply } from "./circuit";
+import { energise, isReached, settingsOf, type Instance, type Position, type Settings } from "./energise";
 import { largestFlow, networkOf, type Flow, type Network } from "./flow";
 import { reachThroughLoads } from "./live";
 import { suppliedLimit } from "./supply-data";
@@ -14,6 +14,8 @@ interface Networks {
 /** One feeding supply under one set of switch positions, with what is needed to ask for flows. */
 export interface Feed {
   instance: Instance;
+  /** A mains inlet with its poles exchanged, as when the plug is put in the other way round. */
+  reversed: boolean;
   conducts: Uint8Array;
   /** What it reaches through loads, as from `reachThroughLoads`. */
   through: Int32Array;
@@ -27,36 +29,96 @@ export interface Feed {
   low: Networks | null;
 }
 
-/** Every supply with everything switched on, each changeover in each position. */
-export function feedsOf(circuit: Circuit, facts: UnitFacts): Feed[] {
-  const devices = [...circuit.view.ofKind("fuse"), ...circuit.view.ofKind("breaker")];
-  const highest = new Map(devices.map(({ id, ratingAmps }) => [id, ratingAmps ?? Infinity]));
-  const lowest = new Map(devices.map(({ id, ratingAmps }) => [id, ratingAmps ?? 0]));
-  const allKnown = devices.every(({ ratingAmps }) => ratingAmps !== null);
-  return configurations(circuit, () => null).flatMap((positions) =>
-    circuit.sources.flatMap((source) => {
-      const { instances, conducts } = energise(circuit, source, { positions, includePossible: true });
-      const feeds: Feed[] = [];
-      for (const instance of instances) {
-        const parent = feeds.find((each) => each.instance === instance.parent?.instance);
-        feeds.push({
-          instance,
-          conducts,
-          through: reachThroughLoads(circuit, instance, conducts),
-          doubtful: parent?.doubtful === true || instance.parent?.transfer.certainty === "possible",
-          limitAmps: suppliedLimit(
-            circuit.view,
-            instance,
-            facts,
-            parent === undefined ? null : feedAmps(circuit, parent, instance),
-          ),
-          high: networksOf(circuit, instance, conducts, highest),
-          low: allKnown ? null : networksOf(circuit, instance, conducts, lowest),
-        });
-      }
-      return feeds;
-    }),
+/** Settings times conductors that are worked out at most. */
+const workAtMost = 6000;
+
+/** The settings that fusing is judged in, and the changeovers of which some are left out. */
+export const feedSettings = (circuit: Circuit): Settings =>
+  settingsOf(
+    circuit,
+    () => null,
+    Math.max(1, Math.floor(workAtMost / Math.max(1, circuit.view.wired.length))),
   );
+
+const cache = new WeakMap<Circuit, { facts: UnitFacts; feeds: Feed[] }>();
+
+/**
+ * Every supply with everything switched on, each changeover in each position. Where a plug may be put in the other way round,
+ * its inlet once more with the poles exchanged.
+ */
+export function feedsOf(circuit: Circuit, facts: UnitFacts): Feed[] {
+  const known = cache.get(circuit);
+  if (known?.facts === facts) return known.feeds;
+  const capacities = deviceCapacities(circuit);
+  const feeds = feedSettings(circuit).positions.flatMap((positions) =>
+    circuit.sources.flatMap((source) => [
+      ...feedsFrom(circuit, source, positions, false, capacities, facts),
+      ...(mayBeReversed(circuit, source)
+        ? feedsFrom(
+            circuit,
+            { ...source, hot: source.ret, ret: source.hot },
+            positions,
+            true,
+            capacities,
+            facts,
+          )
+        : []),
+    ]),
+  );
+  cache.set(circuit, { facts, feeds });
+  return feeds;
+}
+
+function mayBeReversed({ view }: Circuit, { element }: Supply): boolean {
+  const found = view.elements.get(element);
+  return found?.kind === "mains-inlet" && found.polarised !== "yes";
+}
+
+interface Capacities {
+  highest: Map<string, number>;
+  lowest: Map<string, number>;
+  allKnown: boolean;
+}
+
+function deviceCapacities({ view }: Circuit): Capacities {
+  const devices = [...view.ofKind("fuse"), ...view.ofKind("breaker")];
+  return {
+    highest: new Map(devices.map(({ id, ratingAmps }) => [id, ratingAmps ?? Infinity])),
+    lowest: new Map(devices.map(({ id, ratingAmps }) => [id, ratingAmps ?? 0])),
+    allKnown: devices.every(({ ratingAmps }) => ratingAmps !== null),
+  };
+}
+
+/** A source and what it feeds through stages; of a reversed inlet itself alone, since behind a stage nothing changes. */
+function feedsFrom(
+  circuit: Circuit,
+  source: Supply,
+  positions: Map<string, Position>,
+  reversed: boolean,
+  { highest, lowest, allKnown }: Capacities,
+  facts: UnitFacts,
+): Feed[] {
+  const { instances, conducts } = energise(circuit, source, { positions, includePossible: true });
+  const feeds: Feed[] = [];
+  for (const instance of reversed ? instances.slice(0, 1) : instances) {
+    const parent = feeds.find((each) => each.instance === instance.parent?.instance);
+    feeds.push({
+      instance,
+      reversed,
+      conducts,
+      through: reachThroughLoads(circuit, instance, conducts),
+      doubtful: parent?.doubtful === true || instance.parent?.transfer.certainty === "possible",
+      limitAmps: suppliedLimit(
+        circuit.view,
+        instance,
+        facts,
+        parent === undefined ? null : feedAmps(circuit, parent, instance),
+      ),
+      high: networksOf(circuit, instance, conducts, highest),
+      low: allKnown ? null : networksOf(circuit, instance, conducts, lowest),
+    });
+  }
+  return feeds;
 }
 
 function networksOf(

@@ -87,14 +87,31 @@ export interface BreakingCapacity {
   citation: Citation;
 }
 
-/** Breaking capacity that the type guarantees when the maker's own figure is not known; `null` when it guarantees none. */
-export function guaranteedBreaking(fuse: Fuse): BreakingCapacity | null {
-  if (fuse.breakingAmps !== null) {
-    return {
-      amps: fuse.breakingAmps,
-      citation: { standard: "maker's data", clause: "breaking capacity", edition: "as entered", mark: "C" },
-    };
-  }
+/**
+ * Breaking capacity that can be relied on: the maker's figure, or what the type guarantees, and of both the smaller. Letters and
+ * BS 1362 speak of alternating voltage only: for direct voltage the maker's own figure counts alone, held down by the letter.
+ * `null` when nothing guarantees any.
+ */
+export function guaranteedBreaking(fuse: Fuse, direct = false): BreakingCapacity | null {
+  const stated: BreakingCapacity | null =
+    fuse.breakingAmps === null
+      ? null
+      : {
+          amps: fuse.breakingAmps,
+          citation: {
+            standard: "maker's data",
+            clause: "breaking capacity",
+            edition: "as entered",
+            mark: "C",
+          },
+        };
+  const byType = typeBreaking(fuse);
+  if (stated === null) return direct ? null : byType;
+  return byType !== null && byType.amps < stated.amps ? byType : stated;
+}
+
+/** What the standard guarantees for alternating voltage; `null` when it guarantees none. */
+function typeBreaking(fuse: Fuse): BreakingCapacity | null {
   if (fuse.standard === "bs-1362") {
     return {
       amps: 6000,
@@ -122,19 +139,22 @@ export function guaranteedBreaking(fuse: Fuse): BreakingCapacity | null {
       };
     case "H":
       return {
-        amps: 1500,
+        amps: fuse.ratingAmps !== null && fuse.ratingAmps <= largestHighBreaking ? 1500 : 500,
         citation: {
           standard: "IEC 60127-2",
           clause: "sheets 1 and 5",
           edition: "not checked",
           mark: "V",
-          note: "500 A at the largest ratings.",
+          note: `500 A at the largest ratings; the border at ${largestHighBreaking} A is from memory.`,
         },
       };
     default:
       return null;
   }
 }
+
+/** Largest rating, A, for which letter H stands for 1500 A. From memory: the standard's sheets end at 10 A. */
+const largestHighBreaking = 10;
 
 /** Low breaking capacity: the greater of 35 A and ten times the rating (IEC 60127-2, sheets 2 and 3). */
 export function lowBreaking(ratingAmps: number): number {

@@ -1,11 +1,13 @@
 import type { ConductorProtection, DeviceReport, Verdict3 } from "./analysis";
 import { carries, loadThrough, type CarriedLoad } from "./carried-load";
 import type { Circuit, Link } from "./circuit";
+import { isReached } from "./energise";
 import type { ElementOf } from "./energy-map";
 import type { Feed } from "./feeds";
 import { figure } from "./figure";
 import { guaranteedBreaking, loadableShare, proposeRating, standardRatings } from "./fuse-data";
-import { shortCircuitAmps, suppliedVolts } from "./supply-data";
+import { stackOf } from "./series";
+import { shortCircuitAmps } from "./supply-data";
 import type { UnitFacts } from "./unit-facts";
 
 type Device = ElementOf<"fuse"> | ElementOf<"breaker">;
@@ -21,6 +23,7 @@ export function deviceReports(
   const devices: Device[] = [...circuit.view.ofKind("fuse"), ...circuit.view.ofKind("breaker")];
   for (const device of devices) {
     for (const feed of feeds) {
+      if (feed.reversed) continue;
       const index = circuit.links.findIndex((link) => link.element === device.id && carries(feed, link));
       const link = circuit.links[index];
       if (link === undefined) continue;
@@ -66,15 +69,22 @@ function reportOn(
           .at(-1) ?? null);
   const prospectiveAmps = shortCircuitAmps(view, feed.instance, feed.limitAmps);
   const breakingAmps =
-    device.kind === "fuse" ? (guaranteedBreaking(device)?.amps ?? null) : device.breakingAmps;
+    device.kind === "fuse"
+      ? (guaranteedBreaking(device, feed.instance.supply.domain === "dc")?.amps ?? null)
+      : device.breakingAmps;
+  if (device.kind === "fuse" && breakingAmps !== null && breakingAmps < (device.breakingAmps ?? 0))
+    texts.push(
+      `${name}: ${figure(device.breakingAmps ?? 0)} A is entered as its breaking capacity, but its type stands for ${figure(breakingAmps)} A, which counts.`,
+    );
   const breakingVerdict = judgeBreaking(name, view.name(source), prospectiveAmps, breakingAmps, texts);
   const voltageVerdict = judgeVoltage(
     name,
     device,
     feed,
-    suppliedVolts(view, feed.instance.supply, facts),
+    stackOf(circuit, feed.instance.supply, facts).volts,
     texts,
   );
+  const placementVerdict = judgePlacement(circuit, feed, device, link, texts);
   return {
     device: device.id,
     source,
@@ -88,8 +98,49 @@ function reportOn(
     loadVerdict: feed.doubtful && loadVerdict === "fail" ? "unknown" : loadVerdict,
     breakingVerdict: feed.doubtful && breakingVerdict === "fail" ? "unknown" : breakingVerdict,
     voltageVerdict: feed.doubtful && voltageVerdict === "fail" ? "unknown" : voltageVerdict,
+    placementVerdict,
     texts,
   };
+}
+
+/** A device in the neutral opens and leaves everything behind it live: it cannot be the only one that guards an inlet. */
+function judgePlacement(
+  circuit: Circuit,
+  { instance, conducts }: Feed,
+  device: Device,
+  link: Link,
+  texts: string[],
+): Verdict3 {
+  const { view } = circuit;
+  const inlet = view.elements.get(instance.supply.element);
+  if (inlet?.kind !== "mains-inlet") return "pass";
+  const onRet = isReached(instance.ret, link.a) && !isReached(instance.hot, link.a);
+  if (!onRet) return "pass";
+  const guarding = circuit.links.find(
+    ({ kind, element, a, b }, index) =>
+      kind === "protector" &&
+      element !== null &&
+      ["fuse", "breaker"].includes(view.elements.get(element)?.kind ?? "") &&
+      (conducts[index] ?? 0) !== 0 &&
+      isReached(instance.hot, a) &&
+      isReached(instance.hot, b),
+  );
+  const name = view.name(device.id);
+  if (guarding !== undefined) {
+    if (guarding.element !== device.id)
+      texts.push(`${name} sits in the neutral; ${view.name(guarding.element ?? "")} guards the line.`);
+    return "pass";
+  }
+  if (inlet.polarised === "yes") {
+    texts.push(
+      `${name} sits in the neutral of ${view.name(inlet.id)}: when it opens, everything stays live.`,
+    );
+    return "fail";
+  }
+  texts.push(
+    `${name} sits in the neutral of ${view.name(inlet.id)} as drawn; with the plug the other way round it is in the line. It guards against a short between the poles, not from the other pole to earth.`,
+  );
+  return inlet.polarised === "unknown" ? "unknown" : "pass";
 }
 
 function judgeLoad(

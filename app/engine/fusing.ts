@@ -1,8 +1,18 @@
-import type { ConductorProtection, FusingResult } from "./analysis";
+import type { ConductorProtection, FusingResult, Verdict3 } from "./analysis";
+import { uncheckedText } from "./backfeed";
 import type { Circuit } from "./circuit";
 import { ampacityOf } from "./conductor-data";
 import type { Conductor } from "./energy-map";
-import { feedsOf, limitsOf, sideOf, withLimit, type Feed, type Limits, type Side } from "./feeds";
+import {
+  feedSettings,
+  feedsOf,
+  limitsOf,
+  sideOf,
+  withLimit,
+  type Feed,
+  type Limits,
+  type Side,
+} from "./feeds";
 import { figure } from "./figure";
 import type { Flow } from "./flow";
 import { contactReports } from "./contact-reports";
@@ -21,10 +31,31 @@ export function analyseFusing(circuit: Circuit, facts: UnitFacts): FusingResult 
       }),
     ),
   );
-  return {
+  const unchecked = feedSettings(circuit).left;
+  return openWhereUnchecked(circuit, {
     conductors,
     devices: deviceReports(circuit, feeds, conductors, facts),
     contacts: contactReports(circuit, feeds, facts),
+    unchecked,
+  });
+}
+
+/** What passes in the positions that were worked out is not known in the others. */
+function openWhereUnchecked({ view }: Circuit, result: FusingResult): FusingResult {
+  if (result.unchecked.length === 0) return result;
+  const doubt = uncheckedText(view, result.unchecked);
+  const open = (verdict: Verdict3): Verdict3 => (verdict === "pass" ? "unknown" : verdict);
+  const tell = <Each extends { verdict: Verdict3; text: string }>(each: Each): Each =>
+    each.verdict === "pass" ? { ...each, verdict: "unknown", text: `${each.text} ${doubt}` } : each;
+  return {
+    ...result,
+    conductors: result.conductors.map(tell),
+    contacts: result.contacts.map(tell),
+    devices: result.devices.map((each) => ({
+      ...each,
+      loadVerdict: open(each.loadVerdict),
+      texts: [...each.texts, doubt],
+    })),
   };
 }
 
@@ -35,9 +66,10 @@ function protectionOf(
   index: number,
 ): ConductorProtection | null {
   const link = circuit.links[index];
-  if (conductor.circuit === "earth" || link === undefined) return null;
+  if (link === undefined) return null;
   const side = sideOf(feed, link.a);
-  if (side === null) return null;
+  // Earth conductors carry nothing that feeds; one that a live pole does reach is judged like any other.
+  if (side === null || (conductor.circuit === "earth" && side !== "hot")) return null;
   const high = limitsOf(circuit, feed, feed.high, index, side);
   const low = feed.low === null ? high : limitsOf(circuit, feed, feed.low, index, side);
   return judge(circuit, feed, conductor, side, high, low);
@@ -76,7 +108,7 @@ function judge(
     ...base,
     ...rest,
     verdict: verdict !== "pass" && feed.doubtful ? "unknown" : verdict,
-    text,
+    text: feed.reversed && verdict !== "pass" ? `With the plug the other way round: ${text}` : text,
   });
   if (ampacity === null) {
     return answer(
@@ -106,10 +138,23 @@ function judge(
   }
   const lowest = Math.min(leastInto, low.onward.amps);
   if (lowest <= ampacity.amps) return unknownLimit();
+  if (ampacity.atLeast && (isBounded(into.amps) || isBounded(onward.amps))) {
+    const short = isBounded(into.amps)
+      ? null
+      : overloadOnly(circuit, feed, conductor, side, onward, may, answer);
+    return short?.verdict === "fail"
+      ? short
+      : answer(
+          "unknown",
+          `${conductor.id} is thicker than the table goes (${figure(ampacity.amps)} A at its end): whether it carries the ${figure(Math.min(into.amps ?? Infinity, onward.amps))} A that can flow in it is not known.`,
+        );
+  }
   return into.amps === null || !Number.isFinite(into.amps)
     ? answer("fail", `No fuse or breaker limits what ${supplied} can drive through ${conductor.id}. ${may}.`)
     : answer("fail", `${may}, but ${names}.`);
 }
+
+const isBounded = (amps: number | null): boolean => amps !== null && Number.isFinite(amps);
 
 /** A device further on keeps the load within bounds; a short before it must be cleared by something else. */
 function overloadOnly(

@@ -6,6 +6,7 @@ import { figure } from "./figure";
 import { requiredDistances, type PollutionDegree } from "./insulation-data";
 import type { MapView } from "./map-view";
 import type { RuleSet } from "./rule-set";
+import { highestMainsVolts } from "./supply-data";
 import type { UnitFacts } from "./unit-facts";
 
 /** What must be insulated from mains and how well: outputs of supplies, parts that can be touched, poles in one switch. */
@@ -23,7 +24,7 @@ export function analyseInsulation(circuit: Circuit, ruleSet: RuleSet, facts: Uni
   ) => {
     const degree: PollutionDegree = ruleSet.values.pollutionDegree.value >= 3 ? 3 : 2;
     const altitudeM = facts.altitudeM ?? ruleSet.values.altitude.value;
-    const distances = requiredDistances(facts.supplyVolts, grade, { degree, altitudeM });
+    const distances = requiredDistances(highestMainsVolts(view, facts), grade, { degree, altitudeM });
     barriers.push({
       id,
       between,
@@ -59,7 +60,7 @@ export function analyseInsulation(circuit: Circuit, ruleSet: RuleSet, facts: Uni
     const bonded = earthed === "pass";
     const grade = bonded ? "basic" : "reinforced";
     const degree: PollutionDegree = ruleSet.values.pollutionDegree.value >= 3 ? 3 : 2;
-    const needed = requiredDistances(facts.supplyVolts, grade, {
+    const needed = requiredDistances(highestMainsVolts(view, facts), grade, {
       degree,
       altitudeM: facts.altitudeM ?? ruleSet.values.altitude.value,
     });

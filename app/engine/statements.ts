@@ -10,6 +10,7 @@ import {
   fusingStatements,
   insulationStatements,
   leakageStatements,
+  partStatements,
 } from "./supply-statements";
 import type { UnitFacts } from "./unit-facts";
 
@@ -26,6 +27,7 @@ export function statementsOf(
     ...earthStatements(circuit, facts),
     ...reverseStatements(circuit, analysis),
     ...fusingStatements(circuit, analysis),
+    ...partStatements(analysis),
     ...insulationStatements(analysis),
     ...leakageStatements(circuit, ruleSet, facts),
     ...chargeStatements(circuit, ruleSet, facts),

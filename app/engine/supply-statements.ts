@@ -23,7 +23,12 @@ export function fusingStatements({ view }: Circuit, { fusing }: Results): Statem
       ),
     );
   const devices = fusing.devices.map((report) => {
-    const verdicts = [report.loadVerdict, report.breakingVerdict, report.voltageVerdict];
+    const verdicts = [
+      report.loadVerdict,
+      report.breakingVerdict,
+      report.voltageVerdict,
+      report.placementVerdict,
+    ];
     const verdict: Verdict3 = verdicts.includes("fail")
       ? "fail"
       : verdicts.includes("unknown")
@@ -59,6 +64,20 @@ function proposalText(next: number | null, largest: number | null): string {
   if (next === null) return " No standard rating suits both the load and the conductors.";
   const upTo = largest !== null && largest > next ? ` up to ${figure(largest)} A` : "";
   return ` A rating from ${figure(next)} A${upTo} would suit load and conductors.`;
+}
+
+/** Parts by themselves: a touched voltage is a danger, a rating that does not suit a defect. */
+export function partStatements({ parts }: Results): Statement[] {
+  return parts.map(({ kind, element, verdict, text, elements, conductors }, index) =>
+    say(
+      kind === "touch" ? "insulation" : "fusing",
+      `part ${kind} ${element} ${index}`,
+      levelOf(verdict, kind === "touch" ? "danger" : "defect"),
+      text,
+      elements,
+      conductors,
+    ),
+  );
 }
 
 export function insulationStatements({ insulation }: Results): Statement[] {

@@ -1,7 +1,7 @@
 import type { BenchCheck, CheckDefinition } from "../bench-check";
 import { answer, because, beforeTouching, examination, keyOf, practice, worstVerdict } from "../check-parts";
-import { chassisCitation, cordCitation } from "../conductor-data";
 import { figure } from "../figure";
+import { ambientNote, conductorCitations, transformerShortCitation } from "../fusing-citations";
 import { guaranteedBreaking, loadableShare, miniatureFuseCitation } from "../fuse-data";
 import { joinText } from "../joins";
 import type { Citation } from "../rule-set";
@@ -18,6 +18,7 @@ export const fusing: CheckDefinition = {
         each.loadVerdict,
         each.breakingVerdict,
         each.voltageVerdict,
+        each.placementVerdict,
       ]);
       const reasons = reports.flatMap((each) =>
         each.texts.map((text) => because(text, [device.id, each.source])),
@@ -32,6 +33,9 @@ export const fusing: CheckDefinition = {
         device.kind === "fuse" ? loadableShare(device.standard).citation : practice("device rating"),
         ...(breaking === undefined ? [] : [breaking]),
         miniatureFuseCitation,
+        ...(reports.some(({ source }) => view.elements.get(source)?.kind === "transformer")
+          ? [transformerShortCitation]
+          : []),
       ];
       return {
         key: keyOf("fuse", device.id),
@@ -83,6 +87,7 @@ export const fusing: CheckDefinition = {
         method: [
           `Find each of ${fed.map(({ conductor }) => conductor).join(", ")} and compare its cross-section with the map.`,
           "Nothing thinner is spliced in, and no wire leaves before the device that protects it.",
+          ...ambientNote(fed.flatMap(({ conductor }) => view.conductors.get(conductor) ?? [])),
           ...(view.elements.get(source)?.kind === "battery"
             ? ["Measure the lead from the battery's pole to its fuse; keep it short and covered."]
             : []),
@@ -98,7 +103,7 @@ export const fusing: CheckDefinition = {
           "Thinner, spliced, or taken off before the fuse",
         ),
         photo: "optional",
-        citations: [cordCitation, chassisCitation],
+        citations: conductorCitations(view, source, fed),
         subjects: { elements: [source, ...devicesHere], conductors: fed.map(({ conductor }) => conductor) },
       };
     });
