@@ -154,3 +154,10 @@ test("no instrument is exact: an accuracy of nothing at all is not known", () =>
   ])
     expect(judgeReading(atMost(0.3, "Ω"), { value: 0.3 }, accuracy, "rect").verdict).toBe("undecided");
 });
+
+test("a negative size decides nothing; degrees Celsius go below nought", () => {
+  expect(judgeReading(atMost(0.3, "Ω"), { value: -5 }, lowOhm, "rect").verdict).toBe("undecided");
+  expect(
+    judgeReading(atMost(48, "°C"), { value: -5 }, { percent: 1, digits: 1, resolution: 0.1 }, "rect").verdict,
+  ).toBe("pass");
+});

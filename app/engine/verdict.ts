@@ -63,6 +63,15 @@ export function judgeReading(
       neededAccuracy: "Take a reading.",
     };
   }
+  if (reading.value < 0 && unit !== "°C") {
+    return {
+      verdict: "undecided",
+      expandedUncertainty: null,
+      guardBand: "none",
+      reason: "A size has no sign: a negative reading would slip under every maximum.",
+      neededAccuracy: "Take the size without its sign, and look why the instrument shows one.",
+    };
+  }
   if (reading.bound === ">" || reading.bound === "<")
     return judgeOutOfRange(limit, reading.value, reading.bound);
   if (accuracy === null || !isUsable(accuracy)) {
