@@ -6,6 +6,7 @@ import { finishSheet, sendBackFromBench } from "~/services/bench/finish-sheet.se
 import { closeFinding, raiseFinding } from "~/services/bench/raise-finding.server";
 import { recordObservation } from "~/services/bench/record-observation.server";
 import { takeUnit } from "~/services/bench/bench-turns.server";
+import { loadRework } from "~/services/units/load-rework.server";
 import { database } from "~/services/database.server";
 import {
   ConflictError,
@@ -242,6 +243,17 @@ test("sending back needs a reason and an open finding, and opens the next revisi
   const mails = await mailsOf();
   expect(mails.map(({ recipient }) => recipient)).toEqual([bench.people.builder.email]);
   expect(mails[0]?.text).toContain("The cord can be pulled out");
+  // It stays with the revision that it opened, for its builder and the next inspector; the trail holds no free text.
+  const sentBack = { reason: "The cord can be pulled out", by: inspector.person.name };
+  expect((await loadRework(bench.as("builder"), await unitNow(inspector, number))).sentBack).toEqual(
+    sentBack,
+  );
+  expect((await sheetNow(inspector, number)).revision.sentBack).toEqual(sentBack);
+  const entries = await db
+    .select()
+    .from(tables.auditEntries)
+    .where(eq(tables.auditEntries.unitId, bench.unit.id));
+  expect(JSON.stringify(entries.map(({ detail }) => detail))).not.toContain("pulled out");
   await expect(find(check.key)).rejects.toThrow(ForbiddenError);
 });
 
