@@ -32,17 +32,17 @@ export function nextStepFor(unit: { state: UnitState; isOwn: boolean }): { what:
     case "signed":
       return {
         what: "Signed.",
-        who: `It may be used under the conditions of its record, until its recheck date. Any change to it ends that: ${anew(unit.isOwn)} before.`,
+        who: `It may be used under the conditions of its record, until its recheck date. Any change to it ends that: ${anew(unit.isOwn)}`,
       };
     case "refused":
       return {
         what: "Refused.",
-        who: `It must not be plugged in; the record says why. To go on, ${anew(unit.isOwn)}.`,
+        who: `It must not be plugged in; the record says why. To go on, ${anew(unit.isOwn)}`,
       };
     case "withdrawn":
       return {
         what: "The signature was withdrawn.",
-        who: `It must not be plugged in; the record says why. To go on, ${anew(unit.isOwn)}.`,
+        who: `It must not be plugged in; the record says why. To go on, ${anew(unit.isOwn)}`,
       };
     case "superseded":
       return {
@@ -52,6 +52,7 @@ export function nextStepFor(unit: { state: UnitState; isOwn: boolean }): { what:
   }
 }
 
+/** What can be done with a decided unit, whether or not it has been begun. */
 function anew(isOwn: boolean): string {
-  return isOwn ? "start a new version of it" : "its builder starts a new version of it";
+  return `changes are made in a new version of it, which ${isOwn ? "you start" : "its builder starts"} on this page.`;
 }
