@@ -6,7 +6,17 @@ import mysql from "mysql2/promise";
 import { APP_USER } from "./mariadb";
 
 /** Tables that the application may only read and add to: what they hold can't be rewritten by a bug or a break-in. */
-export const appendOnlyTables: readonly string[] = ["audit_entries", "decisions", "withdrawals"];
+export const appendOnlyTables: readonly string[] = [
+  "audit_entries",
+  "decisions",
+  "observations",
+  "withdrawals",
+];
+
+/** Tables that it may add to, and in whose rows it may change these columns only. */
+export const changeableColumns: Readonly<Record<string, readonly string[]>> = {
+  records: ["pdf_key", "pdf_sha256", "pdf_bytes", "pdf_made_at"],
+};
 
 /** MariaDB's answer to revoking what was never granted: 1141 for the user, 1147 for the table. */
 const NOT_GRANTED = new Set([1141, 1147]);
@@ -48,10 +58,15 @@ async function grantToApplication(connection: mysql.Connection): Promise<void> {
   const account = `'${APP_USER}'@'127.0.0.1'`;
   for (const table of await tableNames(connection)) {
     if (table === "__drizzle_migrations") continue;
-    const appendOnly = appendOnlyTables.includes(table);
-    const rights = appendOnly ? "SELECT, INSERT" : "SELECT, INSERT, UPDATE, DELETE";
+    const columns = changeableColumns[table] ?? [];
+    const kept = appendOnlyTables.includes(table) || columns.length > 0;
+    const rights = kept ? "SELECT, INSERT" : "SELECT, INSERT, UPDATE, DELETE";
     await connection.query(`GRANT ${rights} ON ${mysql.escapeId(table)} TO ${account}`);
-    if (appendOnly) await revoke(connection, table, account);
+    if (kept) await revoke(connection, table, account);
+    if (columns.length > 0) {
+      const names = columns.map((column) => mysql.escapeId(column)).join(", ");
+      await connection.query(`GRANT UPDATE (${names}) ON ${mysql.escapeId(table)} TO ${account}`);
+    }
   }
 }
 

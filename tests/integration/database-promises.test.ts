@@ -1,6 +1,6 @@
 import mysql from "mysql2/promise";
 import { expect, test } from "vitest";
-import { appendOnlyTables } from "../../local/migrations";
+import { appendOnlyTables, applyMigrations } from "../../local/migrations";
 import { ownerQuery, ownerUrlOfThisFile } from "../helpers/database";
 
 const asApplication = () => mysql.createConnection({ uri: process.env.DATABASE_URL });
@@ -32,6 +32,43 @@ test.each(appendOnlyTables)("the application can read and add to %s, and nothing
   ]) {
     await expect(connection.query(statement), statement).rejects.toMatchObject({ errno: 1142 });
   }
+  await connection.end();
+});
+
+test("of a record the application can change what tells of its PDF, and nothing else", async () => {
+  const connection = await asApplication();
+  await connection.query("UPDATE records SET pdf_key = pdf_key, pdf_sha256 = pdf_sha256 WHERE id = 0");
+  await connection.query("UPDATE records SET pdf_bytes = pdf_bytes, pdf_made_at = pdf_made_at WHERE id = 0");
+  const owner = ownerUrlOfThisFile();
+  const columns = await ownerQuery(
+    owner,
+    "SELECT column_name AS name FROM information_schema.columns WHERE table_schema = DATABASE() AND table_name = 'records'",
+  );
+  const others = columns.map(({ name }) => String(name)).filter((name) => !name.startsWith("pdf_"));
+  expect(others).toContain("canonical_json");
+  for (const column of others) {
+    // 1143: "command denied to user for column".
+    await expect(
+      connection.query(`UPDATE records SET ${column} = ${column} WHERE id = 0`),
+      column,
+    ).rejects.toMatchObject({ errno: 1143 });
+  }
+  for (const statement of ["DELETE FROM records WHERE id = 0", "TRUNCATE records", "DROP TABLE records"]) {
+    await expect(connection.query(statement), statement).rejects.toMatchObject({ errno: 1142 });
+  }
+  await connection.end();
+});
+
+test("rights are given anew at every start, without widening", async () => {
+  await applyMigrations(process.cwd(), ownerUrlOfThisFile());
+  const connection = await asApplication();
+  await connection.query("UPDATE records SET pdf_key = pdf_key WHERE id = 0");
+  await expect(connection.query("UPDATE records SET sha256 = sha256 WHERE id = 0")).rejects.toMatchObject({
+    errno: 1143,
+  });
+  await expect(connection.query("UPDATE observations SET value = 1 WHERE id = 0")).rejects.toMatchObject({
+    errno: 1142,
+  });
   await connection.end();
 });
 

@@ -4,8 +4,8 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { and, eq } from "drizzle-orm";
 import sharp from "sharp";
-import { describe, expect, test } from "vitest";
-import { tables } from "~/db/client.server";
+import { afterAll, describe, expect, test } from "vitest";
+import { openDatabase, tables } from "~/db/client.server";
 import { findRecord } from "~/services/archive/find-record.server";
 import { loadSheet } from "~/services/bench/load-sheet.server";
 import type { ServiceContext } from "~/services/context.server";
@@ -20,11 +20,16 @@ import {
 import { parseRecord } from "~/services/records/canonical-record";
 import { refuseUnit, signUnit } from "~/services/signing/decide-on-unit.server";
 import { sendBackFromReview } from "~/services/signing/send-back.server";
+import { loadRevision } from "~/services/units/load-revision.server";
 import { sheetNow, starterMap, type TestBench, unitNow } from "../fixtures/bench";
 import { drawnSignature, givePassword, makeReviewable, signInput } from "../fixtures/signing";
 import { grantRoles, makeLicence, makeMember } from "../fixtures/workshop";
+import { ownerUrlOfThisFile } from "../helpers/database";
 
 const db = database();
+// The application itself can't change an observation.
+const owner = openDatabase(ownerUrlOfThisFile(), { connections: 2 });
+afterAll(() => owner.close());
 
 async function decisionsOf({ unit }: TestBench) {
   return db.select().from(tables.decisions).where(eq(tables.decisions.unitId, unit.id));
@@ -211,7 +216,7 @@ describe("a guard stops the signature, in words:", () => {
   test("a check that nobody decided", async () => {
     const bench = await makeReviewable(db);
     const [first] = (await sheetNow(bench.as("inspector"), bench.unit.number)).lines;
-    await db
+    await owner
       .delete(tables.observations)
       .where(
         and(
@@ -237,10 +242,10 @@ describe("a guard stops the signature, in words:", () => {
       eq(tables.observations.unitId, bench.unit.id),
       eq(tables.observations.kind, "measured"),
     );
-    await db.update(tables.observations).set({ calibrationDue: "2026-05-03" }).where(ofUnit);
+    await owner.update(tables.observations).set({ calibrationDue: "2026-05-03" }).where(ofUnit);
     expect(await reasonsAgainst(bench)).toContain("whose calibration ended on 2026-05-03");
     // In calibration on the day itself, though not any more: that is enough.
-    await db.update(tables.observations).set({ calibrationDue: "2026-05-04" }).where(ofUnit);
+    await owner.update(tables.observations).set({ calibrationDue: "2026-05-04" }).where(ofUnit);
     bench.clock.at = new Date("2026-06-01T09:00:00Z");
     const electrician = bench.as("electrician");
     await signUnit(electrician, await signInput(electrician, bench.unit.number));
@@ -266,7 +271,7 @@ describe("a guard stops the signature, in words:", () => {
     const [line] = (await sheetNow(bench.as("inspector"), bench.unit.number)).lines.filter(
       ({ observation }) => observation?.kind === "examined",
     );
-    await db
+    await owner
       .update(tables.observations)
       .set({ conforms: "no" })
       .where(eq(tables.observations.id, line?.observation?.id ?? 0));
@@ -396,6 +401,11 @@ test("sending back makes a finding of the reason and opens a revision for the re
   await expect(sendBackFromReview(electrician, { ...input, reason: " " })).rejects.toBeInstanceOf(GuardError);
   await sendBackFromReview(electrician, { ...input, reason: "The cord grip doesn't hold the cord." });
   expect(await unitNow(electrician, bench.unit.number)).toMatchObject({ state: "sent_back", revision: 2 });
+  const opened = await loadRevision(db, await unitNow(electrician, bench.unit.number));
+  expect(opened.sentBack).toEqual({
+    reason: "The cord grip doesn't hold the cord.",
+    by: electrician.person.name,
+  });
   const findings = await db.select().from(tables.findings).where(eq(tables.findings.unitId, bench.unit.id));
   expect(findings).toMatchObject([
     { number: 1, severity: "defect", text: "The cord grip doesn't hold the cord.", closedAt: null },
