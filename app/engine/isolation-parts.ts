@@ -12,9 +12,15 @@ import { list } from "./wording";
  * (no switch, or one in a single pole that promises function only), or not as it should be.
  */
 export type MainsIsolation =
-  | { by: "switch"; switches: string[]; verdict: Verdict3; reasons: Reason[] }
-  | { by: "plug"; verdict: "unknown"; reasons: Reason[] }
-  | { by: "nothing"; verdict: Verdict3; reasons: Reason[] };
+  | { by: "switch"; switches: string[]; verdict: Verdict3; reasons: JudgedReason[] }
+  | { by: "plug"; verdict: "unknown"; reasons: JudgedReason[] }
+  | { by: "nothing"; verdict: Verdict3; reasons: JudgedReason[] };
+
+/** One point of the judgement, with what it comes to by itself. */
+export interface JudgedReason {
+  verdict: Verdict3;
+  reason: Reason;
+}
 
 export interface Matter {
   view: MapView;
@@ -25,11 +31,12 @@ export interface Matter {
   consumers: ConsumerIsolation[];
 }
 
-export const reason = (text: string, elements: string[], conductors: string[] = []): Reason => ({
-  text,
-  elements,
-  conductors,
-});
+export const judged = (
+  verdict: Verdict3,
+  text: string,
+  elements: string[],
+  conductors: string[] = [],
+): JudgedReason => ({ verdict, reason: { text, elements, conductors } });
 
 export const isHand = ({ view }: Matter, id: string) =>
   view.ofKind("switch").some((each) => each.id === id && each.actuator === "hand");

@@ -34,13 +34,8 @@ export function isolationStatements(
   for (const inlet of view.ofKind("mains-inlet")) {
     const judged = judgeMainsIsolation(view, isolation, fusing, ruleSet, inlet);
     if (judged === null) continue;
-    judged.reasons.forEach((reason, index) => {
-      const level =
-        judged.by === "plug"
-          ? "caution"
-          : index === 0 || judged.verdict !== "pass"
-            ? levelOf(judged.verdict, "danger")
-            : "good";
+    judged.reasons.forEach(({ verdict, reason }, index) => {
+      const level = judged.by === "plug" && verdict !== "pass" ? "caution" : levelOf(verdict, "danger");
       statements.push(fromReason("isolation", `mains ${inlet.id} ${index}`, level, reason));
       told.add(reason.text);
     });

@@ -223,3 +223,9 @@ test("a supply whose output shares the neutral is parted by the two-pole switch 
     "S1 (Mains switch) breaks line and neutral of X1 (Inlet) together",
   );
 });
+
+test("what is right about a switch that fails is not told as a danger", () => {
+  const found = answersOf(withData(soundBox, "S1", { gapMm: 0.5 }));
+  expect(found.said("danger")).toBe("S1 (Mains switch) opens only 0.5 mm at each pole; 3 mm is needed.");
+  expect(found.said("good")).toContain("rated 250 V and 10 A alternating");
+});

@@ -1,13 +1,14 @@
 import type { ConsumerIsolation, FusingResult, IsolationResult, Verdict3 } from "./analysis";
-import type { Reason } from "./bench-check";
 import type { ElementOf } from "./energy-map";
 import { figure } from "./figure";
 import {
   isHand,
+  judged,
   mixedBody,
+  names,
   poleWord,
-  reason,
   worst,
+  type JudgedReason,
   type MainsIsolation,
   type Matter,
 } from "./isolation-parts";
@@ -64,28 +65,30 @@ function judgeParted(
   parted: { each: ConsumerIsolation; switches: string[] }[],
 ): MainsIsolation | null {
   if (parted.length === 0) return null;
-  const judged = new Map(
+  const bySwitch = new Map(
     [...new Set(parted.flatMap(({ switches }) => switches))].map((id) => [id, judgeSwitch(matter, id)]),
   );
   const best = (ids: string[]): string[] =>
-    [...ids].sort((a, b) => rank(judged.get(a)?.verdict) - rank(judged.get(b)?.verdict)).slice(0, 1);
+    [...ids].sort((a, b) => rank(bySwitch.get(a)?.verdict) - rank(bySwitch.get(b)?.verdict)).slice(0, 1);
   const common = best(
-    [...judged.keys()].filter((id) => parted.every(({ switches }) => switches.includes(id))),
+    [...bySwitch.keys()].filter((id) => parted.every(({ switches }) => switches.includes(id))),
   );
-  const chosen = common.length > 0 ? common : [...new Set(parted.flatMap(({ switches }) => best(switches)))];
-  const reasons = chosen.flatMap((id) => judged.get(id)?.reasons ?? []);
-  const verdicts = chosen.map((id) => judged.get(id)?.verdict ?? "unknown");
-  if (chosen.length > 1)
+  const needed = common.length > 0 ? common : parted.flatMap(({ switches }) => best(switches));
+  const chosen = [...new Set(needed)];
+  const reasons = chosen.flatMap((id) => bySwitch.get(id)?.reasons ?? []);
+  const verdicts = chosen.map((id) => bySwitch.get(id)?.verdict ?? "unknown");
+  if (common.length === 0)
     reasons.push(
-      reason(
-        `Each of ${list(chosen.map((id) => matter.view.name(id)))} parts its own loads only: all must be off for the unit to be off.`,
+      judged(
+        "pass",
+        `Each of ${names(matter.view, chosen)} parts its own loads only: all must be off for the unit to be off.`,
         chosen,
       ),
     );
   if (!matter.isolation.joinsComplete) {
     verdicts.push("unknown");
     reasons.push(
-      reason("There are more changeover switches than all positions can be worked out for.", [
+      judged("unknown", "There are more changeover switches than all positions can be worked out for.", [
         matter.inlet.id,
       ]),
     );
@@ -98,12 +101,12 @@ const rank = (verdict: Verdict3 | undefined) => ["pass", "unknown", "fail"].inde
 function judgeSwitch(
   { view, isolation, fusing, ruleSet, inlet, consumers }: Matter,
   id: string,
-): { verdict: Verdict3; reasons: Reason[] } {
+): { verdict: Verdict3; reasons: JudgedReason[] } {
   const element = view.ofKind("switch").find((each) => each.id === id);
   const name = view.name(id);
   const gap = ruleSet.values.contactGap;
-  const reasons: Reason[] = [
-    reason(`${name} breaks line and neutral of ${view.name(inlet.id)} together, in one body.`, [
+  const reasons: JudgedReason[] = [
+    judged("pass", `${name} breaks line and neutral of ${view.name(inlet.id)} together, in one body.`, [
       id,
       inlet.id,
     ]),
@@ -111,7 +114,7 @@ function judgeSwitch(
   const verdicts: Verdict3[] = ["pass"];
   const add = (verdict: Verdict3, text: string, elements = [id]) => {
     verdicts.push(verdict);
-    reasons.push(reason(text, elements));
+    reasons.push(judged(verdict, text, elements));
   };
   if (element?.gapMm === null || element === undefined) {
     add(

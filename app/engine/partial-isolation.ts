@@ -2,11 +2,11 @@ import type { ConsumerIsolation, ConsumerPole } from "./analysis";
 import type { ElementOf } from "./energy-map";
 import {
   isHand,
+  judged,
   mixedBody,
   names,
   poleWord,
   promiseOf,
-  reason,
   stillLive,
   type MainsIsolation,
   type Matter,
@@ -27,7 +27,8 @@ export function judgeRest(matter: Matter, consumers: ConsumerIsolation[]): Mains
       by: "nothing",
       verdict: "fail",
       reasons: [
-        reason(
+        judged(
+          "fail",
           `Only ${names(view, claiming)} parts the mains of ${view.name(inlet.id)}, no hand switch: a contact that a coil moves promises no isolation.`,
           [...claiming, inlet.id],
         ),
@@ -44,7 +45,8 @@ export function judgeRest(matter: Matter, consumers: ConsumerIsolation[]): Mains
     by: "plug",
     verdict: "unknown",
     reasons: [
-      reason(
+      judged(
+        "unknown",
         `No hand switch parts ${what} of ${view.name(inlet.id)}: only pulling the plug isolates the unit, so the plug must be in easy reach.`,
         [inlet.id, ...(some ? consumers.map(({ consumer }) => consumer) : [])],
       ),
@@ -71,7 +73,8 @@ function onlyTogether({ view, inlet }: Matter, switches: string[]): MainsIsolati
         by: "plug",
         verdict: "unknown",
         reasons: [
-          reason(
+          judged(
+            "unknown",
             `${text}, and they promise function only; only pulling the plug isolates the unit.`,
             elements,
           ),
@@ -80,7 +83,7 @@ function onlyTogether({ view, inlet }: Matter, switches: string[]): MainsIsolati
     : {
         by: "nothing",
         verdict: "fail",
-        reasons: [reason(`${text}. Whoever turns one off finds the unit still live.`, elements)],
+        reasons: [judged("fail", `${text}. Whoever turns one off finds the unit still live.`, elements)],
       };
 }
 
@@ -100,7 +103,8 @@ function partlyBroken(matter: Matter, consumers: ConsumerIsolation[], breaking: 
       by: "nothing",
       verdict: "fail",
       reasons: [
-        reason(
+        judged(
+          "fail",
           `Line and neutral of ${view.name(inlet.id)} are broken by different switches (${named}), not together.`,
           elements,
         ),
@@ -116,7 +120,8 @@ function partlyBroken(matter: Matter, consumers: ConsumerIsolation[], breaking: 
       by: "plug",
       verdict: "unknown",
       reasons: [
-        reason(
+        judged(
+          "unknown",
           `${named} ${breaks} ${pole} only and ${promises} function only; only pulling the plug isolates the unit. It must not be marked as isolating.${reversal(inlet, "with it off, the line may still come to what it switches")}`,
           elements,
         ),
@@ -125,7 +130,8 @@ function partlyBroken(matter: Matter, consumers: ConsumerIsolation[], breaking: 
   }
   const still = stillLive(isolation, inlet.id);
   const reasons = [
-    reason(
+    judged(
+      "fail",
       `${named} ${breaks} only the ${list(broken.map(poleWord))} of ${view.name(inlet.id)}. The ${list(left.map(poleWord))} stays joined: this is not double-pole isolation.${reversal(inlet, "this may be the line")}`,
       elements,
       still,
@@ -133,7 +139,8 @@ function partlyBroken(matter: Matter, consumers: ConsumerIsolation[], breaking: 
     ...(still.length === 0
       ? []
       : [
-          reason(
+          judged(
+            "fail",
             `With every switch off, ${list(still)} stay live from ${view.name(inlet.id)}.`,
             [inlet.id],
             still,
@@ -141,7 +148,7 @@ function partlyBroken(matter: Matter, consumers: ConsumerIsolation[], breaking: 
         ]),
     ...breaking.flatMap((id) => {
       const mixed = mixedBody(view, isolation, id);
-      return mixed === null ? [] : [reason(mixed.text, [id])];
+      return mixed === null ? [] : [judged(mixed.verdict, mixed.text, [id])];
     }),
   ];
   return { by: "nothing", verdict: "fail", reasons };

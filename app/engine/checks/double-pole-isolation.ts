@@ -88,7 +88,8 @@ function switchCheck(
   inlet: string,
   judged: Exclude<MainsIsolation, { by: "plug" }>,
 ): BenchCheck {
-  const subjects = [...new Set([inlet, ...judged.reasons.flatMap(({ elements }) => elements)])];
+  const reasons = judged.reasons.map(({ reason }) => reason);
+  const subjects = [...new Set([inlet, ...reasons.flatMap(({ elements }) => elements)])];
   return {
     key: keyOf("all-pole-switch", inlet),
     family: "double-pole-isolation",
@@ -104,7 +105,7 @@ function switchCheck(
       "With the plug pulled, work the switch: both poles open and close together.",
     ],
     cautions: [...beforeTouching(view), caution.charge],
-    computed: answer(judged.verdict, judged.reasons),
+    computed: answer(judged.verdict, reasons),
     asks: examination(
       "Does one switch break both poles together?",
       "Both poles, one body, together",
@@ -112,7 +113,7 @@ function switchCheck(
     ),
     photo: "required",
     citations: [ruleSet.values.contactGap.citation],
-    subjects: { elements: subjects, conductors: judged.reasons.flatMap(({ conductors }) => conductors) },
+    subjects: { elements: subjects, conductors: reasons.flatMap(({ conductors }) => conductors) },
   };
 }
 
@@ -207,11 +208,12 @@ function plugCheck(
   inlet: string,
   judged: Extract<MainsIsolation, { by: "plug" }>,
 ): BenchCheck {
+  const reasons = judged.reasons.map(({ reason }) => reason);
   return {
     key: keyOf("plug-disconnect", inlet),
     family: "double-pole-isolation",
     title: `The plug of ${view.name(inlet)} isolates the unit`,
-    why: judged.reasons,
+    why: reasons,
     method: [
       "Look where the unit will stand: can the plug be reached and pulled at once?",
       "No control on the unit may be marked as if it isolated mains.",
@@ -225,6 +227,6 @@ function plugCheck(
     ),
     photo: "optional",
     citations: [{ standard: "IEC 62368-1", clause: "Annex L", edition: "not checked", mark: "M" }],
-    subjects: { elements: [inlet, ...judged.reasons.flatMap(({ elements }) => elements)], conductors: [] },
+    subjects: { elements: [inlet, ...reasons.flatMap(({ elements }) => elements)], conductors: [] },
   };
 }
