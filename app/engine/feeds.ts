@@ -1,6 +1,6 @@
 import type { Circuit, Supply } from "./circuit";
 import { energise, isReached, settingsOf, type Instance, type Position, type Settings } from "./energise";
-import { largestFlow, networkOf, type Flow, type Network } from "./flow";
+import { largestFlow, networkOf, type Flow, type Network, type Work } from "./flow";
 import { reachThroughLoads } from "./live";
 import { suppliedLimit } from "./supply-data";
 import type { UnitFacts } from "./unit-facts";
@@ -69,6 +69,18 @@ export function feedsOf(circuit: Circuit, facts: UnitFacts): Feed[] {
   return feeds;
 }
 
+/** Steps of search for what limits each conductor's current, over a whole map. */
+const stepsAtMost = 2_000_000;
+
+/** The same feeds with all steps of the search before them, so that the same question always gets the same answer. */
+export function restart(feeds: Feed[]): Feed[] {
+  for (const { high } of feeds) high.plain.work.steps = stepsAtMost;
+  return feeds;
+}
+
+/** The search for limits was given up: what it has not come to is not known. */
+export const isExhausted = ({ high }: Feed): boolean => high.plain.work.steps <= 0;
+
 function mayBeReversed({ view }: Circuit, { element }: Supply): boolean {
   const found = view.elements.get(element);
   return found?.kind === "mains-inlet" && found.polarised !== "yes";
@@ -78,6 +90,7 @@ interface Capacities {
   highest: Map<string, number>;
   lowest: Map<string, number>;
   allKnown: boolean;
+  work: Work;
 }
 
 function deviceCapacities({ view }: Circuit): Capacities {
@@ -86,6 +99,7 @@ function deviceCapacities({ view }: Circuit): Capacities {
     highest: new Map(devices.map(({ id, ratingAmps }) => [id, ratingAmps ?? Infinity])),
     lowest: new Map(devices.map(({ id, ratingAmps }) => [id, ratingAmps ?? 0])),
     allKnown: devices.every(({ ratingAmps }) => ratingAmps !== null),
+    work: { steps: stepsAtMost },
   };
 }
 
@@ -95,7 +109,7 @@ function feedsFrom(
   source: Supply,
   positions: Map<string, Position>,
   reversed: boolean,
-  { highest, lowest, allKnown }: Capacities,
+  { highest, lowest, allKnown, work }: Capacities,
   facts: UnitFacts,
 ): Feed[] {
   const { instances, conducts } = energise(circuit, source, { positions, includePossible: true });
@@ -114,8 +128,8 @@ function feedsFrom(
         facts,
         parent === undefined ? null : feedAmps(circuit, parent, instance),
       ),
-      high: networksOf(circuit, instance, conducts, highest),
-      low: allKnown ? null : networksOf(circuit, instance, conducts, lowest),
+      high: networksOf(circuit, instance, conducts, highest, work),
+      low: allKnown ? null : networksOf(circuit, instance, conducts, lowest, work),
     });
   }
   return feeds;
@@ -126,6 +140,7 @@ function networksOf(
   { supply, hot, ret }: Instance,
   conducts: Uint8Array,
   capacities: Map<string, number>,
+  work: Work,
 ): Networks {
   const make = (throughLoads: boolean) =>
     networkOf(circuit, {
@@ -135,6 +150,7 @@ function networksOf(
       isHot: (node) => isReached(hot, node),
       isReturn: (node) => isReached(ret, node),
       capacities,
+      work,
     });
   return { plain: make(false), loads: make(true) };
 }
@@ -161,8 +177,8 @@ export function withLimit(
 export interface Limits {
   /** What can flow into a conductor from the supply's side, A. */
   into: Flow;
-  /** What can flow on from its far end, A. */
-  onward: Flow;
+  /** What can flow on from its far end, A; worked out when asked for. */
+  onward: () => Flow;
 }
 
 export type Side = "hot" | "return" | "between";
@@ -191,15 +207,15 @@ export function limitsOf(
   const link = circuit.links[index];
   const { supply, hot, ret } = feed.instance;
   if (link === undefined)
-    return { into: { amps: Infinity, devices: [] }, onward: { amps: Infinity, devices: [] } };
+    return { into: { amps: Infinity, devices: [] }, onward: () => ({ amps: Infinity, devices: [] }) };
   const near = nearEnds(side === "hot" ? hot : ret, index, link.a, link.b);
   const far = near.length === 1 ? [near[0] === link.a ? link.b : link.a] : near;
   const fromHot = (node: number) =>
     largestFlow(circuit, side === "hot" ? networks.plain : networks.loads, supply.hot, node, index);
   const toReturn = (node: number) => largestFlow(circuit, networks.loads, node, supply.ret, index);
   return side === "hot"
-    ? { into: larger(near.map(fromHot)), onward: larger(far.map(toReturn)) }
-    : { into: larger(far.map(fromHot)), onward: larger(near.map(toReturn)) };
+    ? { into: larger(near.map(fromHot)), onward: () => larger(far.map(toReturn)) }
+    : { into: larger(far.map(fromHot)), onward: () => larger(near.map(toReturn)) };
 }
 
 /** The end of a conductor that a walk from a pole came to first; both when it closes a loop. */

@@ -15,12 +15,19 @@ export interface NetworkQuestion {
   isReturn: (node: number) => boolean;
   /** What each protective device lets through, A; a device that is not named lets everything through. */
   capacities: ReadonlyMap<string, number>;
+  work?: Work;
 }
 
 /** What each link can carry from a to b and from b to a, A. Made once, asked often. */
 export interface Network {
   ahead: Float64Array;
   back: Float64Array;
+  work: Work;
+}
+
+/** Steps of search that are left; shared by all networks of one question, so that no map can hold up a computer. */
+export interface Work {
+  steps: number;
 }
 
 export interface Flow {
@@ -49,7 +56,7 @@ export function networkOf(circuit: Circuit, question: NetworkQuestion): Network 
     ahead[index] = isAhead ? Math.min(amps, UNLIMITED) : 0;
     back[index] = isBack ? Math.min(amps, UNLIMITED) : 0;
   });
-  return { ahead, back };
+  return { ahead, back, work: question.work ?? { steps: Infinity } };
 }
 
 /**
@@ -93,7 +100,9 @@ function search(
   for (let head = 0; head < queue.length; head++) {
     const node = queue[head];
     if (node === undefined) break;
-    for (const index of circuit.linksAt[node] ?? []) {
+    const around = circuit.linksAt[node] ?? [];
+    network.work.steps -= around.length;
+    for (const index of around) {
       const link = circuit.links[index];
       if (link === undefined || index === skip) continue;
       const next = link.a === node ? link.b : link.a;
@@ -106,7 +115,12 @@ function search(
   return came;
 }
 
-function residual(fromA: boolean, index: number, { ahead, back }: Network, flow: Float64Array): number {
+function residual(
+  fromA: boolean,
+  index: number,
+  { ahead, back }: Pick<Network, "ahead" | "back">,
+  flow: Float64Array,
+): number {
   const carried = flow[index] ?? 0;
   return fromA ? (ahead[index] ?? 0) - carried : (back[index] ?? 0) + carried;
 }

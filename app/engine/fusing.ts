@@ -6,7 +6,9 @@ import type { Conductor } from "./energy-map";
 import {
   feedSettings,
   feedsOf,
+  isExhausted,
   limitsOf,
+  restart,
   sideOf,
   withLimit,
   type Feed,
@@ -21,7 +23,7 @@ import type { UnitFacts } from "./unit-facts";
 
 /** For each conductor and supply what protects it, and for each device whether it suits load, fault current and voltage. */
 export function analyseFusing(circuit: Circuit, facts: UnitFacts): FusingResult {
-  const feeds = feedsOf(circuit, facts);
+  const feeds = restart(feedsOf(circuit, facts));
   const indexOf = new Map(circuit.links.map(({ conductor }, index) => [conductor, index]));
   const conductors = worstOf(
     feeds.flatMap((feed) =>
@@ -70,10 +72,22 @@ function protectionOf(
   const side = sideOf(feed, link.a);
   // Earth conductors carry nothing that feeds; one that a live pole does reach is judged like any other.
   if (side === null || (conductor.circuit === "earth" && side !== "hot")) return null;
+  if (isExhausted(feed)) return notWorkedOut(feed, conductor);
   const high = limitsOf(circuit, feed, feed.high, index, side);
-  const low = feed.low === null ? high : limitsOf(circuit, feed, feed.low, index, side);
-  return judge(circuit, feed, conductor, side, high, low);
+  const { low } = feed;
+  const leastly = low === null ? () => high : () => limitsOf(circuit, feed, low, index, side);
+  return judge(circuit, feed, conductor, side, high, leastly);
 }
+
+const notWorkedOut = (feed: Feed, { id }: Conductor): ConductorProtection => ({
+  conductor: id,
+  source: feed.instance.supply.element,
+  limitAmps: null,
+  limitedBy: [],
+  ampacityAmps: null,
+  verdict: "unknown",
+  text: `${id}: the map is too meshed for its protection to be worked out wholly.`,
+});
 
 /** Longest unprotected lead from a battery's terminal to its fuse, m. From memory: a practice, about 180 mm. */
 export const unprotectedLeadM = 0.18;
@@ -86,7 +100,7 @@ function judge(
   conductor: Conductor,
   side: Side,
   high: Limits,
-  low: Limits,
+  leastly: () => Limits,
 ): ConductorProtection {
   const { view } = circuit;
   const source = feed.instance.supply.element;
@@ -129,14 +143,15 @@ function judge(
   }
   const unknownLimit = () =>
     answer("unknown", `${may}; what limits the current from ${supplied} is not known.`);
+  const low = leastly();
   // The least that it could be: a supply whose own limit is not known may give very little.
   const leastInto = feed.limitAmps === null ? 0 : (withLimit(feed, low.into.amps).amps ?? 0);
-  const onward = high.onward;
+  const onward = high.onward();
   if (onward.amps <= ampacity.amps) {
     const found = overloadOnly(circuit, feed, conductor, side, onward, may, answer);
     return found.verdict === "fail" && leastInto <= ampacity.amps ? unknownLimit() : found;
   }
-  const lowest = Math.min(leastInto, low.onward.amps);
+  const lowest = Math.min(leastInto, low.onward().amps);
   if (lowest <= ampacity.amps) return unknownLimit();
   if (ampacity.atLeast && (isBounded(into.amps) || isBounded(onward.amps))) {
     const short = isBounded(into.amps)
