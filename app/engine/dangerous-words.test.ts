@@ -4,6 +4,7 @@ import type { BenchCheck } from "./bench-check";
 import { deriveBenchSheet } from "./bench-sheet";
 import { demoMaps } from "./demo-maps";
 import type { EnergyMap } from "./energy-map";
+import { without } from "./map-builder";
 import { ruleSets } from "./rule-set";
 import { starterMaps } from "./starter-maps";
 
@@ -92,3 +93,15 @@ test.each(Object.entries(demoMaps))(
     }
   },
 );
+
+test("an inverter without a mains plug is as dangerous, and no step speaks of a plug or of mains being on", () => {
+  const battery = without(demoMaps.inverterStation, "X1", "F1", "S1");
+  for (const check of sheet(battery).values()) {
+    const told = check.cautions.join("\n");
+    expect([check.key, told]).toEqual([
+      check.key,
+      expect.not.stringMatching(/done with mains on|Pull the plug/),
+    ]);
+    if (check.family === "function") expect(told).toMatch(/inverter makes mains voltage from the battery/);
+  }
+});

@@ -1,6 +1,6 @@
 import { analyseBatteries } from "../battery-analysis";
 import type { BenchCheck, CheckDefinition } from "../bench-check";
-import { answer, because, caution, examination, keyOf, practice } from "../check-parts";
+import { answer, because, caution, examination, keyOf, practice, whileWorking } from "../check-parts";
 import { circuitOf } from "../circuit";
 import { cellLimits } from "../supply-data";
 
@@ -81,10 +81,7 @@ export const battery: CheckDefinition = {
                 "Measure the output open: without load the drop of a blocking diode is gone, so this is the highest that the pack would float to.",
                 "A charger that waits for a battery shows nothing: then measure across the battery with the charge finished, and say so under the conditions.",
               ],
-              cautions: [
-                caution.battery,
-                ...(view.ofKind("mains-inlet").length > 0 ? [caution.live] : [caution.stillLive]),
-              ],
+              cautions: whileWorking(view),
               computed: null,
               asks: {
                 kind: "reading",

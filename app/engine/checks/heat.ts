@@ -57,7 +57,7 @@ export const heat: CheckDefinition = {
         ],
         cautions: [
           ...whileWorking(view),
-          "Stay with the unit. Smoke, smell or a softening case ends the test: pull the plug.",
+          "Stay with the unit. Smoke, smell or a softening case ends the test: switch off, and take every source away from outside.",
         ],
         computed: null,
         asks: {

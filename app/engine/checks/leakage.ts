@@ -1,5 +1,5 @@
 import type { BenchCheck, CheckDefinition, ComputedAnswer } from "../bench-check";
-import { answer, because, caution, keyOf } from "../check-parts";
+import { answer, because, caution, keyOf, whileWorking } from "../check-parts";
 import { circuitOf } from "../circuit";
 import { figure } from "../figure";
 import { mainsSources } from "../insulation";
@@ -40,7 +40,7 @@ export const leakage: CheckDefinition = {
           "Feed the unit through an adapter that brings out the earth conductor whole, and clamp that, or clamp all live conductors together. Never interrupt the earth.",
           "Every switch on, unit working. Measure, turn the plug round if it fits both ways, and take the higher.",
         ],
-        cautions: [caution.live, caution.licence],
+        cautions: [...whileWorking(view), caution.licence],
         computed: computedSum(sum, earthLimit, facts),
         asks: {
           kind: "reading",
@@ -80,7 +80,7 @@ export const leakage: CheckDefinition = {
             : "Wrap foil where a hand would be and measure from earth to it through the body network, unit working.",
           "Turn the plug round if it fits both ways, and take the higher.",
         ],
-        cautions: [caution.live, caution.licence],
+        cautions: [...whileWorking(view), caution.licence],
         computed: unearthed
           ? computedSum(
               sum,

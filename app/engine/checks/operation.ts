@@ -37,7 +37,10 @@ export const operation: CheckDefinition = {
               ]
             : []),
         ],
-        cautions: [...whileWorking(view), "Stop at smell, smoke, noise or heat, and pull the plug."],
+        cautions: [
+          ...whileWorking(view),
+          "Stop at smell, smoke, noise or heat: switch off, and take every source away from outside.",
+        ],
         computed: null,
         asks: examination(
           "Does it work as described, in every state?",
