@@ -10,6 +10,14 @@ import {
   worstVerdict,
 } from "../check-parts";
 import { joinText } from "../joins";
+import type { Citation } from "../rule-set";
+
+const bridgingCapacitors: Citation = {
+  standard: "IEC 60384-14",
+  clause: "Y1 bridges double or reinforced insulation, Y2 basic insulation",
+  edition: "not checked",
+  mark: "M",
+};
 
 /** Nothing is joined that must be apart, in any position of the switches: mains and the rest, poles, parts that are touched. */
 export const circuitsApart: CheckDefinition = {
@@ -32,7 +40,7 @@ export const circuitsApart: CheckDefinition = {
     const gone = joinsComplete
       ? {
           verdict: "pass" as const,
-          text: "In no position of the switches is a source short-circuited, mains joined with another circuit, or a part that is touched live.",
+          text: "In no position of the switches is a source short-circuited, mains joined with earth or another circuit, a part that is touched live, or a fuse or contact bridged.",
         }
       : {
           verdict: "unknown" as const,
@@ -70,7 +78,10 @@ export const circuitsApart: CheckDefinition = {
         "Something is joined",
       ),
       photo: "none",
-      citations: [ruleSet.values.insulationMainsToElv.citation],
+      citations: [
+        ruleSet.values.insulationMainsToElv.citation,
+        ...(view.ofKind("y-capacitor").length > 0 ? [bridgingCapacitors] : []),
+      ],
       subjects: { elements: [...sources, ...parts], conductors: [] },
     };
     return sources.length === 0 ? [] : [check];

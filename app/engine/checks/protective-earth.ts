@@ -27,6 +27,14 @@ const neverSwitched: Citation = {
   note: "Seen for the rule; the clause's wording from memory.",
 };
 
+const earthArea: Citation = {
+  standard: "IEC 60364-5-54",
+  clause: "543.1: equal to the line conductor up to 16 mm²",
+  edition: "not checked",
+  mark: "M",
+  note: "A calculation may allow less; it is not made here.",
+};
+
 interface Judged {
   verdict: Verdict3;
   text: string;
@@ -107,7 +115,7 @@ export const protectiveEarth: CheckDefinition = {
         "Loose, painted, or broken by something",
       ),
       photo: "required",
-      citations: [neverSwitched],
+      citations: [neverSwitched, earthArea],
       subjects: {
         elements: [
           ...inlets,
