@@ -71,7 +71,8 @@ test("no ohmmeter across a battery, and a primary that conducts is no fault", ()
 
 test("before test voltage is put on, batteries are off and the inverter stands", () => {
   for (const [key, check] of sheet(demoMaps.inverterStation)) {
-    if (check.family !== "insulation" || check.asks.kind !== "reading" || check.asks.unit !== "MΩ") continue;
+    const tested = check.family === "insulation" || check.key.startsWith("open-pole");
+    if (!tested || check.asks.kind !== "reading" || check.asks.unit !== "MΩ") continue;
     expect([key, check.method[0]]).toEqual([
       key,
       "Stop U1 (Inverter); pull the plug of X1 (Appliance inlet); take both leads off BT1 (Battery) and cover them; measure that nothing is live any more.",

@@ -7,6 +7,7 @@ import {
   caution,
   examination,
   keyOf,
+  makeDead,
   practice,
   worstVerdict,
 } from "../check-parts";
@@ -126,7 +127,8 @@ function poleCheck(view: MapView, ruleSet: RuleSet, inlet: string, pole: string)
     title: `The ${word} of ${view.name(inlet)} is open with the switch off`,
     why: [because(`The ${word} must be parted from everything behind the switch.`, [inlet])],
     method: [
-      "Pull the plug and put every switch off.",
+      makeDead(view),
+      "Put every switch off.",
       `Measure from the ${word} pin of the plug to the ${word} terminal of what comes behind the switch, with ${figure(ruleSet.values.insulationTestVolts.value)} V.`,
     ],
     cautions: [...beforeTouching(view), caution.testVoltage],
