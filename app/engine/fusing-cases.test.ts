@@ -77,6 +77,27 @@ test("a fuse in a series of batteries breaks the sum of their voltages, and its 
   expect(verdict(stack(1), "fuse:F1")).toBe("pass");
 });
 
+test("a short across a series is fed by the sum of voltages through the sum of resistances", () => {
+  // 29.4 V through 105 mΩ give 280 A; the upper battery alone gives 14.7 V through 100 mΩ, 147 A.
+  const map = (breakingAmps: number) =>
+    withData(
+      withData(withData(stack(2), "BT1", { internalMilliohms: 5 }), "BT2", { internalMilliohms: 100 }),
+      "F1",
+      { breakingAmps },
+    );
+  expect(reasons(map(200), "fuse:F1")).toContain("breaks only 200 A, but BT2 (BT2) can drive 280 A");
+  expect(verdict(map(200), "fuse:F1")).toBe("fail");
+  expect(reasons(map(300), "fuse:F1")).toContain("breaks 300 A, and BT2 (BT2) can drive 280 A");
+  expect(reasons(withData(map(300), "BT1", { internalMilliohms: null }), "fuse:F1")).toContain(
+    "the short-circuit current from BT2 (BT2) is not known",
+  );
+});
+
+test("what a battery in a series is discharged with is not called nought", () => {
+  expect(verdict(stack(2), "part-rating:BT1")).toBe("unknown");
+  expect(verdict(stack(1), "part-rating:BT1")).toBeUndefined();
+});
+
 test("the voltage of one battery in a series that is not known leaves the sum open", () => {
   const map = withData(stack(2), "BT1", { cellsInSeries: null });
   expect(reasons(map, "fuse:F1")).toContain("the voltage across it when it opens is not known");

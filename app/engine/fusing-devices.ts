@@ -5,7 +5,13 @@ import { isReached } from "./energise";
 import type { ElementOf } from "./energy-map";
 import type { Feed } from "./feeds";
 import { figure } from "./figure";
-import { guaranteedBreaking, loadableShare, proposeRating, standardRatings } from "./fuse-data";
+import {
+  guaranteedBreaking,
+  loadableShare,
+  proposeRating,
+  prospectiveCurrent,
+  standardRatings,
+} from "./fuse-data";
 import { stackOf } from "./series";
 import { shortCircuitAmps } from "./supply-data";
 import type { UnitFacts } from "./unit-facts";
@@ -67,7 +73,7 @@ function reportOn(
       : (standardRatings(device)
           .filter((each) => each <= smallest)
           .at(-1) ?? null);
-  const prospectiveAmps = shortCircuitAmps(view, feed.instance, feed.limitAmps);
+  const prospectiveAmps = faultAmps(circuit, feed, facts);
   const breakingAmps =
     device.kind === "fuse"
       ? (guaranteedBreaking(device, feed.instance.supply.domain === "dc")?.amps ?? null)
@@ -101,6 +107,21 @@ function reportOn(
     placementVerdict,
     texts,
   };
+}
+
+/** Largest current of a dead short across the supply or across the series that it is part of, A; `null`: not known. */
+function faultAmps(circuit: Circuit, { instance, limitAmps }: Feed, facts: UnitFacts): number | null {
+  const own = shortCircuitAmps(circuit.view, instance, limitAmps);
+  const { volts, members } = stackOf(circuit, instance.supply, facts);
+  if (members.length < 2) return own;
+  const ohms = members.map((id) => {
+    const element = circuit.view.elements.get(id);
+    return element?.kind === "battery" && element.internalMilliohms !== null
+      ? element.internalMilliohms / 1000
+      : null;
+  });
+  const inSeries = prospectiveCurrent(volts, ...ohms);
+  return own === null || inSeries === null ? null : Math.max(own, inSeries);
 }
 
 /** A device in the neutral opens and leaves everything behind it live: it cannot be the only one that guards an inlet. */

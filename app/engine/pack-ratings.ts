@@ -6,6 +6,7 @@ import type { Feed } from "./feeds";
 import { figure } from "./figure";
 import type { Rated } from "./part-ratings";
 import type { Citation } from "./rule-set";
+import { stackOf } from "./series";
 import type { UnitFacts } from "./unit-facts";
 
 /** Largest trip voltage while charging and smallest while discharging that boards for a chemistry are made with, V per cell. */
@@ -47,7 +48,8 @@ export function judgePack(
   );
   const loads = own.map((feed) => drawnFrom(circuit, feed, facts));
   const amps = Math.max(0, ...loads.map((each) => each.amps));
-  const complete = loads.every((each) => each.complete);
+  const isInSeries = own.some(({ instance }) => stackOf(circuit, instance.supply, facts).members.length > 1);
+  const complete = !isInSeries && loads.every((each) => each.complete);
   const allowed = battery.maxDischargeAmps;
   if (allowed === null) {
     if (amps > 0 || !complete)
