@@ -5,7 +5,7 @@ import { reclaimUnit, takeUnit } from "~/services/bench/bench-turns.server";
 import { countQueues } from "~/services/bench/queue-counts.server";
 import { database } from "~/services/database.server";
 import { ConflictError, ForbiddenError, GuardError } from "~/services/errors";
-import { removeMember } from "~/services/people/members.server";
+import { removeMember, unitsInHandsOf } from "~/services/people/members.server";
 import { editDetails } from "~/services/units/edit-details.server";
 import { handOverUnit, loadHandOver } from "~/services/units/hand-over-unit.server";
 import { loadOverview } from "~/services/units/load-overview.server";
@@ -104,6 +104,10 @@ describe("a unit whose builder has left", () => {
     const heir = await makeMember(db, workshop, ["builder"], { name: "Hanna Heir" });
     const { number, id } = await makeUnit(db, workshop, { state: "sent_back" });
     expect((await loadOverview(steward, await unitNow(steward, number))).handOver).toBeNull();
+    // Whoever removes the builder is told which units wait; decided and discarded ones don't.
+    await makeUnit(db, workshop, { state: "signed" });
+    await makeUnit(db, workshop, { state: "draft", discardedAt: workshop.clock.at });
+    expect(await unitsInHandsOf(steward, workshop.people.builder.id)).toEqual([number]);
     await removeMember(steward, workshop.people.builder.id);
     const { handOver } = await loadOverview(steward, await unitNow(steward, number));
     expect(handOver).toEqual([{ id: heir.id, name: "Hanna Heir" }]);

@@ -15,10 +15,17 @@ import { answerTo, refusal } from "~/middleware/answers.server";
 import { authorise } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
 import { refuseForm } from "~/middleware/form-refusal.server";
+import { readForm } from "~/middleware/read-form.server";
 import { dayIn, type ServiceContext } from "~/services/context.server";
 import { ServiceError } from "~/services/errors";
 import { licencesOf } from "~/services/people/licences.server";
-import { changeRoles, getMember, removeMember, unitsOnBenchOf } from "~/services/people/members.server";
+import {
+  changeRoles,
+  getMember,
+  removeMember,
+  unitsInHandsOf,
+  unitsOnBenchOf,
+} from "~/services/people/members.server";
 import { licenceInDate } from "~/workflow/licence-fit";
 import type { Route } from "./+types/person";
 import { roleOptions } from "./invite-form";
@@ -28,13 +35,15 @@ export async function loader({ context, params }: Route.LoaderArgs) {
   const services = authorise(context, "people.read");
   const member = await memberOr404(services, params.person);
   const today = dayIn(services.workshop.timeZone, services.now());
-  const [licences, onBench] = await Promise.all([
+  const [licences, onBench, inHands] = await Promise.all([
     licencesOf(services.db, services.workshop.id, member.id),
     unitsOnBenchOf(services, member.id),
+    unitsInHandsOf(services, member.id),
   ]);
   return {
     member,
     onBench,
+    inHands,
     isOneself: member.id === services.person.id,
     licences: licences.map((licence) => ({ ...licence, counts: licenceInDate(licence, today) })),
     slug: services.workshop.slug,
@@ -53,7 +62,7 @@ async function memberOr404(services: ServiceContext, personId: string) {
 export async function action({ request, context, params }: Route.ActionArgs) {
   const services = authorise(context, "people.manage");
   const { id, name } = await memberOr404(services, params.person);
-  const submission = parseWithZod(await request.formData(), { schema: personSchema });
+  const submission = parseWithZod(await readForm(request), { schema: personSchema });
   if (submission.status !== "success") {
     return data(
       { ...submission.reply(), conflict: null, message: "That could not be read." },
@@ -94,7 +103,7 @@ export const meta: Route.MetaFunction = ({ loaderData }) => [
 ];
 
 export default function Person({ loaderData, actionData }: Route.ComponentProps) {
-  const { member, licences, onBench, isOneself, slug } = loaderData;
+  const { member, licences, onBench, inHands, isOneself, slug } = loaderData;
   return (
     <>
       <Breadcrumbs items={[{ label: "People", to: `/w/${slug}/people` }, { label: member.name }]} />
@@ -119,6 +128,13 @@ export default function Person({ loaderData, actionData }: Route.ComponentProps)
                 bench and should be put back in the queue first.
               </p>
             ) : null}
+            {inHands.length > 0 ? (
+              <p className="font-semibold">
+                {unitList(inHands)} {inHands.length === 1 ? "waits" : "wait"} for {isOneself ? "you" : "them"}{" "}
+                as builder. A steward hands {inHands.length === 1 ? "it" : "them"} to another one on the
+                unit’s page afterwards.
+              </p>
+            ) : null}
           </ConfirmDialog>
         }
       />
@@ -140,6 +156,9 @@ export default function Person({ loaderData, actionData }: Route.ComponentProps)
             items={[
               { label: "In the workshop since", value: <Time at={member.since} style="date" /> },
               { label: "On the bench now", value: onBench.length === 0 ? "Nothing" : unitList(onBench) },
+              ...(inHands.length > 0
+                ? [{ label: "Waits for them as builder", value: unitList(inHands) }]
+                : []),
             ]}
           />
           {licences.length > 0 ? (

@@ -1,4 +1,4 @@
-import { and, asc, count, eq, inArray } from "drizzle-orm";
+import { and, asc, count, eq, inArray, isNull } from "drizzle-orm";
 import { tables, type Transaction } from "~/db/client.server";
 import type { ServiceContext } from "~/services/context.server";
 import { ConflictError, GuardError, NotFoundError } from "~/services/errors";
@@ -52,6 +52,23 @@ export async function unitsOnBenchOf({ db, workshop }: ServiceContext, personId:
     .from(units)
     .where(
       and(eq(units.workshopId, workshop.id), eq(units.inspectorId, personId), eq(units.state, "on_bench")),
+    )
+    .orderBy(asc(units.number));
+  return rows.map((row) => row.number);
+}
+
+/** Numbers of the units that wait for a person as their builder: a steward hands them over when the person leaves. */
+export async function unitsInHandsOf({ db, workshop }: ServiceContext, personId: number): Promise<number[]> {
+  const rows = await db
+    .select({ number: units.number })
+    .from(units)
+    .where(
+      and(
+        eq(units.workshopId, workshop.id),
+        eq(units.builderId, personId),
+        inArray(units.state, ["draft", "sent_back"]),
+        isNull(units.discardedAt),
+      ),
     )
     .orderBy(asc(units.number));
   return rows.map((row) => row.number);
