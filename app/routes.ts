@@ -71,5 +71,6 @@ export default [
       // records
       route("records/:unit/:form", "routes/api/record.ts"),
     ]),
+    route("*", "routes/api/unknown.ts"),
   ]),
 ] satisfies RouteConfig;

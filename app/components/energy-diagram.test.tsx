@@ -44,3 +44,11 @@ test("labels are text, whatever they hold", () => {
   };
   expect(renderToStaticMarkup(<EnergyDiagram map={odd} />)).not.toContain("<script>");
 });
+
+test("on paper it shrinks to the sheet: its own width is no bound that a print rule can't beat", () => {
+  const html = renderToStaticMarkup(<EnergyDiagram map={map} />);
+  const [drawing = ""] = /<svg role="img"[^>]*>/.exec(html) ?? [];
+  expect(drawing).toContain("print:max-w-full");
+  expect(drawing).toContain("print:h-auto");
+  expect(drawing).not.toContain("style=");
+});

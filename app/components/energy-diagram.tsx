@@ -57,7 +57,8 @@ export function EnergyDiagram({
       viewBox={`0 0 ${Math.ceil(diagram.width)} ${Math.ceil(diagram.height)}`}
       width={tiny ? "100%" : Math.ceil(diagram.width)}
       height={tiny ? undefined : Math.ceil(diagram.height)}
-      style={tiny ? { maxHeight: 160 } : { maxWidth: "none" }}
+      // On the screen it scrolls at its own size; paper can't scroll, so there it shrinks to the sheet's width.
+      className={tiny ? "max-h-40" : "max-w-none print:h-auto print:max-w-full"}
       fontFamily="var(--font-sans)"
     >
       <title id={titleId}>{title}</title>
@@ -87,7 +88,7 @@ export function EnergyDiagram({
   return (
     <figure className="grid gap-2">
       <div
-        className="overflow-x-auto border border-rule bg-sheet print:overflow-visible"
+        className="overflow-x-auto border border-rule bg-sheet print:min-w-0 print:overflow-visible"
         tabIndex={0}
         aria-label="Diagram, scrolls sideways"
       >

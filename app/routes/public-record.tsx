@@ -56,7 +56,7 @@ export default function PublicRecordPage({ loaderData: record }: Route.Component
             </p>
           ) : null}
         </ValidityBanner>
-        {record.conditions && record.validity.kind !== "must-not-be-used" ? (
+        {record.conditions ? (
           <section aria-labelledby="conditions">
             <h2 id="conditions" className="mb-2 text-lg">
               Conditions of use

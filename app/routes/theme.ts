@@ -1,11 +1,12 @@
 import { data, redirect } from "react-router";
 import type { Route } from "./+types/theme";
-import { safeReturn, themeCookie, themeFrom } from "~/components/shell/theme";
+import { themeCookie, themeFrom } from "~/components/shell/theme";
+import { safePath } from "~/middleware/safe-path";
 
 /** Keeps the colour scheme in a cookie. A script gets an answer; a plain form is led back to where it came from. */
 export async function action({ request }: Route.ActionArgs) {
   const form = await request.formData();
   const headers = { "Set-Cookie": themeCookie(themeFrom(form.get("theme"))) };
   const byScript = new URL(request.url).pathname.endsWith(".data");
-  return byScript ? data(null, { headers }) : redirect(safeReturn(form.get("to")), { headers });
+  return byScript ? data(null, { headers }) : redirect(safePath(form.get("to")), { headers });
 }

@@ -298,6 +298,10 @@ const open: Record<string, Record<string, { visitor: string; person: string }>> 
   "routes/public-record": { GET: { visitor: "404", person: "404" } },
   "routes/theme": { POST: { visitor: "302 /", person: "302 /" } },
   "routes/api/energy-map-schema": { GET: { visitor: "200", person: "200" } },
+  "routes/api/unknown": {
+    GET: { visitor: "404", person: "404" },
+    POST: { visitor: "404", person: "404" },
+  },
 };
 
 /** Parents that answer nothing by themselves. */
@@ -584,6 +588,18 @@ test.each(
   expect(await ask()).toBe(visitor);
   expect(await ask(await cookieOf(made.people.builder.id))).toBe(person);
 });
+
+test.each(["/api/nothing", "/api/units/1", "/api/w/any/nothing/here"])(
+  "an unknown address of the API, %s, is told as Problem Details",
+  async (address) => {
+    for (const method of ["GET", "POST", "PUT", "DELETE"]) {
+      const answer = await handle(new Request(`http://mainsgate.test${address}`, { method }));
+      expect(answer.status).toBe(404);
+      expect(answer.headers.get("Content-Type")).toBe("application/problem+json");
+      expect(await answer.json()).toMatchObject({ status: 404, title: "Not found" });
+    }
+  },
+);
 
 test("a session that was ended, or a cookie that was tampered with, is nobody's", async () => {
   const { who, fill } = await makeScene("draft");

@@ -3,10 +3,11 @@ import { expect, test } from "vitest";
 import { tables } from "~/db/client.server";
 import { releaseUnit, takeUnit } from "~/services/bench/bench-turns.server";
 import { countQueues } from "~/services/bench/queue-counts.server";
+import { loadSheet } from "~/services/bench/load-sheet.server";
 import { listOwnBench, loadQueue, type QueueFilter } from "~/services/bench/queue.server";
 import { database } from "~/services/database.server";
 import { ConflictError, ForbiddenError, NotFoundError } from "~/services/errors";
-import { makeBench, starterMap, unitNow } from "../fixtures/bench";
+import { answerAll, makeBench, starterMap, unitNow } from "../fixtures/bench";
 import { grantRoles, makeMember, makeUnit, makeWorkshop } from "../fixtures/workshop";
 
 const db = database();
@@ -130,7 +131,8 @@ test("the queue filters, sorts and pages within the workshop alone", async () =>
   expect(await numbers({ sort: { by: "name", direction: "desc" } })).toEqual([4, 1, 2, 3]);
   expect(await numbers({ sort: { by: "supply", direction: "asc" } })).toEqual([3, 1, 2, 4]);
   const second = await loadQueue(inspector, { ...everything, page: 2, pageSize: 3 });
-  expect(second).toMatchObject({ total: 4, rows: [{ number: 4 }] });
+  expect(second).toMatchObject({ total: 4, page: 2, rows: [{ number: 4 }] });
+  expect(await loadQueue(inspector, { ...everything, page: 99, pageSize: 3 })).toEqual(second);
 });
 
 test("own units stand apart with their progress, and the counts tell each person what waits for them", async () => {
@@ -163,4 +165,32 @@ test("own units stand apart with their progress, and the counts tell each person
     sent_back: 1,
     draft: 0,
   });
+});
+
+test("however many units are on the bench, their progress is that of their sheets and takes as many queries", async () => {
+  const bench = await makeBench(db);
+  await answerAll(db, bench);
+  const inspector = bench.as("inspector");
+  const queries = async () => {
+    let count = 0;
+    const counting = new Proxy(db, {
+      get(target, key) {
+        if (key === "select") count++;
+        return Reflect.get(target, key);
+      },
+    });
+    const units = await listOwnBench({ ...inspector, db: counting });
+    return { count, units };
+  };
+  const one = await queries();
+  await makeUnit(db, bench, { state: "on_bench", map: starterMap("battery-backup-box") });
+  await makeUnit(db, bench, { state: "on_bench", map: starterMap("mains-led-lamp") });
+  const three = await queries();
+  expect(three.units).toHaveLength(3);
+  for (const { number, progress } of three.units) {
+    const sheet = await loadSheet(inspector, await unitNow(inspector, number));
+    expect(progress).toEqual(sheet.progress);
+  }
+  expect(three.units.find(({ number }) => number === bench.unit.number)?.progress.decided).toBeGreaterThan(5);
+  expect(three.count).toBe(one.count);
 });

@@ -29,8 +29,3 @@ export function readTheme(cookieHeader: string | null): Theme {
 export function themeCookie(theme: Theme): string {
   return `${COOKIE}=${theme}; Path=/; Max-Age=31536000; SameSite=Lax`;
 }
-
-/** Where to go after the theme was set without JavaScript: a path of this site and nothing else. */
-export function safeReturn(value: unknown): string {
-  return typeof value === "string" && /^\/(?![/\\])/.test(value) ? value : "/";
-}

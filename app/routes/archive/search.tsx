@@ -43,7 +43,7 @@ export async function loader({ context, url }: Route.LoaderArgs) {
     }),
     listArchivePeople(services),
   ]);
-  return { found, people, params, sort, page, slug: services.workshop.slug };
+  return { found, people, params, sort, page: found.page, slug: services.workshop.slug };
 }
 
 export const meta: Route.MetaFunction = () => [{ title: "Archive · Mainsgate" }];

@@ -1,36 +1,25 @@
-import { getFormProps, useForm } from "@conform-to/react";
 import { parseWithZod } from "@conform-to/zod/v4";
-import { CameraOff, CircleCheckBig, Undo2 } from "lucide-react";
-import { data, Form, Link, useNavigation } from "react-router";
-import { LineVerdictBadge } from "~/components/bench-verdict";
+import { data } from "react-router";
 import { Breadcrumbs } from "~/components/shell/breadcrumbs";
-import { ConflictNotice } from "~/components/shell/conflict-notice";
-import { Button } from "~/components/ui/button";
-import { Caution } from "~/components/ui/caution";
 import { EmptyState } from "~/components/ui/empty-state";
-import { FormErrorSummary } from "~/components/ui/form-error-summary";
 import { LinkButton } from "~/components/ui/link-button";
 import { PageHeader } from "~/components/ui/page-header";
 import { Sheet } from "~/components/ui/sheet";
 import { StateBadge } from "~/components/ui/state-badge";
-import { TextareaField } from "~/components/ui/textarea-field";
-import { useKeptDraft } from "~/components/bench-kept-draft";
-import { isDecided } from "~/engine/bench-answer";
 import { answerTo } from "~/middleware/answers.server";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
 import { refuseForm } from "~/middleware/form-refusal.server";
-import { listFindings } from "~/services/bench/findings.server";
 import { finishSheet, sendBackFromBench } from "~/services/bench/finish-sheet.server";
 import { loadSheet } from "~/services/bench/load-sheet.server";
 import { decide } from "~/workflow/permissions";
-import { z } from "zod";
 import type { Route } from "./+types/close";
-import { checkHref } from "./check-href";
 import { CloseFinding } from "./close-finding-form";
 import { finishSchema, sendBackSchema } from "./close.schema";
 import { FindingSummary } from "./finding-summary";
+import { FinishPanel } from "./finish-panel";
 import { RaiseFinding } from "./raise-finding-form";
+import { SendBackPanel } from "./send-back-panel";
 
 export async function loader({ context, params }: Route.LoaderArgs) {
   const { services, unit } = await authoriseUnit(context, "bench.read", params.unit);
@@ -52,7 +41,7 @@ export async function loader({ context, params }: Route.LoaderArgs) {
         photoMissing,
       })),
       elements: sheet.revision.map.elements.map(({ id, label }) => ({ id, label })),
-      findings: await listFindings(services.db, unit.id),
+      findings: sheet.findings,
       whyNot: decision.allowed ? null : decision.reason,
       personId: services.person.id,
     };
@@ -175,160 +164,5 @@ export default function CloseSheet({ loaderData, actionData, params }: Route.Com
         </div>
       )}
     </>
-  );
-}
-
-type Data = Route.ComponentProps["loaderData"];
-type Result = Route.ComponentProps["actionData"];
-
-function FinishPanel({
-  unit,
-  lines,
-  base,
-  result,
-}: Pick<Data, "unit" | "lines"> & { base: string; result: Result }) {
-  const navigation = useNavigation();
-  const pending = navigation.formData?.get("act") === "finish";
-  const undecided = lines.filter((line) => !isDecided(line.verdict));
-  const photoless = lines.filter((line) => line.photoMissing);
-  const failed = lines.filter((line) => line.verdict === "fail");
-  const ready = lines.length > 0 && undecided.length === 0 && photoless.length === 0;
-  // The server's sentences are the list below; only what the page doesn't know yet is told beside it.
-  const reasons = result?.error?.[""];
-  const refusals =
-    reasons && !ready ? ["What stands in the way is listed below, with links."] : (reasons ?? undefined);
-  return (
-    <Sheet title="Finish the sheet" lead="Hands the unit over for review and signature.">
-      <div className="space-y-4">
-        {result?.conflict ? <ConflictNotice message={result.conflict} reloadHref={`${base}/close`} /> : null}
-        <FormErrorSummary form={{ errors: refusals }} title="The sheet can’t be finished yet" />
-        {ready ? (
-          <p>Every check is decided and every required photo is there.</p>
-        ) : (
-          <div className="space-y-3 border-l-4 border-undecided bg-undecided-wash px-4 py-3">
-            <p className="font-semibold">What still stands in the way</p>
-            {lines.length === 0 ? <p>The map calls for no check, so nothing can be decided.</p> : null}
-            <ul className="space-y-1.5">
-              {undecided.map((line) => (
-                <li key={line.check.key} className="grid grid-cols-[8.5rem_1fr] items-center gap-2">
-                  <span>
-                    <LineVerdictBadge verdict={line.verdict} />
-                  </span>
-                  <CheckLink base={base} check={line.check} />
-                </li>
-              ))}
-              {photoless.map((line) => (
-                <li
-                  key={`photo ${line.check.key}`}
-                  className="grid grid-cols-[8.5rem_1fr] items-center gap-2"
-                >
-                  <span className="inline-flex items-center gap-1.5 text-sm font-semibold">
-                    <CameraOff aria-hidden size={17} /> Photo missing
-                  </span>
-                  <CheckLink base={base} check={line.check} />
-                </li>
-              ))}
-            </ul>
-          </div>
-        )}
-        {failed.length > 0 ? (
-          <Caution title={failed.length === 1 ? "One check failed" : `${failed.length} checks failed`}>
-            <p>
-              The sheet can be finished all the same: an electrician must be able to refuse on it. If the
-              builder should put it right first, send it back instead.
-            </p>
-            <ul className="mt-2 list-disc pl-5">
-              {failed.map((line) => (
-                <li key={line.check.key}>
-                  <Link to={checkHref(base, line.check.key)} className="text-link">
-                    {line.check.title}
-                  </Link>
-                </li>
-              ))}
-            </ul>
-          </Caution>
-        ) : null}
-        <Form method="post" className="space-y-3">
-          <input type="hidden" name="act" value="finish" />
-          <input type="hidden" name="version" value={unit.version} />
-          <Button
-            size="bench"
-            variant="primary"
-            icon={CircleCheckBig}
-            pending={pending}
-            pendingLabel="Finishing…"
-          >
-            Finish the sheet
-          </Button>
-        </Form>
-      </div>
-    </Sheet>
-  );
-}
-
-function CheckLink({ base, check }: { base: string; check: { key: string; title: string } }) {
-  return (
-    <Link
-      to={checkHref(base, check.key)}
-      className="text-link inline-flex min-h-8 items-center pointer-coarse:min-h-11"
-    >
-      {check.title}
-    </Link>
-  );
-}
-
-const reasonDraftSchema = z.object({ reason: z.string() });
-
-function parseReasonDraft(kept: unknown) {
-  const parsed = reasonDraftSchema.safeParse(kept);
-  return parsed.success ? parsed.data : null;
-}
-
-function SendBackPanel({
-  unit,
-  openFindings,
-  draftKey,
-  base,
-  result,
-}: Pick<Data, "unit"> & { openFindings: number; draftKey: string; base: string; result: Result }) {
-  const navigation = useNavigation();
-  const pending = navigation.formData?.get("act") === "send-back";
-  const draft = useKeptDraft(`${draftKey} reason`, { reason: "" }, parseReasonDraft);
-  const [form, fields] = useForm({
-    id: "send-back",
-    lastResult: result,
-    onValidate: ({ formData }) => parseWithZod(formData, { schema: sendBackSchema }),
-    shouldValidate: "onSubmit",
-    shouldRevalidate: "onInput",
-  });
-  return (
-    <Sheet
-      title="Send it back"
-      lead="Opens a new revision; the builder answers the findings and submits again."
-    >
-      <Form method="post" {...getFormProps(form)} className="space-y-4">
-        {result?.conflict ? <ConflictNotice message={result.conflict} reloadHref={`${base}/close`} /> : null}
-        <FormErrorSummary form={form} labels={{ reason: "Reason" }} title="It was not sent back" />
-        <p className={openFindings === 0 ? "font-medium text-undecided" : ""}>
-          {openFindings === 0
-            ? "There is no open finding yet: raise one, so that the builder knows what to put right."
-            : `${openFindings} open ${openFindings === 1 ? "finding goes" : "findings go"} with it.`}
-        </p>
-        <input type="hidden" name="act" value="send-back" />
-        <input type="hidden" name="version" value={unit.version} />
-        <TextareaField
-          field={fields.reason}
-          label="Why it goes back"
-          size="bench"
-          rows={3}
-          maxLength={2000}
-          value={draft.values.reason}
-          onChange={(event) => draft.change({ reason: event.currentTarget.value })}
-        />
-        <Button size="bench" variant="danger" icon={Undo2} pending={pending} pendingLabel="Sending back…">
-          Send it back to the builder
-        </Button>
-      </Form>
-    </Sheet>
   );
 }

@@ -49,7 +49,7 @@ export async function loader({ context, url }: Route.LoaderArgs) {
     listOwnBench(services),
   ]);
   const mayTake = services.workshop.roles.includes("inspector");
-  return { queue, own, params, sort, page, mayTake, slug: services.workshop.slug };
+  return { queue, own, params, sort, page: queue.page, mayTake, slug: services.workshop.slug };
 }
 
 /** "take" is weighed by its transition alone, so that the second of two inspectors hears who was first. */

@@ -27,7 +27,6 @@ import { isDecided, lineVerdicts } from "~/engine/bench-answer";
 import { answerTo } from "~/middleware/answers.server";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { standingOf } from "~/services/archive/standing.server";
-import { listFindings } from "~/services/bench/findings.server";
 import { loadSheet } from "~/services/bench/load-sheet.server";
 import { findPersonName } from "~/services/units/unit-people.server";
 import { dayIn } from "~/services/context.server";
@@ -71,7 +70,7 @@ export async function loader({ context, params, url }: Route.LoaderArgs) {
       analysis: sheet.analysis,
       lines: sheet.lines.map(({ history: _, ...line }) => line),
       progress: sheet.progress,
-      findings: await listFindings(services.db, unit.id),
+      findings: sheet.findings,
       show: parseShow(url.searchParams.get("show")),
       mayTake: decide("bench.take", person, unit).allowed,
       // Who holds it puts it back without a reason.

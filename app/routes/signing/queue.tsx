@@ -38,7 +38,7 @@ export async function loader({ context, url }: Route.LoaderArgs) {
   });
   const { roles, slug } = services.workshop;
   const mayArchive = decide("archive.search", { id: services.person.id, roles }).allowed;
-  return { queue, params, sort, page, slug, maySign: roles.includes("electrician"), mayArchive };
+  return { queue, params, sort, page: queue.page, slug, maySign: roles.includes("electrician"), mayArchive };
 }
 
 export const meta: Route.MetaFunction = () => [{ title: "Signing · Mainsgate" }];

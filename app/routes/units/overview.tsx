@@ -21,7 +21,7 @@ import { MapOverview } from "./map-overview";
 import { nextStepFor } from "./next-step";
 import { SubmitPanel } from "./submit-panel";
 import { unitActionSchema } from "./unit-action.schema";
-import { refuse, refuseForm } from "./refusal.server";
+import { refuse, refuseUnreadable } from "./refusal.server";
 import { SentBackNote } from "./sent-back-note";
 import { UnitHead } from "./unit-head";
 import { VersionNotes } from "./version-notes";
@@ -34,7 +34,7 @@ export async function loader({ params, context }: Route.LoaderArgs) {
 export async function action({ request, params, context }: Route.ActionArgs) {
   const { services, unit } = await authoriseUnit(context, "unit.read", params.unit);
   const input = unitActionSchema.safeParse(Object.fromEntries(await request.formData()));
-  if (!input.success) return refuseForm();
+  if (!input.success) return refuseUnreadable();
   const home = `/w/${services.workshop.slug}/units`;
   const target = { unitNumber: unit.number, expectedVersion: input.data.version };
   try {

@@ -18,7 +18,7 @@ export function refuse(error: unknown) {
 }
 
 /** A form that doesn't fit its schema: made by hand, or by a page of an older version. */
-export function refuseForm() {
+export function refuseUnreadable() {
   return refusal(400, "This form can’t be read. Please load the page again.");
 }
 

@@ -13,7 +13,7 @@ import { ChangeList } from "./change-list";
 import { FindingList } from "./finding-list";
 import { SubmitPanel } from "./submit-panel";
 import { unitActionSchema } from "./unit-action.schema";
-import { refuse, refuseForm } from "./refusal.server";
+import { refuse, refuseUnreadable } from "./refusal.server";
 import { SentBackNote } from "./sent-back-note";
 import { UnitHead } from "./unit-head";
 
@@ -26,7 +26,7 @@ export async function action({ request, params, context }: Route.ActionArgs) {
   const { services, unit } = await authoriseUnit(context, "unit.read", params.unit);
   const input = unitActionSchema.safeParse(Object.fromEntries(await request.formData()));
   if (!input.success || input.data.intent !== "submit") {
-    return refuseForm();
+    return refuseUnreadable();
   }
   try {
     await submitUnit(services, { unitNumber: unit.number, expectedVersion: input.data.version });

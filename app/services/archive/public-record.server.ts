@@ -15,6 +15,7 @@ export interface PublicRecord {
   demo: boolean;
   state: UnitState;
   validity: Validity;
+  /** Null as well when it must not be used: there is nothing that they would allow. */
   conditions: SigningConditions | null;
   /** It was signed although a check fails. The reasons are the workshop's. */
   departures: boolean;
@@ -56,12 +57,18 @@ export async function findPublicRecord(db: Database, code: string, now: Date): P
   const { recordId, unitId: _, timeZone, recheckOn, decidedAt, ...shown } = row;
   // An earlier record of a unit that was decided on again says nothing about it any more.
   const state = latest?.id === recordId ? row.state : "superseded";
+  const stands = validity(state, recheckOn, dayIn(timeZone, now));
   return {
     ...shown,
+    conditions: mayBeUsed(stands) ? shown.conditions : null,
     departures: shown.departures !== null,
     state,
-    validity: validity(state, recheckOn, dayIn(timeZone, now)),
+    validity: stands,
     decidedOn: dayIn(timeZone, decidedAt),
     cautions: recordCautions,
   };
+}
+
+function mayBeUsed({ kind }: Validity): boolean {
+  return kind === "may-be-used" || kind === "recheck-due";
 }

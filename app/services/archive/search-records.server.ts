@@ -2,6 +2,7 @@ import { and, asc, count, desc, eq, gte, inArray, like, lt, or, type SQL } from 
 import { alias } from "drizzle-orm/mysql-core";
 import { tables } from "~/db/client.server";
 import { dayIn, type ServiceContext } from "~/services/context.server";
+import { pageWithin } from "~/services/page-within";
 import { archivedStates, type UnitState, validity, type Validity } from "~/workflow/states";
 import type { Standing } from "./standing.server";
 import { addDays, nextDay, startOfDay } from "./day-range";
@@ -55,11 +56,11 @@ export interface RecordRow {
   hasPdf: boolean;
 }
 
-/** One page of the archive of a workshop, with the number of all that match. */
+/** One page of the archive of a workshop, with the number of all that match. A page beyond the last is the last. */
 export async function searchRecords(
   { db, workshop, now }: ServiceContext,
   search: RecordSearch,
-): Promise<{ rows: RecordRow[]; total: number }> {
+): Promise<{ rows: RecordRow[]; total: number; page: number }> {
   const today = dayIn(workshop.timeZone, now());
   const where = and(
     eq(records.workshopId, workshop.id),
@@ -74,6 +75,16 @@ export async function searchRecords(
       : lt(decisions.decidedAt, startOfDay(workshop.timeZone, nextDay(search.to))),
   );
   const direction = search.sort.direction === "asc" ? asc : desc;
+  const [counted] = await db
+    .select({ total: count() })
+    .from(records)
+    .innerJoin(decisions, eq(decisions.id, records.decisionId))
+    .innerJoin(units, eq(units.id, records.unitId))
+    .innerJoin(builders, eq(builders.id, units.builderId))
+    .innerJoin(signers, eq(signers.id, decisions.signerId))
+    .where(where);
+  const total = counted?.total ?? 0;
+  const page = pageWithin(search.page, total, search.pageSize);
   const rows = await db
     .select({
       unitNumber: units.number,
@@ -97,15 +108,7 @@ export async function searchRecords(
     // The id last, so that rows of one moment keep their order from page to page.
     .orderBy(direction(sortColumns[search.sort.by]), desc(records.id))
     .limit(search.pageSize)
-    .offset((search.page - 1) * search.pageSize);
-  const [counted] = await db
-    .select({ total: count() })
-    .from(records)
-    .innerJoin(decisions, eq(decisions.id, records.decisionId))
-    .innerJoin(units, eq(units.id, records.unitId))
-    .innerJoin(builders, eq(builders.id, units.builderId))
-    .innerJoin(signers, eq(signers.id, decisions.signerId))
-    .where(where);
+    .offset((page - 1) * search.pageSize);
   return {
     rows: rows.map(({ pdfKey, departures, ...row }) => {
       const now = validity(row.state, row.recheckOn, today);
@@ -116,7 +119,8 @@ export async function searchRecords(
         hasPdf: pdfKey !== null,
       };
     }),
-    total: counted?.total ?? 0,
+    total,
+    page,
   };
 }
 

@@ -1,13 +1,21 @@
 import { alias } from "drizzle-orm/mysql-core";
 import { asc, eq } from "drizzle-orm";
 import { type Reader, tables } from "~/db/client.server";
-import { listFiles } from "~/services/files/list-files.server";
+import { type FileView, listFiles } from "~/services/files/list-files.server";
 import type { FindingAnswerView, FindingView } from "./sheet-view";
 
 const { findingAnswers, findings, people, revisions } = tables;
 
-/** All findings of a unit by number, over all revisions, with answers, photos and closing. */
-export async function listFindings(db: Reader, unitId: number): Promise<FindingView[]> {
+/**
+ * All findings of a unit by number, over all revisions, with answers, photos and closing.
+ *
+ * @param files the unit's files, where they have been read already
+ */
+export async function listFindings(
+  db: Reader,
+  unitId: number,
+  files?: readonly FileView[],
+): Promise<FindingView[]> {
   const closer = alias(people, "closer");
   const rows = await db
     .select({
@@ -24,7 +32,7 @@ export async function listFindings(db: Reader, unitId: number): Promise<FindingV
     .orderBy(asc(findings.number));
   if (rows.length === 0) return [];
   const answers = await listAnswers(db, unitId);
-  const photos = (await listFiles(db, unitId)).filter((file) => file.findingId !== null);
+  const photos = (files ?? (await listFiles(db, unitId))).filter((file) => file.findingId !== null);
   return rows.map(({ finding, revision, raisedBy, closedBy }) => ({
     id: finding.id,
     number: finding.number,

@@ -13,10 +13,10 @@ import type { Judgement, UncertaintyPolicy } from "~/engine/verdict";
 import type { ServiceContext } from "~/services/context.server";
 import { type FileView, listFiles } from "~/services/files/list-files.server";
 import type { UnitRow } from "~/services/unit-act.server";
-import { loadRevision } from "~/services/units/load-revision.server";
+import { type LoadedRevision, loadRevision } from "~/services/units/load-revision.server";
 import { listFindings } from "./findings.server";
-import { listObservations } from "./observations.server";
-import type { ObservationView, Sheet, SheetLine, SheetProgress } from "./sheet-view";
+import { listObservations, type UnitObservation } from "./observations.server";
+import type { FindingView, ObservationView, Sheet, SheetLine, SheetProgress } from "./sheet-view";
 
 /**
  * The bench sheet of a unit: the checks that its revision calls for, with readings, verdicts, photos and findings. The
@@ -32,15 +32,31 @@ export async function loadSheet(
   db: Reader = services.db,
 ): Promise<Sheet> {
   const revision = await loadRevision(db, unit, revisionNumber);
-  // A draft will be judged by what the workshop uses when it is submitted.
-  const accuracyPolicy = revision.accuracyPolicy ?? services.workshop.accuracyPolicy;
+  const observations = await listObservations(db, unit.id);
+  const files = await listFiles(db, unit.id);
+  const findings = await listFindings(db, unit.id, files);
+  const sheet = buildSheet(revision, observations, files, findings, services.workshop.accuracyPolicy);
+  return { ...sheet, findings, files };
+}
+
+/**
+ * Puts a sheet together from what was read of its unit.
+ *
+ * @param all the unit's observations over all revisions, the earliest first
+ * @param policyOfNow the workshop's, for a draft: it will be judged by what the workshop uses when it is submitted
+ */
+export function buildSheet(
+  revision: LoadedRevision,
+  all: readonly UnitObservation[],
+  files: readonly FileView[],
+  findings: readonly FindingView[],
+  policyOfNow: UncertaintyPolicy,
+): Omit<Sheet, "findings" | "files"> {
+  const accuracyPolicy = revision.accuracyPolicy ?? policyOfNow;
   const analysis = analyse(revision.map, revision.ruleSet, revision.facts);
   const checks = deriveBenchSheet(revision.map, revision.ruleSet, revision.facts, analysis);
-  const observations = (await listObservations(db, unit.id)).filter(
-    (each) => each.revisionId === revision.id,
-  );
-  const findings = await listFindings(db, unit.id);
-  const photos = await listFiles(db, unit.id, { subject: "check" });
+  const observations = all.filter((each) => each.revisionId === revision.id);
+  const photos = files.filter((file) => file.subject === "check");
 
   const lines = checks.map((check): SheetLine => {
     const history = observations.filter((each) => each.checkKey === check.key).reverse();

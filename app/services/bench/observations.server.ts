@@ -1,4 +1,4 @@
-import { and, asc, eq } from "drizzle-orm";
+import { asc, eq, inArray } from "drizzle-orm";
 import { z } from "zod";
 import { type Reader, tables } from "~/db/client.server";
 import type { Accuracy } from "~/engine/verdict";
@@ -13,10 +13,13 @@ function readAccuracy(stored: unknown): Accuracy | null {
 }
 
 /**
- * Every observation of a unit, over all revisions, the earliest first. Carried-over rows are shown with the content
- * of the reading they point to, however many revisions back it was taken.
+ * Every observation of a unit (or of several), over all revisions, the earliest first. Carried-over rows are shown with
+ * the content of the reading they point to, however many revisions back it was taken.
  */
-export async function listObservations(db: Reader, unitId: number): Promise<UnitObservation[]> {
+export async function listObservations(
+  db: Reader,
+  unitId: number | readonly number[],
+): Promise<UnitObservation[]> {
   const rows = await db
     .select({
       row: observations,
@@ -28,7 +31,7 @@ export async function listObservations(db: Reader, unitId: number): Promise<Unit
     .innerJoin(revisions, eq(revisions.id, observations.revisionId))
     .innerJoin(people, eq(people.id, observations.byId))
     .leftJoin(instruments, eq(instruments.id, observations.instrumentId))
-    .where(and(eq(observations.unitId, unitId)))
+    .where(inArray(observations.unitId, [unitId].flat()))
     .orderBy(asc(observations.id));
 
   const byId = new Map<number, UnitObservation>();

@@ -2,9 +2,12 @@ import { and, asc, count, desc, eq, like, or, sql, type SQL } from "drizzle-orm"
 import { alias } from "drizzle-orm/mysql-core";
 import { tables } from "~/db/client.server";
 import type { ServiceContext } from "~/services/context.server";
-import { findUnit } from "~/services/unit-act.server";
+import { listFiles } from "~/services/files/list-files.server";
+import { pageWithin } from "~/services/page-within";
+import { loadCurrentRevisions } from "~/services/units/load-revision.server";
 import type { UnitState } from "~/workflow/states";
-import { loadSheet } from "./load-sheet.server";
+import { buildSheet } from "./load-sheet.server";
+import { listObservations } from "./observations.server";
 import type { SheetProgress } from "./sheet-view";
 
 const { people, revisions, units } = tables;
@@ -51,11 +54,14 @@ export interface QueueRow {
 
 const hasBattery = sql<number>`json_search(${revisions.map}, 'one', 'battery', null, '$.elements[*].kind') is not null`;
 
-/** The units that the bench has to do with, filtered, in the order asked for, page by page. */
+/**
+ * The units that the bench has to do with, filtered, in the order asked for, page by page. A page beyond the last one
+ * is the last one.
+ */
 export async function loadQueue(
   { db, workshop, person }: ServiceContext,
   filter: QueueFilter,
-): Promise<{ rows: QueueRow[]; total: number }> {
+): Promise<{ rows: QueueRow[]; total: number; page: number }> {
   const inspector = alias(people, "inspector");
   const conditions: (SQL | undefined)[] = [eq(units.workshopId, workshop.id)];
   conditions.push(
@@ -86,6 +92,14 @@ export async function loadQueue(
   }[filter.sort.by];
   const direction = filter.sort.direction === "asc" ? asc : desc;
 
+  const [all] = await db
+    .select({ total: count() })
+    .from(units)
+    .innerJoin(people, eq(people.id, units.builderId))
+    .innerJoin(revisions, and(eq(revisions.unitId, units.id), eq(revisions.number, units.revision)))
+    .where(and(...conditions));
+  const total = all?.total ?? 0;
+  const page = pageWithin(filter.page, total, filter.pageSize);
   const rows = await db
     .select({
       unit: units,
@@ -101,15 +115,10 @@ export async function loadQueue(
     .where(and(...conditions))
     .orderBy(direction(order), asc(units.number))
     .limit(filter.pageSize)
-    .offset((filter.page - 1) * filter.pageSize);
-  const [all] = await db
-    .select({ total: count() })
-    .from(units)
-    .innerJoin(people, eq(people.id, units.builderId))
-    .innerJoin(revisions, and(eq(revisions.unitId, units.id), eq(revisions.number, units.revision)))
-    .where(and(...conditions));
+    .offset((page - 1) * filter.pageSize);
   return {
-    total: all?.total ?? 0,
+    total,
+    page,
     rows: rows.map(({ unit, ...row }) => ({
       number: unit.number,
       name: unit.name,
@@ -136,22 +145,28 @@ export interface OwnBenchUnit {
   progress: SheetProgress;
 }
 
-/** The units that the person has on the bench now, with how far each sheet is. */
-export async function listOwnBench(services: ServiceContext): Promise<OwnBenchUnit[]> {
-  const { db, workshop, person } = services;
+/** The units that the person has on the bench now, with how far each sheet is: as many queries for many as for one. */
+export async function listOwnBench({ db, workshop, person }: ServiceContext): Promise<OwnBenchUnit[]> {
   const own = await db
-    .select({ number: units.number })
+    .select()
     .from(units)
     .where(
       and(eq(units.workshopId, workshop.id), eq(units.state, "on_bench"), eq(units.inspectorId, person.id)),
     )
     .orderBy(asc(units.changedAt));
-  const found: OwnBenchUnit[] = [];
-  for (const { number } of own) {
-    const unit = await findUnit(db, workshop.id, number);
-    if (!unit) continue;
-    const { progress } = await loadSheet(services, unit);
-    found.push({ number, name: unit.name, revision: unit.revision, version: unit.version, progress });
-  }
-  return found;
+  if (own.length === 0) return [];
+  const ids = own.map(({ id }) => id);
+  const [current, observations, files] = await Promise.all([
+    loadCurrentRevisions(db, own),
+    listObservations(db, ids),
+    listFiles(db, ids, { subject: "check" }),
+  ]);
+  return own.flatMap((unit) => {
+    const revision = current.get(unit.id);
+    if (!revision) return [];
+    const photos = files.filter((file) => file.unitId === unit.id);
+    const { progress } = buildSheet(revision, observations, photos, [], workshop.accuracyPolicy);
+    const { number, name, version } = unit;
+    return [{ number, name, revision: revision.number, version, progress }];
+  });
 }

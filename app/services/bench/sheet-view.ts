@@ -111,6 +111,9 @@ export interface Sheet {
   /** In working order. */
   lines: SheetLine[];
   progress: SheetProgress;
+  /** All of the unit, over all revisions. */
+  findings: FindingView[];
+  files: FileView[];
 }
 
 export type { InstrumentKind };

@@ -1,4 +1,4 @@
-import { and, asc, eq, isNull, type SQL } from "drizzle-orm";
+import { and, asc, eq, inArray, isNull, type SQL } from "drizzle-orm";
 import { type Reader, tables } from "~/db/client.server";
 
 const { files, people, revisions } = tables;
@@ -8,6 +8,7 @@ type FileRow = typeof files.$inferSelect;
 /** A photo or drawing as pages show it; the bytes are at `/api/w/:workshop/files/:id/full` and `/thumb`. */
 export interface FileView {
   id: number;
+  unitId: number;
   kind: FileRow["kind"];
   subject: FileRow["subject"];
   checkKey: string | null;
@@ -35,9 +36,13 @@ export interface FileFilter {
   revisionId?: number;
 }
 
-/** The files of a unit that have not been taken back, the oldest first. */
-export async function listFiles(db: Reader, unitId: number, filter: FileFilter = {}): Promise<FileView[]> {
-  const conditions: SQL[] = [eq(files.unitId, unitId), isNull(files.removedAt)];
+/** The files of a unit (or of several) that have not been taken back, the oldest first. */
+export async function listFiles(
+  db: Reader,
+  unitId: number | readonly number[],
+  filter: FileFilter = {},
+): Promise<FileView[]> {
+  const conditions: SQL[] = [inArray(files.unitId, [unitId].flat()), isNull(files.removedAt)];
   if (filter.kind) conditions.push(eq(files.kind, filter.kind));
   if (filter.subject) conditions.push(eq(files.subject, filter.subject));
   if (filter.checkKey !== undefined) conditions.push(eq(files.checkKey, filter.checkKey));
@@ -46,6 +51,7 @@ export async function listFiles(db: Reader, unitId: number, filter: FileFilter =
   return db
     .select({
       id: files.id,
+      unitId: files.unitId,
       kind: files.kind,
       subject: files.subject,
       checkKey: files.checkKey,

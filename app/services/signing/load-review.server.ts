@@ -1,10 +1,9 @@
 import { asc, eq } from "drizzle-orm";
 import { type Reader, tables } from "~/db/client.server";
-import { listFindings } from "~/services/bench/findings.server";
 import { loadSheet } from "~/services/bench/load-sheet.server";
 import type { FindingView, Sheet } from "~/services/bench/sheet-view";
 import type { ServiceContext } from "~/services/context.server";
-import { type FileView, listFiles } from "~/services/files/list-files.server";
+import type { FileView } from "~/services/files/list-files.server";
 import { type LicenceView, lockLicencesOf } from "~/services/people/licences.server";
 import type { StandingUnit } from "~/services/unit-act.server";
 import { listRevisions, type RevisionView } from "~/services/units/load-revision.server";
@@ -42,12 +41,13 @@ export async function loadReview(
   db: Reader = services.db,
 ): Promise<Review> {
   const [builder] = await db.select({ name: people.name }).from(people).where(eq(people.id, unit.builderId));
+  const sheet = await loadSheet(services, unit, undefined, db);
   return {
     unit,
     builder: builder?.name ?? "",
-    sheet: await loadSheet(services, unit, undefined, db),
-    findings: await listFindings(db, unit.id),
-    files: await listFiles(db, unit.id),
+    sheet,
+    findings: sheet.findings,
+    files: sheet.files,
     revisions: await listRevisions(db, unit.id),
     turns: await listTurns(db, unit.id),
     licences: await lockLicencesOf(db, services.workshop.id, services.person.id),

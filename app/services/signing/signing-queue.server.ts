@@ -14,14 +14,15 @@ export interface SigningRow extends QueueRow {
 export async function loadSigningQueue(
   services: ServiceContext,
   filter: Omit<QueueFilter, "state">,
-): Promise<{ rows: SigningRow[]; total: number }> {
-  const { rows, total } = await loadQueue(services, { ...filter, state: "awaiting_signature" });
+): Promise<{ rows: SigningRow[]; total: number; page: number }> {
+  const { rows, total, page } = await loadQueue(services, { ...filter, state: "awaiting_signature" });
   const inspected = await ownInspections(
     services,
     rows.map((row) => row.number),
   );
   return {
     total,
+    page,
     rows: rows.map((row) => ({
       ...row,
       objection: row.isOwn ? "You built it" : inspected.has(row.number) ? "You inspected it" : null,

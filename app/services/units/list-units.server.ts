@@ -1,6 +1,7 @@
 import { and, asc, count, desc, eq, isNull, like, or, type SQL } from "drizzle-orm";
 import { type Reader, tables } from "~/db/client.server";
 import { type Standing, standingsOf } from "~/services/archive/standing.server";
+import { pageWithin } from "~/services/page-within";
 import type { UnitState } from "~/workflow/states";
 import type { UnitSortColumn } from "./unit-sort";
 
@@ -44,7 +45,7 @@ export async function listUnits(
   const where = conditionsOf(query);
   const [found] = await db.select({ total: count() }).from(units).where(where);
   const total = found?.total ?? 0;
-  const page = Math.min(query.page, Math.max(1, Math.ceil(total / UNITS_PER_PAGE)));
+  const page = pageWithin(query.page, total, UNITS_PER_PAGE);
   const order = query.sort.direction === "asc" ? asc : desc;
   const rows = await db
     .select({

@@ -1,4 +1,4 @@
-import { and, asc, eq } from "drizzle-orm";
+import { and, asc, eq, inArray } from "drizzle-orm";
 import { type Reader, tables } from "~/db/client.server";
 import { type EnergyMap, energyMapSchema } from "~/engine/energy-map";
 import { findRuleSet, type RuleSet } from "~/engine/rule-set";
@@ -7,7 +7,7 @@ import { type UnitFacts, unitFactsSchema } from "~/engine/unit-facts";
 import { NotFoundError } from "~/services/errors";
 import type { UnitRow } from "~/services/unit-act.server";
 
-const { people, revisions } = tables;
+const { people, revisions, units } = tables;
 
 /** Why the revision before was sent back, which opened this one. */
 export interface SendBack {
@@ -68,8 +68,35 @@ export async function loadRevision(
     .from(revisions)
     .leftJoin(people, eq(people.id, revisions.sentBackById))
     .where(and(eq(revisions.unitId, unit.id), eq(revisions.number, number)));
-  const row = found?.row;
-  if (!row) throw new NotFoundError(`Revision ${number} of unit ${unit.number}`);
+  if (!found) throw new NotFoundError(`Revision ${number} of unit ${unit.number}`);
+  return readRevision(found.row, unit, found.sentBackBy);
+}
+
+/** The current revisions of some units, in no order, by one query. */
+export async function loadCurrentRevisions(
+  db: Reader,
+  rows: readonly UnitRow[],
+): Promise<Map<number, LoadedRevision>> {
+  if (rows.length === 0) return new Map();
+  const found = await db
+    .select({ row: revisions, unit: units, sentBackBy: people.name })
+    .from(revisions)
+    .innerJoin(units, and(eq(units.id, revisions.unitId), eq(units.revision, revisions.number)))
+    .leftJoin(people, eq(people.id, revisions.sentBackById))
+    .where(
+      inArray(
+        revisions.unitId,
+        rows.map(({ id }) => id),
+      ),
+    );
+  return new Map(found.map(({ row, unit, sentBackBy }) => [unit.id, readRevision(row, unit, sentBackBy)]));
+}
+
+function readRevision(
+  row: typeof revisions.$inferSelect,
+  unit: UnitRow,
+  sentBackBy: string | null,
+): LoadedRevision {
   return {
     id: row.id,
     number: row.number,
@@ -80,7 +107,7 @@ export async function loadRevision(
     facts: row.facts === null ? factsOf(unit) : unitFactsSchema.parse(row.facts),
     createdAt: row.createdAt,
     submittedAt: row.submittedAt,
-    sentBack: sendBackOf(row.sentBackReason, found.sentBackBy),
+    sentBack: sendBackOf(row.sentBackReason, sentBackBy),
   };
 }
 
