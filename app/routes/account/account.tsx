@@ -7,6 +7,7 @@ import { LinkButton } from "~/components/ui/link-button";
 import { PageHeader } from "~/components/ui/page-header";
 import { clientAddressContext } from "~/context";
 import { redirectWithFlash, takeFlash } from "~/middleware/flash.server";
+import { readForm } from "~/middleware/read-form.server";
 import { currentSessionHash, requirePerson } from "~/middleware/session.server";
 import { database } from "~/services/database.server";
 import { AuthenticationError, ThrottledError } from "~/services/errors";
@@ -42,7 +43,7 @@ export async function action({ request, context, url }: Route.ActionArgs) {
   const person = requirePerson(context, url);
   const own = await currentSessionHash(request);
   if (!own) throw redirect("/sign-in");
-  const submission = parseWithZod(await request.formData(), { schema: accountSchema });
+  const submission = parseWithZod(await readForm(request), { schema: accountSchema });
   if (submission.status !== "success") {
     return data(submission.reply({ hideFields: ["current", "password"] }), { status: 400 });
   }

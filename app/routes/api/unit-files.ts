@@ -1,6 +1,7 @@
 import { z } from "zod";
 import { problem, problemResponse } from "~/middleware/answers.server";
 import { authoriseUnit } from "~/middleware/authorise.server";
+import { readForm } from "~/middleware/read-form.server";
 import { ServiceError } from "~/services/errors";
 import { changeFile } from "~/services/files/change-file.server";
 import { listFiles } from "~/services/files/list-files.server";
@@ -33,7 +34,7 @@ export async function action({ request, params, context }: Route.ActionArgs) {
     if (request.headers.get("Content-Type")?.startsWith("multipart/")) {
       return Response.json(await receiveUpload(services, unit, request), { status: 201 });
     }
-    const change = changeSchema.safeParse(Object.fromEntries(await request.formData()));
+    const change = changeSchema.safeParse(Object.fromEntries(await readForm(request)));
     if (!change.success) return problemResponse(400, "Say what is to be done with which file.");
     await changeFile(services, unit, change.data);
     return Response.json({ ok: true });

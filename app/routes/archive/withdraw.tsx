@@ -16,6 +16,7 @@ import { clientAddressContext } from "~/context";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
 import { refuseForm } from "~/middleware/form-refusal.server";
+import { readForm } from "~/middleware/read-form.server";
 import { withdrawUnit } from "~/services/archive/withdraw-unit.server";
 import { AuthenticationError, InvalidInputError } from "~/services/errors";
 import type { Route } from "./+types/withdraw";
@@ -31,7 +32,7 @@ const hideFields = ["password"];
 export async function action({ request, context, params }: Route.ActionArgs) {
   // Not by the unit's state: the second of two clicks comes when it is withdrawn already.
   const { services, unit } = await authoriseUnit(context, "signing.decide", params.unit);
-  const submission = parseWithZod(await request.formData(), { schema: withdrawSchema });
+  const submission = parseWithZod(await readForm(request), { schema: withdrawSchema });
   if (submission.status !== "success") {
     return data({ ...submission.reply({ hideFields }), conflict: null }, { status: 400 });
   }

@@ -12,6 +12,7 @@ import { environment } from "~/environment.server";
 import { database } from "~/services/database.server";
 import { ThrottledError } from "~/services/errors";
 import { requestReset } from "~/services/people/password-reset.server";
+import { readForm } from "~/middleware/read-form.server";
 import type { Route } from "./+types/forgotten-password";
 import { emailField } from "./sign-in.schema";
 
@@ -22,7 +23,7 @@ export function loader() {
 }
 
 export async function action({ request, context }: Route.ActionArgs) {
-  const submission = parseWithZod(await request.formData(), { schema });
+  const submission = parseWithZod(await readForm(request), { schema });
   if (submission.status !== "success")
     return data({ sentTo: null, reply: submission.reply() }, { status: 400 });
   const { email } = submission.value;

@@ -10,6 +10,7 @@ import { InputField } from "~/components/ui/input-field";
 import { Sheet } from "~/components/ui/sheet";
 import { clientAddressContext, personContext, type SignedInPerson } from "~/context";
 import { redirectWithFlash } from "~/middleware/flash.server";
+import { readForm } from "~/middleware/read-form.server";
 import { signIn } from "~/middleware/session.server";
 import { database } from "~/services/database.server";
 import { AuthenticationError, ConflictError, ThrottledError } from "~/services/errors";
@@ -41,7 +42,7 @@ function wayFor(person: SignedInPerson | null, invitedId: number, isNew: boolean
 }
 
 export async function action({ request, params, context }: Route.ActionArgs) {
-  const submission = parseWithZod(await request.formData(), { schema });
+  const submission = parseWithZod(await readForm(request), { schema });
   if (submission.status !== "success")
     return data(submission.reply({ hideFields: ["password"] }), { status: 400 });
   const person = context.get(personContext);

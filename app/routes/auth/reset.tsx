@@ -11,6 +11,7 @@ import { Sheet } from "~/components/ui/sheet";
 import { database } from "~/services/database.server";
 import { AuthenticationError } from "~/services/errors";
 import { findReset, resetPassword } from "~/services/people/password-reset.server";
+import { readForm } from "~/middleware/read-form.server";
 import type { Route } from "./+types/reset";
 import { newPasswordField, PASSWORD_LENGTH } from "./password.schema";
 
@@ -22,7 +23,7 @@ export async function loader({ params }: Route.LoaderArgs) {
 }
 
 export async function action({ request, params }: Route.ActionArgs) {
-  const submission = parseWithZod(await request.formData(), { schema });
+  const submission = parseWithZod(await readForm(request), { schema });
   if (submission.status !== "success")
     return data(submission.reply({ hideFields: ["password"] }), { status: 400 });
   try {

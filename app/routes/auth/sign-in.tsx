@@ -9,6 +9,7 @@ import { InputField } from "~/components/ui/input-field";
 import { Sheet } from "~/components/ui/sheet";
 import { personContext } from "~/context";
 import { authenticateForm } from "~/middleware/authenticator.server";
+import { readForm } from "~/middleware/read-form.server";
 import { safePath } from "~/middleware/safe-path";
 import { signIn } from "~/middleware/session.server";
 import { AuthenticationError, ThrottledError } from "~/services/errors";
@@ -21,7 +22,7 @@ export function loader({ context, url }: Route.LoaderArgs) {
 }
 
 export async function action({ request, context, url }: Route.ActionArgs) {
-  const submission = parseWithZod(await request.clone().formData(), { schema: signInSchema });
+  const submission = parseWithZod(await readForm(request.clone()), { schema: signInSchema });
   if (submission.status !== "success")
     return data(submission.reply({ hideFields: ["password"] }), { status: 400 });
   try {

@@ -20,6 +20,7 @@ import { answerTo } from "~/middleware/answers.server";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
 import { refuseForm } from "~/middleware/form-refusal.server";
+import { readForm } from "~/middleware/read-form.server";
 import { type CarryLine, carryOver, loadChanges } from "~/services/bench/carry-over.server";
 import { decide } from "~/workflow/permissions";
 import type { Route } from "./+types/changes";
@@ -59,7 +60,7 @@ export async function loader({ context, params }: Route.LoaderArgs) {
 
 export async function action({ request, context, params }: Route.ActionArgs) {
   const { services, unit } = await authoriseUnit(context, "bench.read", params.unit);
-  const submission = parseWithZod(await request.formData(), { schema: carrySchema });
+  const submission = parseWithZod(await readForm(request), { schema: carrySchema });
   if (submission.status !== "success") {
     return data({ ...submission.reply(), conflict: null }, { status: 400 });
   }

@@ -10,6 +10,7 @@ import { answerTo } from "~/middleware/answers.server";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
 import { refuseForm } from "~/middleware/form-refusal.server";
+import { readForm } from "~/middleware/read-form.server";
 import { finishSheet, sendBackFromBench } from "~/services/bench/finish-sheet.server";
 import { loadSheet } from "~/services/bench/load-sheet.server";
 import { decide } from "~/workflow/permissions";
@@ -51,7 +52,7 @@ export async function loader({ context, params }: Route.LoaderArgs) {
 }
 
 export async function action({ request, context, params }: Route.ActionArgs) {
-  const form = await request.formData();
+  const form = await readForm(request);
   const bench = `/w/${params.workshop}/bench`;
   if (form.get("act") === "finish") {
     const { services, unit } = await authoriseUnit(context, "bench.read", params.unit);

@@ -20,6 +20,7 @@ import { Time } from "~/components/ui/time";
 import { answerTo } from "~/middleware/answers.server";
 import { authorise, authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
+import { readForm } from "~/middleware/read-form.server";
 import { reclaimUnit, releaseUnit, takeUnit } from "~/services/bench/bench-turns.server";
 import { listOwnBench, loadQueue, type QueueRow, queueSorts } from "~/services/bench/queue.server";
 import { ConflictError, GuardError, ServiceError } from "~/services/errors";
@@ -56,7 +57,7 @@ export async function loader({ context, url }: Route.LoaderArgs) {
 const actionFor = { take: "bench.queue", release: "bench.release", reclaim: "bench.reclaim" } as const;
 
 export async function action({ request, context, params }: Route.ActionArgs) {
-  const submission = parseWithZod(await request.formData(), { schema: turnSchema });
+  const submission = parseWithZod(await readForm(request), { schema: turnSchema });
   if (submission.status !== "success") {
     return data(
       { conflict: false, message: "The form was incomplete. Load the page again." },

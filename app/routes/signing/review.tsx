@@ -15,6 +15,7 @@ import { answerTo } from "~/middleware/answers.server";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
 import { type FormRefusal, refuseForm } from "~/middleware/form-refusal.server";
+import { readForm } from "~/middleware/read-form.server";
 import { SheetLines } from "~/routes/bench/sheet-lines";
 import { dayIn } from "~/services/context.server";
 import { AuthenticationError, InvalidInputError } from "~/services/errors";
@@ -109,7 +110,7 @@ const hideFields = ["password", "signatureImage"];
 export async function action({ request, context, params }: Route.ActionArgs) {
   // Not by the unit's state: the second of two clicks comes when it is signed already, and gets the first one's result.
   const { services, unit } = await authoriseUnit(context, "signing.decide", params.unit);
-  const form = await request.formData();
+  const form = await readForm(request);
   const act = decisionKindSchema.parse(form.get("act"));
   if (unit.state === "awaiting_signature") await authoriseUnit(context, `signing.${act}`, params.unit);
   const common = { unitNumber: unit.number, address: context.get(clientAddressContext) };

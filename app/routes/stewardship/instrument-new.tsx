@@ -13,6 +13,7 @@ import { instrumentKinds } from "~/engine/bench-check";
 import { authorise } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
 import { refuseForm } from "~/middleware/form-refusal.server";
+import { readForm } from "~/middleware/read-form.server";
 import { addInstrument } from "~/services/instruments/instruments.server";
 import type { Route } from "./+types/instrument-new";
 import { addInstrumentSchema } from "./instrument.schema";
@@ -25,7 +26,7 @@ export function loader({ context }: Route.LoaderArgs) {
 
 export async function action({ request, context, params }: Route.ActionArgs) {
   const services = authorise(context, "instruments.manage");
-  const submission = parseWithZod(await request.formData(), { schema: addInstrumentSchema });
+  const submission = parseWithZod(await readForm(request), { schema: addInstrumentSchema });
   if (submission.status !== "success")
     return data({ ...submission.reply(), conflict: null }, { status: 400 });
   try {

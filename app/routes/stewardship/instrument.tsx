@@ -11,6 +11,7 @@ import { answerTo, refusal } from "~/middleware/answers.server";
 import { authorise } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
 import { refuseForm } from "~/middleware/form-refusal.server";
+import { readForm } from "~/middleware/read-form.server";
 import { dayIn, type ServiceContext } from "~/services/context.server";
 import {
   addRange,
@@ -53,7 +54,7 @@ async function instrumentOr404(services: ServiceContext, id: string) {
 export async function action({ request, context, params }: Route.ActionArgs) {
   const services = authorise(context, "instruments.manage");
   const { id } = await instrumentOr404(services, params.instrument);
-  const submission = parseWithZod(await request.formData(), { schema: instrumentActionSchema });
+  const submission = parseWithZod(await readForm(request), { schema: instrumentActionSchema });
   if (submission.status !== "success")
     return data({ ...submission.reply(), conflict: null }, { status: 400 });
   const { value } = submission;

@@ -10,6 +10,7 @@ import { Day } from "~/components/ui/time";
 import { authorise } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
 import { refuseForm } from "~/middleware/form-refusal.server";
+import { readForm } from "~/middleware/read-form.server";
 import { dayIn } from "~/services/context.server";
 import { ServiceError } from "~/services/errors";
 import { addLicence, listElectricians, listLicences, revokeLicence } from "~/services/people/licences.server";
@@ -38,7 +39,7 @@ function standingOf(licence: Awaited<ReturnType<typeof listLicences>>[number], t
 
 export async function action({ request, context, params }: Route.ActionArgs) {
   const services = authorise(context, "licences.manage");
-  const form = await request.formData();
+  const form = await readForm(request);
   const here = `/w/${params.workshop}/licences`;
   if (form.get("intent") === "revoke") {
     const submission = parseWithZod(form, { schema: revokeLicenceSchema });

@@ -12,6 +12,7 @@ import { Time } from "~/components/ui/time";
 import { authorise } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
 import { refuseForm } from "~/middleware/form-refusal.server";
+import { readForm } from "~/middleware/read-form.server";
 import {
   cancelInvitation,
   invite,
@@ -37,7 +38,7 @@ export async function loader({ context, url }: Route.LoaderArgs) {
 
 export async function action({ request, context, params }: Route.ActionArgs) {
   const services = authorise(context, "people.manage");
-  const submission = parseWithZod(await request.formData(), { schema: peopleSchema });
+  const submission = parseWithZod(await readForm(request), { schema: peopleSchema });
   if (submission.status !== "success")
     return data({ ...submission.reply(), conflict: null }, { status: 400 });
   const { value } = submission;

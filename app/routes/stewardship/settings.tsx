@@ -14,6 +14,7 @@ import { ruleSets } from "~/engine/rule-set";
 import { authorise } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
 import { refuseForm } from "~/middleware/form-refusal.server";
+import { readForm } from "~/middleware/read-form.server";
 import { changeSettings, settingsOf } from "~/services/workshop-settings.server";
 import type { Route } from "./+types/settings";
 import { RuleSetTable } from "./rule-set-table";
@@ -30,7 +31,7 @@ export function loader({ context }: Route.LoaderArgs) {
 
 export async function action({ request, context, params }: Route.ActionArgs) {
   const services = authorise(context, "workshop.manage");
-  const submission = parseWithZod(await request.formData(), { schema: settingsSchema });
+  const submission = parseWithZod(await readForm(request), { schema: settingsSchema });
   if (submission.status !== "success")
     return data({ ...submission.reply(), conflict: null }, { status: 400 });
   const { seen, ruleSet, ...rest } = submission.value;

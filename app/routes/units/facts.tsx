@@ -6,6 +6,7 @@ import { LinkButton } from "~/components/ui/link-button";
 import { answerTo } from "~/middleware/answers.server";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
+import { readForm } from "~/middleware/read-form.server";
 import { ConflictError } from "~/services/errors";
 import { editDetails } from "~/services/units/edit-details.server";
 import type { UnitRow } from "~/services/unit-act.server";
@@ -37,7 +38,7 @@ export async function loader({ params, context }: Route.LoaderArgs) {
 
 export async function action({ request, params, context }: Route.ActionArgs) {
   const { services, unit } = await authoriseUnit(context, "unit.edit", params.unit);
-  const submission = parseWithZod(await request.formData(), { schema: editSchema });
+  const submission = parseWithZod(await readForm(request), { schema: editSchema });
   if (submission.status !== "success") {
     return data({ conflict: null, result: submission.reply() }, { status: 400 });
   }

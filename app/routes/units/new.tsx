@@ -5,6 +5,7 @@ import { LinkButton } from "~/components/ui/link-button";
 import { PageHeader } from "~/components/ui/page-header";
 import { authorise } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
+import { readForm } from "~/middleware/read-form.server";
 import { createUnit } from "~/services/units/create-unit.server";
 import type { Route } from "./+types/new";
 import { UnitForm } from "./unit-form";
@@ -17,7 +18,7 @@ export function loader({ context }: Route.LoaderArgs) {
 
 export async function action({ request, context }: Route.ActionArgs) {
   const services = authorise(context, "unit.create");
-  const submission = parseWithZod(await request.formData(), { schema: unitFormSchema });
+  const submission = parseWithZod(await readForm(request), { schema: unitFormSchema });
   if (submission.status !== "success") return data(submission.reply(), { status: 400 });
   const number = await createUnit(services, submission.value);
   return redirectWithFlash(

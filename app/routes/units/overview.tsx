@@ -9,6 +9,7 @@ import { Time } from "~/components/ui/time";
 import { TitleBlock } from "~/components/ui/title-block";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
+import { readForm } from "~/middleware/read-form.server";
 import { discardUnit } from "~/services/units/discard-unit.server";
 import { handOverUnit } from "~/services/units/hand-over-unit.server";
 import { loadOverview } from "~/services/units/load-overview.server";
@@ -33,7 +34,7 @@ export async function loader({ params, context }: Route.LoaderArgs) {
 
 export async function action({ request, params, context }: Route.ActionArgs) {
   const { services, unit } = await authoriseUnit(context, "unit.read", params.unit);
-  const input = unitActionSchema.safeParse(Object.fromEntries(await request.formData()));
+  const input = unitActionSchema.safeParse(Object.fromEntries(await readForm(request)));
   if (!input.success) return refuseUnreadable();
   const home = `/w/${services.workshop.slug}/units`;
   const target = { unitNumber: unit.number, expectedVersion: input.data.version };

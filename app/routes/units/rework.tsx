@@ -5,6 +5,7 @@ import { LinkButton } from "~/components/ui/link-button";
 import { Sheet } from "~/components/ui/sheet";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
+import { readForm } from "~/middleware/read-form.server";
 import { loadRework } from "~/services/units/load-rework.server";
 import { submitUnit } from "~/services/units/submit-unit.server";
 import type { Route } from "./+types/rework";
@@ -24,7 +25,7 @@ export async function loader({ params, context }: Route.LoaderArgs) {
 
 export async function action({ request, params, context }: Route.ActionArgs) {
   const { services, unit } = await authoriseUnit(context, "unit.read", params.unit);
-  const input = unitActionSchema.safeParse(Object.fromEntries(await request.formData()));
+  const input = unitActionSchema.safeParse(Object.fromEntries(await readForm(request)));
   if (!input.success || input.data.intent !== "submit") {
     return refuseUnreadable();
   }
