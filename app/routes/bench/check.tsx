@@ -12,6 +12,7 @@ import { Sheet } from "~/components/ui/sheet";
 import { answerTo } from "~/middleware/answers.server";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { refuseForm } from "~/middleware/form-refusal.server";
+import { readForm } from "~/middleware/read-form.server";
 import { loadCheck } from "~/services/bench/load-check.server";
 import { closeFinding, raiseFinding } from "~/services/bench/raise-finding.server";
 import { type AnswerInput, recordObservation } from "~/services/bench/record-observation.server";
@@ -49,7 +50,7 @@ export async function loader({ context, params, url }: Route.LoaderArgs) {
 
 export async function action({ request, context, params }: Route.ActionArgs) {
   const { services, unit } = await authoriseUnit(context, "bench.read", params.unit);
-  const form = await request.formData();
+  const form = await readForm(request);
   switch (form.get("act")) {
     case "observe": {
       const submission = parseWithZod(form, { schema: observeSchema });
