@@ -17,7 +17,7 @@ export interface WorkshopSettings {
 }
 
 /** Whether this machine knows the IANA time zone. */
-export function isTimeZone(name: string): boolean {
+function isTimeZone(name: string): boolean {
   try {
     new Intl.DateTimeFormat("en", { timeZone: name });
     return true;

@@ -1,7 +1,6 @@
 /**
  * Page by page, by links that keep the address's other parameters.
  *   <Pagination page={page} pageSize={50} total={total} label="Records" />
- *   <CursorPagination before={previousCursor} after={nextCursor} />   for lists too long to count
  */
 import { ChevronLeft, ChevronRight } from "lucide-react";
 import type { ReactNode } from "react";
@@ -34,27 +33,6 @@ export function Pagination({ page, pageSize, total, param = "page", label = "Pag
         {pages > 1 ? <span className="max-sm:hidden">{` · page ${page} of ${pages}`}</span> : null}
       </p>
       <PageLink direction="next" to={page < pages ? href(page + 1) : null} />
-    </PageNavigation>
-  );
-}
-
-export interface CursorPaginationProps {
-  before: string | null;
-  after: string | null;
-  label?: string;
-  children?: ReactNode;
-}
-
-export function CursorPagination({ before, after, label = "Pages", children }: CursorPaginationProps) {
-  const params = new URLSearchParams(useLocation().search);
-  return (
-    <PageNavigation label={label}>
-      <PageLink
-        direction="previous"
-        to={before === null ? null : withParams(params, { before, after: null })}
-      />
-      <div className="text-sm text-ink-soft">{children}</div>
-      <PageLink direction="next" to={after === null ? null : withParams(params, { after, before: null })} />
     </PageNavigation>
   );
 }

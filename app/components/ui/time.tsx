@@ -13,11 +13,6 @@ export function TimeZoneProvider({ timeZone, children }: { timeZone: string; chi
   return <TimeZone value={timeZone}>{children}</TimeZone>;
 }
 
-/** The workshop's time zone, or UTC where no workshop is known. */
-export function useTimeZone(): string {
-  return use(TimeZone) ?? "UTC";
-}
-
 export interface TimeProps {
   /** `null` is "never" or whatever `absent` says. */
   at: Date | string | null | undefined;

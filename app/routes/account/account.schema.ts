@@ -10,8 +10,8 @@ export const passwordSchema = z.object({
   password: newPasswordField,
 });
 
-export const sessionSchema = z.object({ intent: z.literal("end-session"), session: z.string().length(64) });
-export const othersSchema = z.object({ intent: z.literal("end-others") });
+const sessionSchema = z.object({ intent: z.literal("end-session"), session: z.string().length(64) });
+const othersSchema = z.object({ intent: z.literal("end-others") });
 
 export const accountSchema = z.discriminatedUnion("intent", [
   renameSchema,

@@ -5,7 +5,7 @@ const personId = z.coerce.number().int().positive().nullable().catch(null);
 const day = z.iso.date().nullable().catch(null);
 
 /** Filters of the archive, as they stand in the address; anything unknown is no filter. */
-export const archiveParamsSchema = z.object({
+const archiveParamsSchema = z.object({
   q: z.string().trim().max(100).catch(""),
   state: z.enum(recordStates).nullable().catch(null),
   builder: personId,

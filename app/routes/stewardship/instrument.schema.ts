@@ -86,7 +86,7 @@ export const rangeSchema = z
     error: "No instrument is exact: state the share of the reading, the digits or both.",
   });
 
-export const removeRangeSchema = z.object({
+const removeRangeSchema = z.object({
   intent: z.literal("remove-range"),
   range: z.number().int().positive(),
 });

@@ -13,8 +13,8 @@ export const inviteSchema = z.object({
 });
 
 const invitation = z.number().int().positive();
-export const resendSchema = z.object({ intent: z.literal("resend"), invitation });
-export const cancelSchema = z.object({ intent: z.literal("cancel"), invitation });
+const resendSchema = z.object({ intent: z.literal("resend"), invitation });
+const cancelSchema = z.object({ intent: z.literal("cancel"), invitation });
 
 export const peopleSchema = z.discriminatedUnion("intent", [inviteSchema, resendSchema, cancelSchema]);
 

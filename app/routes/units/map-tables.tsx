@@ -50,7 +50,7 @@ function ElementData({ element }: { element: Element }) {
 }
 
 /** A datum in words: "2 A", "Blade, ISO 8820-3", "not known". */
-export function fieldText(field: FieldDescriptor, value: unknown): string {
+function fieldText(field: FieldDescriptor, value: unknown): string {
   if (value === null || value === undefined || value === "unknown") return "not known";
   if (field.type === "choice")
     return field.choices?.find((choice) => choice.value === value)?.label ?? String(value);

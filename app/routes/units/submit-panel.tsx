@@ -155,7 +155,7 @@ function Step({
 }
 
 /** The row and field that a problem is about; facts of the unit have their own page. */
-export function problemHref(base: string, problem: Problem): string {
+function problemHref(base: string, problem: Problem): string {
   if (problem.subject === null) return problem.field ? `${base}/facts#unit-${problem.field}` : `${base}/map`;
   const field = problem.field === null ? "" : `-${problem.field}`;
   return `${base}/map#${problem.subject.kind}-${problem.subject.id}${field}`;

@@ -78,7 +78,7 @@ export function buildSheet(
 }
 
 /** The verdict of one check from its latest observation: the reading judged, then combined with the engine's answer. */
-export function judgeLine(
+function judgeLine(
   check: BenchCheck,
   observation: ObservationView | null,
   policy: UncertaintyPolicy,

@@ -13,7 +13,7 @@ import type { SheetProgress } from "./sheet-view";
 const { people, revisions, units } = tables;
 
 /** States that the bench's queue can be filtered by. */
-export const benchStates = [
+const benchStates = [
   "submitted",
   "on_bench",
   "awaiting_signature",

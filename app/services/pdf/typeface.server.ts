@@ -22,7 +22,7 @@ const files = {
 export type Weight = keyof typeof files;
 
 /** Stands for a character that none of the fonts holds. */
-export const REPLACEMENT = "\ufffd";
+const REPLACEMENT = "\ufffd";
 
 const resolve = createRequire(import.meta.url).resolve;
 const read = new Map<string, Promise<Uint8Array>>();

@@ -14,7 +14,7 @@ import { hashSecret, newSecret } from "./sessions.server";
 
 const { memberships, people, tokens, workshops } = tables;
 
-export const INVITATION_DAYS = 7;
+const INVITATION_DAYS = 7;
 const INVITATION_MS = INVITATION_DAYS * 86_400_000;
 
 /**

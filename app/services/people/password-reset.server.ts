@@ -10,7 +10,7 @@ import { addressKey, mailKey, noteTry } from "./throttle.server";
 
 const { people, sessions, tokens } = tables;
 
-export const RESET_HOURS = 1;
+const RESET_HOURS = 1;
 const RESET_MS = RESET_HOURS * 3_600_000;
 
 /**

@@ -55,7 +55,7 @@ export async function loadReview(
 }
 
 /** Who had the unit on the bench and when, the earliest first. */
-export function listTurns(db: Reader, unitId: number): Promise<BenchTurnView[]> {
+function listTurns(db: Reader, unitId: number): Promise<BenchTurnView[]> {
   return db
     .select({
       inspector: people.name,
