@@ -187,6 +187,7 @@ test.each([
     await expectMail(server(), `Unit ${number} was withdrawn: ${unit.name}`, [
       builder.email,
       inspector.email,
+      "emeka@demo.example",
     ]);
     await passerBy.reload();
     await passerBy.getByText("Must not be plugged in: withdrawn").waitFor();

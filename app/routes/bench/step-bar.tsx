@@ -1,5 +1,5 @@
 import { ChevronLeft, ChevronRight, CircleCheckBig, SkipForward } from "lucide-react";
-import { useEffect } from "react";
+import { useLayoutEffect } from "react";
 import { useNavigate } from "react-router";
 import { LinkButton } from "~/components/ui/link-button";
 import { checkHref } from "./check-href";
@@ -22,7 +22,8 @@ export function StepBar({
   mayWork: boolean;
 }) {
   const navigate = useNavigate();
-  useEffect(() => {
+  // Together with the page: a key pressed right after a step has changed must not act on the one before.
+  useLayoutEffect(() => {
     const onKey = (event: KeyboardEvent) => {
       if (event.defaultPrevented || event.ctrlKey || event.metaKey || event.altKey) return;
       if (isTyping(event.target) || document.querySelector("dialog[open]")) return;
