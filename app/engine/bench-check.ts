@@ -66,6 +66,8 @@ export interface BenchCheck {
   why: Reason[];
   method: string[];
   cautions: string[];
+  /** Done with mains connected, or with what an inverter makes of it: only after the dead checks have passed. */
+  energised?: boolean;
   /** The engine's own answer, or `null` where only the bench can tell. */
   computed: ComputedAnswer | null;
   asks: Ask;

@@ -126,3 +126,16 @@ test("height raises the clearance that is asked for", () => {
   );
   expect(high?.asks).toMatchObject({ limit: { value: 3.42 } });
 });
+
+test.each(maps)("%s: what is cautioned as done with mains on is held back as such", (_key, map) => {
+  const checks = deriveBenchSheet(map, europe, facts);
+  for (const { key, cautions, energised } of checks) {
+    if (cautions.some((each) => each.startsWith("This step is done with mains on"))) {
+      expect(energised, key).toBe(true);
+    }
+  }
+  const hasMains = map.elements.some(({ kind }) => kind === "mains-inlet");
+  if (hasMains) expect(checks.find(({ key }) => key === "operation")?.energised).toBe(true);
+  const dead = checks.filter(({ key }) => /^(earth-|insulation|pole-)/.test(key) && !key.includes("current"));
+  expect(dead.filter(({ energised }) => energised === true).map(({ key }) => key)).toEqual([]);
+});

@@ -88,6 +88,10 @@ export function whileWorking(view: MapView): string[] {
   ];
 }
 
+/** Whether the unit carries mains voltage while it works: from its inlet, or made by an inverter. */
+export const worksOnMains = (view: MapView): boolean =>
+  view.ofKind("mains-inlet").length > 0 || view.ofKind("converter").some(({ output }) => output === "mains");
+
 /** The first step of a test with everything dead: what must be off or out before an instrument is connected. */
 export function makeDead(view: MapView): string {
   const inlets = [...view.ofKind("mains-inlet"), ...view.ofKind("dc-inlet")];

@@ -1,5 +1,6 @@
 import type { EnergyMap } from "~/engine/energy-map";
 import type { BenchCheck } from "~/engine/bench-check";
+import { beforeMains } from "~/services/bench/before-mains";
 import { loadSheet } from "~/services/bench/load-sheet.server";
 import { recordObservation } from "~/services/bench/record-observation.server";
 import type { ServiceContext } from "~/services/context.server";
@@ -64,13 +65,22 @@ export async function workSheet(context: ServiceContext, unitNumber: number, sha
         if (!fitting) throw new Error(`The demo workshop has no instrument for ${check.title} (${kind}).`);
         return fitting.id;
       }),
-      reason: null,
+      reason: await reasonForMains(context, unitNumber, check),
       note: null,
     });
     if (check.photo === "required") {
       await addPicture(context, unitNumber, check.title, { subject: "check", checkKey: check.key });
     }
   }
+}
+
+/** A step with mains on, although a dead check has not passed or a danger is open, needs a reason. */
+async function reasonForMains(context: ServiceContext, unitNumber: number, check: BenchCheck) {
+  if (!check.energised) return null;
+  const { lines, findings } = await loadSheet(context, await unitNow(context, unitNumber));
+  return beforeMains(check, lines, findings).length > 0
+    ? "Fed through an isolating transformer behind a screen, to see the fault. (Demo)"
+    : null;
 }
 
 function answerFor(check: BenchCheck, instrumentOf: (kind: string) => number) {

@@ -1,6 +1,7 @@
 import { asc, eq } from "drizzle-orm";
 import { beforeEach, expect, test } from "vitest";
 import { tables } from "~/db/client.server";
+import { loadCheck } from "~/services/bench/load-check.server";
 import {
   type AnswerInput,
   type ObservationInput,
@@ -9,10 +10,13 @@ import {
 import { database } from "~/services/database.server";
 import { ConflictError, ForbiddenError, InvalidInputError, NotFoundError } from "~/services/errors";
 import {
+  answerAll,
   examinationCheck,
+  goodAnswer,
   lineNow,
   makeBench,
   readingCheck,
+  sheetNow,
   type TestBench,
   unitNow,
 } from "../fixtures/bench";
@@ -262,4 +266,65 @@ test("who and when stand with each reading, to the millisecond", async () => {
   const { observation } = await lineNow(bench.as("inspector"), bench.unit.number, check.key);
   expect(observation?.at).toEqual(new Date("2026-05-05T10:15:00.123Z"));
   expect((await unitNow(bench.as("inspector"), bench.unit.number)).version).toBe(2);
+});
+
+test("a step with mains on is refused while earth, insulation or isolation has not passed, unless a reason is given", async () => {
+  const inspector = bench.as("inspector");
+  const { number } = bench.unit;
+  const { lines } = await sheetNow(inspector, number);
+  const earth = lines.find(
+    ({ check }) => check.family === "protective-earth" && check.asks.kind === "reading",
+  );
+  const live = lines.find(({ check }) => check.energised && check.asks.kind === "reading");
+  if (!earth || !live) throw new Error("The sheet has no earth reading or no live one.");
+  const failing = goodAnswer(earth.check, bench.instrumentOf);
+  if (failing.kind !== "measured") throw new Error("The earth is not measured.");
+  await recordObservation(inspector, {
+    unitNumber: number,
+    checkKey: earth.check.key,
+    latestId: null,
+    answer: { ...failing, value: failing.value * 100 },
+    reason: null,
+    note: null,
+  });
+  const input: ObservationInput = {
+    unitNumber: number,
+    checkKey: live.check.key,
+    latestId: null,
+    answer: goodAnswer(live.check, bench.instrumentOf),
+    reason: null,
+    note: null,
+  };
+  const refusal: unknown = await recordObservation(inspector, input).catch((error: unknown) => error);
+  expect(refusal).toMatchObject({ field: "reason" });
+  expect(String(refusal)).toContain("Do not connect mains");
+  expect(String(refusal)).toContain(`${earth.check.title}: failed.`);
+  expect(
+    (await loadCheck(inspector, await unitNow(inspector, number), live.check.key)).beforeMains,
+  ).toContain(`${earth.check.title}: failed.`);
+
+  const reason = "Behind an isolating transformer";
+  const id = await recordObservation(inspector, { ...input, reason });
+  expect((await lineNow(inspector, number, live.check.key)).observation).toMatchObject({ id, reason });
+});
+
+test("once every dead check has passed, a step with mains on needs no reason", async () => {
+  const inspector = bench.as("inspector");
+  const { number } = bench.unit;
+  const liveKeys = (await sheetNow(inspector, number)).lines
+    .filter(({ check }) => check.energised)
+    .map(({ check }) => check.key);
+  await answerAll(db, bench, liveKeys);
+  for (const key of liveKeys) {
+    const { check } = await lineNow(inspector, number, key);
+    await recordObservation(inspector, {
+      unitNumber: number,
+      checkKey: key,
+      latestId: null,
+      answer: goodAnswer(check, bench.instrumentOf),
+      reason: null,
+      note: null,
+    });
+  }
+  expect(liveKeys.length).toBeGreaterThan(2);
 });

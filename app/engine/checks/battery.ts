@@ -1,6 +1,15 @@
 import { analyseBatteries } from "../battery-analysis";
 import type { BenchCheck, CheckDefinition } from "../bench-check";
-import { answer, because, caution, examination, keyOf, practice, whileWorking } from "../check-parts";
+import {
+  answer,
+  because,
+  caution,
+  examination,
+  keyOf,
+  practice,
+  whileWorking,
+  worksOnMains,
+} from "../check-parts";
 import { circuitOf } from "../circuit";
 import { cellLimits } from "../supply-data";
 
@@ -82,6 +91,7 @@ export const battery: CheckDefinition = {
                 "A charger that waits for a battery shows nothing: then measure across the battery with the charge finished, and say so under the conditions.",
               ],
               cautions: whileWorking(view),
+              energised: worksOnMains(view),
               computed: null,
               asks: {
                 kind: "reading",

@@ -1,5 +1,5 @@
 import type { CheckDefinition } from "../bench-check";
-import { because, keyOf, whileWorking } from "../check-parts";
+import { because, keyOf, whileWorking, worksOnMains } from "../check-parts";
 import type { Citation } from "../rule-set";
 import { sentence } from "../wording";
 
@@ -59,6 +59,7 @@ export const heat: CheckDefinition = {
           ...whileWorking(view),
           "Stay with the unit. Smoke, smell or a softening case ends the test: switch off, and take every source away from outside.",
         ],
+        energised: worksOnMains(view),
         computed: null,
         asks: {
           kind: "reading",

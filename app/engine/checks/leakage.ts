@@ -1,5 +1,5 @@
 import type { BenchCheck, CheckDefinition, ComputedAnswer } from "../bench-check";
-import { answer, because, caution, keyOf, whileWorking } from "../check-parts";
+import { answer, because, caution, keyOf, whileWorking, worksOnMains } from "../check-parts";
 import { circuitOf } from "../circuit";
 import { figure } from "../figure";
 import { mainsSources } from "../insulation";
@@ -41,6 +41,7 @@ export const leakage: CheckDefinition = {
           "Every switch on, unit working. Measure, turn the plug round if it fits both ways, and take the higher.",
         ],
         cautions: [...whileWorking(view), caution.licence],
+        energised: worksOnMains(view),
         computed: computedSum(sum, earthLimit, facts),
         asks: {
           kind: "reading",
@@ -81,6 +82,7 @@ export const leakage: CheckDefinition = {
           "Turn the plug round if it fits both ways, and take the higher.",
         ],
         cautions: [...whileWorking(view), caution.licence],
+        energised: worksOnMains(view),
         computed: unearthed
           ? computedSum(
               sum,

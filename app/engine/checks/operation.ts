@@ -1,5 +1,5 @@
 import type { CheckDefinition } from "../bench-check";
-import { because, examination, keyOf, practice, whileWorking } from "../check-parts";
+import { because, examination, keyOf, practice, whileWorking, worksOnMains } from "../check-parts";
 
 /** Last of all: the unit does what it is for, and its controls do what they say. */
 export const operation: CheckDefinition = {
@@ -41,6 +41,7 @@ export const operation: CheckDefinition = {
           ...whileWorking(view),
           "Stop at smell, smoke, noise or heat: switch off, and take every source away from outside.",
         ],
+        energised: worksOnMains(view),
         computed: null,
         asks: examination(
           "Does it work as described, in every state?",

@@ -54,6 +54,7 @@ export const reverseCurrent: CheckDefinition = {
               ...(from.kind === "mains-inlet" ? [caution.live] : [caution.stillLive]),
               caution.battery,
             ],
+            energised: from.kind === "mains-inlet",
             computed: answer(judged.verdict, judged.reasons),
             asks: askFor(view, ruleSet, to.id),
             photo: "none",

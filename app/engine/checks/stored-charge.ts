@@ -48,6 +48,7 @@ export const storedCharge: CheckDefinition = {
           caution.shrouded,
           "Until the test socket is parted from mains, all of it is live: behind a residual-current device, with one hand.",
         ],
+        energised: true,
         computed:
           judged.length === 0
             ? null

@@ -22,6 +22,7 @@ export function AnswerForm({
   line,
   instruments,
   policy,
+  againstMains,
   draft,
   nextOpenKey,
   onCancel,
@@ -29,6 +30,8 @@ export function AnswerForm({
   line: SheetLine;
   instruments: readonly BenchInstrument[];
   policy: UncertaintyPolicy;
+  /** The step needs mains, and something says that mains must not be connected: an answer needs a reason. */
+  againstMains: boolean;
   draft: ReturnType<typeof useKeptDraft<AnswerDraft>>;
   nextOpenKey: string | null;
   /** Given for a correction, which can be left alone. */
@@ -55,7 +58,7 @@ export function AnswerForm({
 
   const live = judgeDraft(check, values, instruments, policy);
   const errors = refusal?.errors ?? {};
-  const needsReason = values.kind !== "answer" || observation !== null;
+  const needsReason = values.kind !== "answer" || observation !== null || againstMains;
   const kind =
     values.kind !== "answer" ? values.kind : check.asks.kind === "reading" ? "measured" : "examined";
 
@@ -107,7 +110,7 @@ export function AnswerForm({
       {needsReason ? (
         <TextareaField
           field={{ name: "reason", errors: errors.reason }}
-          label={reasonLabel(values.kind)}
+          label={reasonLabel(values.kind, againstMains)}
           size="bench"
           rows={2}
           maxLength={1000}
@@ -172,10 +175,10 @@ export function AnswerForm({
   );
 }
 
-function reasonLabel(kind: AnswerDraft["kind"]): string {
+function reasonLabel(kind: AnswerDraft["kind"], againstMains: boolean): string {
   switch (kind) {
     case "answer":
-      return "Why the earlier answer is corrected";
+      return againstMains ? "Why mains is connected all the same" : "Why the earlier answer is corrected";
     case "not-applicable":
       return "Why this check doesn’t apply to the unit";
     case "not-possible":

@@ -16,6 +16,7 @@ export function AnswerPanel({
   line,
   instruments,
   policy,
+  againstMains,
   whyNot,
   draftKey,
   nextOpenKey,
@@ -23,6 +24,8 @@ export function AnswerPanel({
   line: SheetLine;
   instruments: readonly BenchInstrument[];
   policy: UncertaintyPolicy;
+  /** The step needs mains, and something says that mains must not be connected. */
+  againstMains: boolean;
   /** Why the person may not work here; null when they may. */
   whyNot: string | null;
   draftKey: string;
@@ -57,6 +60,7 @@ export function AnswerPanel({
             line={line}
             instruments={instruments}
             policy={policy}
+            againstMains={againstMains}
             draft={draft}
             nextOpenKey={nextOpenKey}
             onCancel={

@@ -5,6 +5,7 @@ import { familyTitles } from "~/components/bench-limit";
 import { LineVerdictBadge } from "~/components/bench-verdict";
 import { PhotoStrip } from "~/components/photo-strip";
 import { PhotoUpload } from "~/components/photo-upload";
+import { Caution } from "~/components/ui/caution";
 import { ConflictNotice } from "~/components/shell/conflict-notice";
 import { FormErrorSummary } from "~/components/ui/form-error-summary";
 import { LinkButton } from "~/components/ui/link-button";
@@ -192,6 +193,15 @@ export default function CheckPage({ loaderData, actionData, params }: Route.Comp
         </div>
       </header>
       <RefusedWithoutScript answer={actionData} />
+      {loaderData.beforeMains.length > 0 ? (
+        <Caution
+          sign="voltage"
+          title="Do not connect mains:"
+          items={loaderData.beforeMains}
+          size="bench"
+          className="mb-5 wrap-anywhere"
+        />
+      ) : null}
       {/* On a tablet the answer comes right after the question; on a desk it stands beside both. */}
       <div className="grid items-start gap-5 lg:grid-cols-2 lg:grid-rows-[auto_1fr]">
         <CheckQuestion check={check} />
@@ -202,6 +212,7 @@ export default function CheckPage({ loaderData, actionData, params }: Route.Comp
             line={line}
             instruments={loaderData.instruments}
             policy={loaderData.policy}
+            againstMains={loaderData.beforeMains.length > 0}
             whyNot={whyNot}
             draftKey={draftKey}
             nextOpenKey={loaderData.nextOpenKey}

@@ -5,6 +5,7 @@ import { NotFoundError } from "~/services/errors";
 import { type InstrumentView, listInstruments } from "~/services/instruments/instruments.server";
 import type { UnitRow } from "~/services/unit-act.server";
 import { type CalibrationState, calibrationState } from "~/workflow/calibration";
+import { beforeMains } from "./before-mains";
 import { loadSheet } from "./load-sheet.server";
 import type { Sheet, SheetLine } from "./sheet-view";
 
@@ -24,6 +25,8 @@ export interface CheckStep {
   nextKey: string | null;
   /** The next one, round the end, that is not decided or lacks its photo; null when this is the last such. */
   nextOpenKey: string | null;
+  /** Why mains must not be connected for this step, a sentence each; empty when it may, or when the step needs none. */
+  beforeMains: string[];
   /** Of the kind that the check needs, usable ones first. */
   instruments: BenchInstrument[];
 }
@@ -54,6 +57,7 @@ export async function loadCheck(
     previousKey: lines[index - 1]?.check.key ?? null,
     nextKey: lines[index + 1]?.check.key ?? null,
     nextOpenKey: nextOpen?.check.key ?? null,
+    beforeMains: beforeMains(line.check, lines, sheet.findings),
     instruments:
       line.check.asks.kind === "reading" ? await fitting(services, line.check.asks.instrument.kind) : [],
   };

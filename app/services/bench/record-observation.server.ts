@@ -9,6 +9,8 @@ import { ConflictError, InvalidInputError, NotFoundError } from "~/services/erro
 import { type Act, actOnUnit } from "~/services/unit-act.server";
 import { loadRevision } from "~/services/units/load-revision.server";
 import { calibrationState } from "~/workflow/calibration";
+import { beforeMains } from "./before-mains";
+import { loadSheet } from "./load-sheet.server";
 
 const { instrumentRanges, instruments, observations, people } = tables;
 
@@ -32,7 +34,7 @@ export interface ObservationInput {
   /** The observation that the form was made on; null when the check had none. */
   latestId: number | null;
   answer: AnswerInput;
-  /** Required for "not applicable", "not possible" and for every correction. */
+  /** Required for "not applicable", "not possible", every correction, and for mains against `beforeMains`. */
   reason: string | null;
   note: string | null;
 }
@@ -61,7 +63,11 @@ export function recordObservation(context: ServiceContext, input: ObservationInp
           : "The answer that you saw here is gone from the sheet. Open the check again.",
       );
     }
-    const reason = requireReason(input, latest !== null);
+    const reason = requireReason(
+      input,
+      latest !== null,
+      await objectionsTo(context, act, check, input.answer),
+    );
     const [row] = await tx
       .insert(observations)
       .values({
@@ -103,7 +109,23 @@ async function findLatest(tx: Transaction, revisionId: number, checkKey: string)
   return latest ?? null;
 }
 
-function requireReason({ answer, reason }: ObservationInput, isCorrection: boolean): string | null {
+/** What should have kept mains off while this was found out; a step that was not done needed no mains. */
+async function objectionsTo(
+  context: ServiceContext,
+  { tx, unit }: Act,
+  check: BenchCheck,
+  answer: AnswerInput,
+) {
+  if (!check.energised || answer.kind === "not-applicable" || answer.kind === "not-possible") return [];
+  const { lines, findings } = await loadSheet(context, unit, undefined, tx);
+  return beforeMains(check, lines, findings);
+}
+
+function requireReason(
+  { answer, reason }: ObservationInput,
+  isCorrection: boolean,
+  objections: readonly string[],
+): string | null {
   const given = reason?.trim() ?? "";
   if (given !== "") return given;
   if (answer.kind === "not-applicable") {
@@ -111,6 +133,12 @@ function requireReason({ answer, reason }: ObservationInput, isCorrection: boole
   }
   if (answer.kind === "not-possible") {
     throw new InvalidInputError("reason", "Say why this check can't be done.");
+  }
+  if (objections.length > 0) {
+    throw new InvalidInputError(
+      "reason",
+      `Do not connect mains: ${objections.join(" ")} If it was right all the same, say why.`,
+    );
   }
   if (isCorrection) {
     throw new InvalidInputError("reason", "Say why the earlier answer is being corrected; it stays visible.");
