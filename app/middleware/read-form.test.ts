@@ -71,7 +71,9 @@ test("no route reads a form by itself", () => {
   const files = readdirSync(routesFolder, { recursive: true, encoding: "utf8" }).filter((file) =>
     /\.tsx?$/.test(file),
   );
-  const reading = files.filter((file) => readFileSync(join(routesFolder, file), "utf8").includes("readForm("));
+  const reading = files.filter((file) =>
+    readFileSync(join(routesFolder, file), "utf8").includes("readForm("),
+  );
   expect(reading.length).toBeGreaterThan(15);
   const byThemselves = files.filter((file) =>
     /\bformData\s*\(\s*\)/.test(readFileSync(join(routesFolder, file), "utf8")),

@@ -1,4 +1,5 @@
 import { z } from "zod";
+import { perhapsOneLine } from "~/engine/typed-text";
 import { problem, problemResponse } from "~/middleware/answers.server";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { readForm } from "~/middleware/read-form.server";
@@ -12,11 +13,16 @@ const changeSchema = z.discriminatedUnion("intent", [
   z.object({
     intent: z.literal("caption"),
     fileId: z.coerce.number().int().positive(),
-    caption: z.string().trim().max(300),
+    caption: perhapsOneLine(300),
   }),
   z.object({ intent: z.literal("remove"), fileId: z.coerce.number().int().positive() }),
   z.object({ intent: z.literal("restore"), fileId: z.coerce.number().int().positive() }),
 ]);
+
+/** The one thing of a change that a person types. */
+function captionTooLong(error: z.ZodError): string | undefined {
+  return error.issues.find((issue) => issue.path[0] === "caption" && issue.code === "too_big")?.message;
+}
 
 /** GET: the unit's files. */
 export async function loader({ params, context }: Route.LoaderArgs) {
@@ -35,7 +41,8 @@ export async function action({ request, params, context }: Route.ActionArgs) {
       return Response.json(await receiveUpload(services, unit, request), { status: 201 });
     }
     const change = changeSchema.safeParse(Object.fromEntries(await readForm(request)));
-    if (!change.success) return problemResponse(400, "Say what is to be done with which file.");
+    if (!change.success)
+      return problemResponse(400, captionTooLong(change.error) ?? "Say what is to be done with which file.");
     await changeFile(services, unit, change.data);
     return Response.json({ ok: true });
   } catch (error) {

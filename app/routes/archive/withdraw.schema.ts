@@ -1,11 +1,8 @@
 import { z } from "zod";
+import { lines, passwordAgain } from "~/engine/typed-text";
 
 export const withdrawSchema = z.object({
-  version: z.number().int().positive(),
-  reason: z
-    .string("Say why it is withdrawn.")
-    .trim()
-    .min(10, "Say why it is withdrawn, in a sentence.")
-    .max(4000),
-  password: z.string("Type your password: it is asked for in the act.").min(1).max(200),
+  version: z.number("Load the page again.").int("Load the page again.").positive("Load the page again."),
+  reason: lines("Say why it is withdrawn, in a sentence.", 4000, 10),
+  password: passwordAgain,
 });

@@ -1,8 +1,5 @@
 import { z } from "zod";
+import { oneLine } from "~/engine/typed-text";
 
 /** A person's name, as it stands in records. */
-export const nameField = z
-  .string({ error: "Enter a name." })
-  .trim()
-  .min(1, "Enter a name.")
-  .max(120, "Names have at most 120 characters.");
+export const nameField = oneLine("Enter a name.", 120);

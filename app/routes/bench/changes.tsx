@@ -29,9 +29,11 @@ import { checkHref } from "./check-href";
 const carrySchema = z.object({
   version: z.number().int().positive(),
   checks: z
-    .array(z.string().min(1).max(190), { error: "Tick the checks to carry over." })
+    .array(z.string("Load the page again.").min(1, "Load the page again.").max(190, "Load the page again."), {
+      error: "Tick the checks to carry over.",
+    })
     .min(1, "Tick the checks to carry over.")
-    .max(500),
+    .max(500, "Tick at most 500 checks at a time."),
 });
 
 export async function loader({ context, params }: Route.LoaderArgs) {

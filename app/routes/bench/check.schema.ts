@@ -1,4 +1,5 @@
 import { z } from "zod";
+import { lines, perhapsLines } from "~/engine/typed-text";
 import { severities } from "./severities";
 
 /** A number as people type it: comma or point, spaces around it. */
@@ -12,11 +13,11 @@ export const decimal = z
     return z.NEVER;
   });
 
-const text = (most: number) => z.string().trim().max(most, `At most ${most} characters.`).default("");
+const text = (most: number) => perhapsLines(most).default("");
 
 const answered = {
   act: z.literal("observe"),
-  key: z.string().min(1).max(190),
+  key: z.string("Load the page again.").min(1, "Load the page again.").max(190, "Load the page again."),
   /** The answer that the form was made on; empty when there was none. */
   latestId: z.number().int().positive().optional(),
   reason: text(1000),
@@ -29,8 +30,11 @@ export const observeSchema = z.discriminatedUnion("kind", [
     kind: z.literal("measured"),
     value: decimal,
     bound: z.enum(["shown", "over", "under"], { error: "Say what the display showed." }),
-    unit: z.string({ error: "Choose the unit." }).max(20),
-    instrumentId: z.number({ error: "Choose the instrument that you measured with." }).int().positive(),
+    unit: z.string({ error: "Choose the unit." }).max(20, "Choose the unit."),
+    instrumentId: z
+      .number({ error: "Choose the instrument that you measured with." })
+      .int("Choose the instrument that you measured with.")
+      .positive("Choose the instrument that you measured with."),
     conditions: text(500),
   }),
   z.object({
@@ -44,18 +48,14 @@ export const observeSchema = z.discriminatedUnion("kind", [
 export const findingSchema = z.object({
   act: z.literal("raise-finding"),
   /** The check that it hangs on; without one it hangs on an element. */
-  key: z.string().max(190).optional(),
+  key: z.string().max(190, "Load the page again.").optional(),
   severity: z.enum(severities, { error: "Say how bad it is." }),
-  element: z.string().max(40).optional(),
-  text: z.string({ error: "Say what is wrong." }).trim().min(1, "Say what is wrong.").max(4000),
+  element: z.string().max(40, "Choose one of the elements.").optional(),
+  text: lines("Say what is wrong.", 4000),
 });
 
 export const closingSchema = z.object({
   act: z.literal("close-finding"),
   finding: z.number().int().positive(),
-  text: z
-    .string({ error: "Say what you saw that lets you close it." })
-    .trim()
-    .min(1, "Say what you saw that lets you close it.")
-    .max(4000),
+  text: lines("Say what you saw that lets you close it.", 4000),
 });

@@ -1,4 +1,5 @@
 import { z } from "zod";
+import { lines } from "~/engine/typed-text";
 
 export const finishSchema = z.object({
   act: z.literal("finish"),
@@ -8,9 +9,5 @@ export const finishSchema = z.object({
 export const sendBackSchema = z.object({
   act: z.literal("send-back"),
   version: z.number().int().positive(),
-  reason: z
-    .string({ error: "Say why the unit goes back." })
-    .trim()
-    .min(1, "Say why the unit goes back.")
-    .max(2000),
+  reason: lines("Say why the unit goes back.", 2000),
 });

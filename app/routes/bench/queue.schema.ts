@@ -1,4 +1,5 @@
 import { z } from "zod";
+import { perhapsLines } from "~/engine/typed-text";
 
 /** Filters of the queue, as they stand in the address; anything unknown falls back to the default. */
 export const queueParamsSchema = z.object({
@@ -13,5 +14,5 @@ export const turnSchema = z.discriminatedUnion("act", [
   z.object({ act: z.literal("take"), ...turn }),
   z.object({ act: z.literal("release"), ...turn }),
   /** Puts it back for an inspector who is absent. */
-  z.object({ act: z.literal("reclaim"), ...turn, reason: z.string().trim().max(1000).default("") }),
+  z.object({ act: z.literal("reclaim"), ...turn, reason: perhapsLines(1000).default("") }),
 ]);

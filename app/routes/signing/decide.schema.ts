@@ -1,15 +1,22 @@
 import { z } from "zod";
+import { lines, passwordAgain, perhapsLines, perhapsOneLine } from "~/engine/typed-text";
 
 /** The tabs of the decision, as they stand in the address. */
 export const decisionKinds = ["sign", "refuse", "send-back"] as const;
 export type DecisionKind = (typeof decisionKinds)[number];
+/** Of the address: which tab stands open. */
 export const decisionKindSchema = z.enum(decisionKinds).catch("sign");
+/** Of a sent form: what isn't known is never taken for a signature. */
+export const sentDecisionSchema = z.enum(decisionKinds, "Say whether you sign, refuse or send back.");
 
-const version = z.number().int().positive();
-const text = (limit: number) => z.string().trim().max(limit, `At most ${limit} characters.`);
-const condition = text(500).default("");
+const version = z.number("Load the page again.").int("Load the page again.").positive("Load the page again.");
+const condition = perhapsLines(500).default("");
 
 const PNG_PREFIX = "data:image/png;base64,";
+
+function isBase64After(prefix: string) {
+  return (text: string) => z.base64().min(1).safeParse(text.slice(prefix.length)).success;
+}
 
 const signatureFields = {
   signatureMethod: z.enum(["drawn", "typed"], "Draw or type the signature."),
@@ -18,9 +25,10 @@ const signatureFields = {
     .string()
     .startsWith(PNG_PREFIX, "The drawing did not arrive as a picture. Draw it again.")
     .max(410_000, "The drawing is too large. Clear it and draw it again.")
+    .refine(isBase64After(PNG_PREFIX), "The drawing did not arrive whole. Draw it again.")
     .optional(),
-  typedName: text(120).optional(),
-  password: z.string("Type your password: it is asked for in the act.").min(1).max(200),
+  typedName: perhapsOneLine(120).optional(),
+  password: passwordAgain,
 };
 
 interface SignatureFields {
@@ -46,8 +54,8 @@ function signatureIsThere(value: SignatureFields, context: z.RefinementCtx) {
 export const signSchema = z
   .object({
     version,
-    statement: text(4000).min(10, "Say in a sentence what your signature states."),
-    departures: text(4000).optional(),
+    statement: lines("Say in a sentence what your signature states.", 4000, 10),
+    departures: perhapsLines(4000).optional(),
     place: condition,
     supply: condition,
     load: condition,
@@ -61,15 +69,15 @@ export const signSchema = z
 export const refuseSchema = z
   .object({
     version,
-    statement: text(4000).min(10, "Give the reasons: the builder must know what stands in the way."),
+    statement: lines("Give the reasons: the builder must know what stands in the way.", 4000, 10),
     ...signatureFields,
   })
   .superRefine(signatureIsThere);
 
 export const sendBackSchema = z.object({
   version,
-  reason: text(4000).min(10, "Say what stands in the way: the builder must know."),
-  severity: z.enum(["danger", "defect", "advice"]),
+  reason: lines("Say what stands in the way: the builder must know.", 4000, 10),
+  severity: z.enum(["danger", "defect", "advice"], "Say how grave it is."),
 });
 
 /** What the service is given of a signature that has passed the schema. */

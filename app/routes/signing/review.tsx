@@ -11,7 +11,7 @@ import { StateBadge } from "~/components/ui/state-badge";
 import { Time } from "~/components/ui/time";
 import { TitleBlock } from "~/components/ui/title-block";
 import { clientAddressContext } from "~/context";
-import { answerTo } from "~/middleware/answers.server";
+import { answerTo, refusal } from "~/middleware/answers.server";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
 import { type FormRefusal, refuseForm } from "~/middleware/form-refusal.server";
@@ -32,6 +32,7 @@ import {
   decisionKindSchema,
   refuseSchema,
   sendBackSchema,
+  sentDecisionSchema,
   signatureOf,
   signSchema,
 } from "./decide.schema";
@@ -111,7 +112,9 @@ export async function action({ request, context, params }: Route.ActionArgs) {
   // Not by the unit's state: the second of two clicks comes when it is signed already, and gets the first one's result.
   const { services, unit } = await authoriseUnit(context, "signing.decide", params.unit);
   const form = await readForm(request);
-  const act = decisionKindSchema.parse(form.get("act"));
+  const known = sentDecisionSchema.safeParse(form.get("act"));
+  if (!known.success) throw refusal(400, "Say whether you sign, refuse or send back. Nothing was decided.");
+  const act = known.data;
   if (unit.state === "awaiting_signature") await authoriseUnit(context, `signing.${act}`, params.unit);
   const common = { unitNumber: unit.number, address: context.get(clientAddressContext) };
   const archive = `/w/${params.workshop}/archive/${unit.number}`;

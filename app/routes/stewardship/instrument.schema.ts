@@ -1,8 +1,6 @@
 import { z } from "zod";
 import { instrumentKinds } from "~/engine/bench-check";
-
-const text = (missing: string, most: number) =>
-  z.string({ error: missing }).trim().min(1, missing).max(most, `At most ${most} characters.`);
+import { oneLine } from "~/engine/typed-text";
 
 /** A number as people type it, with comma or point. */
 const decimal = (missing: string) =>
@@ -21,7 +19,7 @@ const decimal = (missing: string) =>
 const calibration = {
   calibratedOn: z.iso.date({ error: "Enter the day of the calibration." }),
   calibrationDue: z.iso.date({ error: "Enter the last day on which it counts." }),
-  certificate: text("Enter the certificate’s number.", 120),
+  certificate: oneLine("Enter the certificate’s number.", 120),
 };
 
 const inOrder = ({ calibratedOn, calibrationDue }: { calibratedOn: string; calibrationDue: string }) =>
@@ -30,9 +28,9 @@ const outOfOrder = { path: ["calibrationDue"], error: "The last day lies before 
 
 export const addInstrumentSchema = z
   .object({
-    name: text("Enter what it is called in the workshop.", 120),
+    name: oneLine("Enter what it is called in the workshop.", 120),
     kind: z.enum(instrumentKinds, { error: "Choose what kind of instrument it is." }),
-    serial: text("Enter the serial number.", 80),
+    serial: oneLine("Enter the serial number.", 80),
     ...calibration,
   })
   .refine(inOrder, outOfOrder);

@@ -1,16 +1,18 @@
 import { z } from "zod";
+import { oneLine } from "~/engine/typed-text";
 
-const text = (missing: string, most: number) =>
-  z.string({ error: missing }).trim().min(1, missing).max(most, `At most ${most} characters.`);
 const day = (missing: string) => z.iso.date({ error: missing });
 
 export const addLicenceSchema = z
   .object({
     intent: z.literal("add"),
-    personId: z.number({ error: "Choose the electrician." }).int().positive(),
-    holderName: text("Enter the holder’s name as the licence says it.", 120),
-    number: text("Enter the licence’s number.", 60),
-    authority: text("Enter who issued it.", 120),
+    personId: z
+      .number({ error: "Choose the electrician." })
+      .int("Choose the electrician.")
+      .positive("Choose the electrician."),
+    holderName: oneLine("Enter the holder’s name as the licence says it.", 120),
+    number: oneLine("Enter the licence’s number.", 60),
+    authority: oneLine("Enter who issued it.", 120),
     validFrom: day("Enter the first day on which it counts."),
     validTo: day("Enter the last day on which it counts."),
     maxSupplyVolts: z

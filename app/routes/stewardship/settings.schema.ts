@@ -1,12 +1,9 @@
 import { z } from "zod";
+import { oneLine } from "~/engine/typed-text";
 
 const settings = {
-  name: z
-    .string({ error: "Enter the workshop’s name." })
-    .trim()
-    .min(1, "Enter the workshop’s name.")
-    .max(120, "At most 120 characters."),
-  timeZone: z.string({ error: "Choose the time zone." }).max(60),
+  name: oneLine("Enter the workshop’s name.", 120),
+  timeZone: z.string({ error: "Choose the time zone." }).max(60, "Choose the time zone."),
   accuracyPolicy: z.enum(["rect", "maker-k2"], { error: "Choose how accuracy becomes uncertainty." }),
   recheckMonths: z
     .number({ error: "Enter a whole number of months." })

@@ -1,8 +1,6 @@
 import { z } from "zod";
 import { parseAmount } from "~/components/parse-amount";
-
-const text = (missing: string, most: number) =>
-  z.string({ error: missing }).trim().min(1, missing).max(most, `At most ${most} characters.`);
+import { lines, oneLine } from "~/engine/typed-text";
 
 /** A number as typed; the bounds are those of the engine's facts. */
 function amount(missing: string, bounds: { above?: number; from?: number; most: number; unit: string }) {
@@ -33,9 +31,9 @@ const optional = <Value>(schema: z.ZodType<Value, string>) =>
     .transform((value) => value ?? null);
 
 export const unitFormSchema = z.object({
-  name: text("Give it a name that people in the workshop will recognise.", 120),
-  purpose: text("Say what it does and what it is for.", 1000),
-  placeOfUse: text("Say where it will be used.", 300),
+  name: oneLine("Give it a name that people in the workshop will recognise.", 120),
+  purpose: lines("Say what it does and what it is for.", 1000),
+  placeOfUse: oneLine("Say where it will be used.", 300),
   supplyVolts: amount("Enter the supply voltage.", { above: 0, most: 1000, unit: "V" }),
   supplyHertz: amount("Enter the supply frequency.", { above: 0, most: 1000, unit: "Hz" }),
   protectionClass: z.enum(["I", "II"], { error: "Choose the protection class." }),

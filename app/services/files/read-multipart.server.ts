@@ -17,7 +17,7 @@ export interface IncomingFile {
  * Reads a multipart form with one file, as a stream: `onFile` gets the file while it is still arriving. However that
  * ends, the request is read to its end, so that the sender hears the answer.
  *
- * @throws InvalidInputError: no multipart form (415), no file or an interrupted one (400), too large (413); and
+ * @throws InvalidInputError: no multipart form (415), no file, several or an interrupted one (400), too large (413); and
  *   whatever `onFile` throws
  */
 export async function readMultipart<T>(
@@ -27,6 +27,7 @@ export async function readMultipart<T>(
   const parser = openParser(request);
   const fields: Record<string, string> = {};
   let work: Promise<T> | undefined;
+  let excess = false;
 
   parser.on("field", (name, value) => {
     fields[name] = value;
@@ -42,7 +43,10 @@ export async function readMultipart<T>(
     file.on("limit", () => gate.destroy(tooLarge(PHOTO_BYTES)));
     file.on("error", (error) => gate.destroy(error));
     file.pipe(gate);
-    if (fieldName !== "file" || work) return void gate.destroy();
+    if (fieldName !== "file" || work) {
+      excess = true;
+      return void gate.destroy();
+    }
     work = onFile({ name: info.filename ?? "", stream: gate, fields }).finally(() => gate.destroy());
     // The outcome is awaited below, after the request has been read; until then nobody else listens.
     work.catch(() => undefined);
@@ -61,6 +65,10 @@ export async function readMultipart<T>(
     );
   }
   if (!work) throw new InvalidInputError("file", "Choose a file first.", 400);
+  if (excess) {
+    await work.catch(() => undefined);
+    throw new InvalidInputError("file", "Send one file at a time. Nothing was kept.", 400);
+  }
   return work;
 }
 
@@ -69,11 +77,22 @@ function openParser(request: Request): busboy.Busboy {
   if (!/^multipart\/form-data;.*boundary=/i.test(contentType)) {
     throw new InvalidInputError("file", "Files are sent as multipart/form-data.", 415);
   }
-  return busboy({
-    headers: { "content-type": contentType },
-    defParamCharset: "utf8",
-    limits: { files: 1, fileSize: PHOTO_BYTES, fields: 10, fieldSize: 4_000, fieldNameSize: 100, parts: 12 },
-  });
+  try {
+    return busboy({
+      headers: { "content-type": contentType },
+      defParamCharset: "utf8",
+      limits: {
+        files: 2,
+        fileSize: PHOTO_BYTES,
+        fields: 10,
+        fieldSize: 4_000,
+        fieldNameSize: 100,
+        parts: 13,
+      },
+    });
+  } catch {
+    throw new InvalidInputError("file", "The upload can't be read: its form is broken.", 400);
+  }
 }
 
 function stopAfter(limit: number): Transform {

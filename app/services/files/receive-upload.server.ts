@@ -6,6 +6,7 @@ import { z } from "zod";
 import { tables } from "~/db/client.server";
 import { fileSubjects } from "~/db/schema/units";
 import { deriveBenchSheet } from "~/engine/bench-sheet";
+import { perhapsOneLine } from "~/engine/typed-text";
 import type { ServiceContext } from "~/services/context.server";
 import {
   ConflictError,
@@ -41,7 +42,7 @@ const fieldsSchema = z
     subject: z.enum(fileSubjects),
     checkKey: z.string().min(1).max(190).optional(),
     findingId: z.coerce.number().int().positive().optional(),
-    caption: z.string().trim().max(300).default(""),
+    caption: perhapsOneLine(300).default(""),
   })
   .refine((fields) => (fields.subject === "check") === (fields.checkKey !== undefined), {
     path: ["checkKey"],
@@ -83,6 +84,7 @@ export async function receiveUpload(
   request: Request,
   store: ObjectStore = objectStore(),
 ): Promise<FileView> {
+  let kept: StoredFile | undefined;
   const { fields, stored } = await readMultipart(request, async (file) => {
     const fields = parseFields(file.fields);
     // Before a byte is decoded or stored: the sender may be somebody who may not add anything here.
@@ -92,7 +94,12 @@ export async function receiveUpload(
       unit,
     );
     if (!decision.allowed) throw new ForbiddenError(decision.reason);
-    return { fields, stored: await storeFile(context, file, store) };
+    kept = await storeFile(context, file, store);
+    return { fields, stored: kept };
+  }).catch(async (error: unknown) => {
+    // The request may be refused for what came after the file.
+    if (kept) await discard(store, kept);
+    throw error;
   });
   try {
     return await actOnUnit(context, actionForSubject[fields.subject], { unitNumber: unit.number }, (act) =>
