@@ -14,8 +14,11 @@ import type { Route } from "./+types/root";
 import stylesheet from "./app.css?url";
 import { ErrorPage } from "~/components/shell/error-page";
 import { PlainShell } from "~/components/shell/plain-shell";
+import { speakPlainly } from "~/components/schema-words";
 import { readTheme } from "~/components/shell/theme";
 import { sessionMiddleware } from "~/middleware/session.server";
+
+speakPlainly();
 
 export const middleware: Route.MiddlewareFunction[] = [sessionMiddleware];
 
