@@ -5,6 +5,7 @@ const ownLabels: Record<string, string> = {
   id: "Id",
   label: "Name",
   kind: "Kind",
+  example: "Starter’s example figures",
   from: "From",
   to: "To",
   area: "Cross-section",

@@ -24,26 +24,8 @@ const insulations = [
   { value: "none", label: "None: bare" },
 ];
 
-/** On a wide page one line a connection, under {@link ConductorHeader}; else two, each field with its own label. */
-const grid =
-  "grid grid-cols-2 items-start gap-x-1.5 gap-y-2 sm:grid-cols-4 xl:grid-cols-[3.75rem_minmax(0,1fr)_minmax(0,1fr)_5rem_10rem_7.25rem_5.25rem]";
-
-/** The headings of the one-line rows; the fields keep their own labels for assistive technology. */
-export function ConductorHeader() {
-  return (
-    <div
-      aria-hidden
-      className="flex gap-1 border-b border-rule bg-inset px-3 py-1.5 text-xs font-medium max-xl:hidden"
-    >
-      <div className={`${grid} min-w-0 flex-1`}>
-        {["Id", "From", "To", "Circuit", "Cross-section", "Length", "Insulation"].map((heading) => (
-          <span key={heading}>{heading}</span>
-        ))}
-      </div>
-      <span className="w-18" />
-    </div>
-  );
-}
+/** Two lines a connection: where it leads, then what limits its current; on a phone two fields a line. */
+const grid = "grid grid-cols-2 items-start gap-x-1.5 gap-y-2 sm:grid-cols-12";
 
 export interface ConductorRowProps {
   conductor: Conductor;
@@ -79,10 +61,11 @@ export const ConductorRow = memo(function ConductorRow({
         onAct({ type: "move", subject: "conductor", id, by: event.key === "ArrowUp" ? -1 : 1 });
       }}
     >
-      <div className={`${grid} min-w-0 flex-1 xl:[&_label]:sr-only`}>
+      <div className={`${grid} min-w-0 flex-1`}>
         <TextCell
           id={`${prefix}-id`}
           label="Id"
+          className="max-sm:col-span-full sm:col-span-2"
           remark={remarkOf(of("id"), false)}
           value={id}
           commitOnBlur
@@ -92,6 +75,7 @@ export const ConductorRow = memo(function ConductorRow({
         <TerminalCell
           id={`${prefix}-from`}
           label="From"
+          className="sm:col-span-5"
           remark={remarkOf(of("from"), false)}
           elements={elements}
           value={conductor.from}
@@ -100,6 +84,7 @@ export const ConductorRow = memo(function ConductorRow({
         <TerminalCell
           id={`${prefix}-to`}
           label="To"
+          className="sm:col-span-5"
           remark={remarkOf(of("to"), false)}
           elements={elements}
           value={conductor.to}
@@ -108,6 +93,7 @@ export const ConductorRow = memo(function ConductorRow({
         <ChoiceCell
           id={`${prefix}-circuit`}
           label="Circuit"
+          className="sm:col-span-2"
           hint="ELV is extra-low voltage: batteries and the output sides of supplies."
           remark={remarkOf(of("circuit"), false)}
           value={conductor.circuit}
@@ -126,6 +112,7 @@ export const ConductorRow = memo(function ConductorRow({
         <NumberCell
           id={`${prefix}-lengthM`}
           label="Length"
+          className="sm:col-span-3"
           unit="m"
           nullable
           remark={remarkOf(of("lengthM"), conductor.lengthM === null)}
@@ -136,6 +123,7 @@ export const ConductorRow = memo(function ConductorRow({
         <ChoiceCell
           id={`${prefix}-insulation`}
           label="Insulation"
+          className="sm:col-span-3"
           remark={remarkOf(of("insulation"), conductor.insulation === "unknown")}
           value={conductor.insulation}
           choices={insulations}
@@ -145,7 +133,7 @@ export const ConductorRow = memo(function ConductorRow({
           }}
         />
       </div>
-      <span className="flex flex-col pt-3 sm:flex-row xl:pt-0">
+      <span className="flex flex-col pt-3 sm:flex-row">
         <IconButton icon={Copy} label={`Duplicate ${id}`} onClick={() => onDuplicate(conductor)} />
         <IconButton
           icon={Trash2}
@@ -183,7 +171,7 @@ function AreaCell({
   const value = area === null ? null : "awg" in area ? area.awg : area.mm2;
   const make = (amount: number): Conductor["area"] => (shown === "awg" ? { awg: amount } : { mm2: amount });
   return (
-    <div className="col-span-2 flex min-w-0 items-start gap-1 xl:col-span-1">
+    <div className="col-span-2 flex min-w-0 items-start gap-1 sm:col-span-4">
       <NumberCell
         id={id}
         label="Cross-section"
@@ -207,7 +195,7 @@ function AreaCell({
             // 18 in one unit is nothing like 18 in the other: the number has to be entered anew.
             if (area !== null) onChange(null);
           }}
-          className="control-box mt-4 min-h-9 px-1 py-1 text-sm xl:mt-0 pointer-coarse:min-h-11"
+          className="control-box mt-4 min-h-9 px-1 py-1 text-sm pointer-coarse:min-h-11"
         >
           <option value="mm2">mm²</option>
           <option value="awg">AWG</option>
@@ -229,11 +217,13 @@ export function TerminalCell({
   remark,
   elements,
   value,
+  className,
   onChange,
 }: {
   id: string;
   label: string;
   remark: Remark | null;
+  className?: string;
   elements: EnergyMap["elements"];
   /** Null: nothing chosen yet. */
   value: TerminalReference | null;
@@ -246,7 +236,7 @@ export function TerminalCell({
       terminalsOf(element).some((terminal) => terminal.name === value.terminal),
   );
   return (
-    <Cell id={id} label={label} remark={remark} error={null}>
+    <Cell id={id} label={label} remark={remark} error={null} className={className}>
       {(describedBy) => (
         <select
           id={id}

@@ -1,11 +1,12 @@
 /** One element of the map as a row: a line that tells what is known, and the fields when it is open. */
-import { ChevronDown, ChevronRight, ChevronUp, Copy, Trash2, TriangleAlert } from "lucide-react";
+import { Check, ChevronDown, ChevronRight, ChevronUp, Copy, Trash2, TriangleAlert } from "lucide-react";
 import { memo, type KeyboardEvent } from "react";
 import { elementKinds, type FieldDescriptor } from "~/engine/elements";
 import { elementSchema, idSchema, type Element } from "~/engine/energy-map";
 import type { Problem } from "~/engine/problem";
 import { ChoiceCell, EditorField, remarkOf, TextCell } from "./map-editor-field";
 import type { EditorAction } from "./map-editor-state";
+import { Button } from "./ui/button";
 import { IconButton } from "./ui/icon-button";
 
 export interface ElementRowProps {
@@ -65,6 +66,11 @@ export const ElementRow = memo(function ElementRow({
               {element.label || <span className="text-ink-soft italic">no name</span>}
             </span>
             <span className="text-sm text-ink-soft"> · {kind.label}</span>
+            {element.example ? (
+              <span className="ml-2 inline-block border border-defect px-1.5 text-sm font-medium text-defect">
+                example figures
+              </span>
+            ) : null}
             <span className="block truncate text-sm text-ink-soft tabular-nums">
               {summaryOf(data, fields)}
             </span>
@@ -99,6 +105,22 @@ export const ElementRow = memo(function ElementRow({
       {open ? (
         <div id={bodyId} className="border-t border-rule bg-inset/50 px-3 pt-2 pb-4">
           <p className="mb-2 text-sm text-ink-soft">{kind.hint}</p>
+          {element.example ? (
+            <div className="mb-3 flex flex-wrap items-center gap-3">
+              <p className="text-sm font-medium text-defect">
+                These are the starter’s example figures. Enter what is marked on your part, or confirm that
+                they are the same.
+              </p>
+              <Button
+                type="button"
+                icon={Check}
+                aria-label={`These are my part’s figures: ${id}`}
+                onClick={() => onAct({ type: "confirm-figures", id })}
+              >
+                These are my part’s figures
+              </Button>
+            </div>
+          ) : null}
           <div className="grid grid-cols-2 items-start gap-x-3 gap-y-3 sm:grid-cols-[repeat(auto-fill,minmax(10.5rem,1fr))]">
             <TextCell
               id={`element-${id}-id`}

@@ -153,7 +153,7 @@ export function NumberCell({
                 setDraft(null);
                 onChange(null);
               }}
-              className="ml-1 inline-flex min-w-9 shrink-0 items-center justify-center rounded-sm border border-rule text-ink-soft hover:border-ink-soft hover:text-ink aria-pressed:border-unknown aria-pressed:border-dashed aria-pressed:bg-unknown-wash aria-pressed:text-unknown pointer-coarse:min-w-11"
+              className="ml-1 inline-flex min-w-7 shrink-0 items-center justify-center rounded-sm border border-rule text-ink-soft hover:border-ink-soft hover:text-ink aria-pressed:border-unknown aria-pressed:border-dashed aria-pressed:bg-unknown-wash aria-pressed:text-unknown pointer-coarse:min-w-11"
             >
               <CircleHelp aria-hidden size={17} />
               <span className="sr-only">{cell.label}: not known</span>

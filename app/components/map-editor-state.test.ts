@@ -1,7 +1,9 @@
 import { describe, expect, test } from "vitest";
 import { energyMapSchema, type EnergyMap } from "~/engine/energy-map";
 import { mapOf, part, wire } from "~/engine/map-builder";
+import { mapProblems } from "~/engine/problems";
 import {
+  asExample,
   editMap,
   type EditorAction,
   type EditorState,
@@ -112,5 +114,46 @@ describe("the circuit that two terminals suggest", () => {
     expect(
       suggestCircuit(bare, { element: "F1", terminal: "1" }, { element: "F2", terminal: "1" }),
     ).toBeNull();
+  });
+});
+
+describe("a starter's example figures", () => {
+  const facts = { supplyVolts: 230, supplyHertz: 50, protectionClass: "II" } as const;
+  const marked = (state: EditorState) =>
+    state.map.elements.filter(({ example }) => example).map(({ id }) => id);
+  const from = (...actions: EditorAction[]) => actions.reduce(editMap, startEditing(asExample(map())));
+
+  test("stand in the way of submitting until each is confirmed or changed", () => {
+    expect(marked(from())).toEqual(["X1", "F1", "S1"]);
+    expect(energyMapSchema.safeParse(from().map).success).toBe(true);
+    const state = from(
+      { type: "confirm-figures", id: "X1" },
+      { type: "change-element", id: "S1", field: "gapMm", value: 3 },
+      { type: "change-element", id: "F1", field: "label", value: "Fuse" },
+    );
+    expect(marked(state)).toEqual(["F1"]);
+    const about = mapProblems(state.map, facts).filter(({ text }) => text.includes("example figures"));
+    expect(about).toEqual([
+      {
+        subject: { kind: "element", id: "F1" },
+        field: null,
+        text: "F1 (Fuse) still has the starter's example figures: enter or confirm those of the part itself.",
+        blocking: true,
+      },
+    ]);
+  });
+
+  test("can be confirmed all at once, which is one step back", () => {
+    const state = from({ type: "confirm-figures", id: null });
+    expect(state.map).toEqual(map());
+    expect(state.past.at(-1)?.what).toBe("All figures confirmed");
+    expect(marked(editMap(state, { type: "undo" }))).toEqual(["X1", "F1", "S1"]);
+  });
+
+  test("a value that is out of bounds, and one that confirms nothing, change nothing", () => {
+    const state = from();
+    expect(editMap(state, { type: "change-element", id: "F1", field: "ratingAmps", value: -1 })).toBe(state);
+    const own = startEditing(map());
+    expect(editMap(own, { type: "confirm-figures", id: null })).toBe(own);
   });
 });

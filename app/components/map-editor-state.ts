@@ -26,6 +26,8 @@ export type EditorAction =
   | { type: "move"; subject: Subject; id: string; by: -1 | 1 }
   | { type: "add-conductor"; conductor: Conductor }
   | { type: "change-conductor"; id: string; changes: Partial<Omit<Conductor, "id">> }
+  /** The figures are those of the part itself: of one element, or of all. */
+  | { type: "confirm-figures"; id: string | null }
   | { type: "replace"; map: EnergyMap; what: string }
   | { type: "undo" }
   | { type: "redo" };
@@ -111,6 +113,8 @@ function changeMap(map: EnergyMap, action: MapAction): EnergyMap {
           each.id === action.id ? { ...each, ...action.changes } : each,
         ),
       };
+    case "confirm-figures":
+      return confirmFigures(map, action.id);
     case "replace":
       return action.map;
   }
@@ -119,9 +123,28 @@ function changeMap(map: EnergyMap, action: MapAction): EnergyMap {
 function changeElement(map: EnergyMap, id: string, field: string, value: unknown): EnergyMap {
   const element = map.elements.find((each) => each.id === id);
   if (!element) return map;
-  const changed = elementSchema.safeParse({ ...element, [field]: value });
+  // Whoever enters a datum has the part at hand, and the row is theirs from then on; a name tells nothing of figures.
+  const base = field === "label" ? element : ownFigures(element);
+  const changed = elementSchema.safeParse({ ...base, [field]: value });
   if (!changed.success) return map;
   return { ...map, elements: map.elements.map((each) => (each.id === id ? changed.data : each)) };
+}
+
+/** A starter's map as the editor takes it: every figure in it is an example until somebody makes it their own. */
+export function asExample(map: EnergyMap): EnergyMap {
+  return { ...map, elements: map.elements.map((element) => ({ ...element, example: true })) };
+}
+
+function ownFigures(element: Element): Element {
+  const own = { ...element };
+  delete own.example;
+  return own;
+}
+
+function confirmFigures(map: EnergyMap, id: string | null): EnergyMap {
+  const marked = (each: Element) => each.example === true && (id === null || each.id === id);
+  if (!map.elements.some(marked)) return map;
+  return { ...map, elements: map.elements.map((each) => (marked(each) ? ownFigures(each) : each)) };
 }
 
 function rename(map: EnergyMap, subject: Subject, id: string, to: string): EnergyMap {
@@ -203,6 +226,8 @@ function describe(action: MapAction, map: EnergyMap): string {
       return `${action.as} copied from ${action.id}`;
     case "move":
       return `${action.id} moved`;
+    case "confirm-figures":
+      return action.id === null ? "All figures confirmed" : `Figures of ${action.id} confirmed`;
     case "replace":
       return action.what;
     case "remove": {

@@ -12,10 +12,11 @@ import type { ElementKind } from "~/engine/energy-map";
 import type { Problem } from "~/engine/problem";
 import type { RuleSet } from "~/engine/rule-set";
 import type { UnitFacts } from "~/engine/unit-facts";
-import { AddConductor, ConductorHeader, ConductorRow, focusSoon } from "./map-editor-conductor";
+import { AddConductor, ConductorRow, focusSoon } from "./map-editor-conductor";
 import { ElementRow } from "./map-editor-element";
 import { isTaken, nextElementId, nextId } from "./map-editor-state";
 import { AddElement } from "./map-add-element";
+import { ConfirmFigures } from "./map-confirm-figures";
 import { MapDiagram } from "./map-diagram";
 import { KeptNotice } from "./map-kept-notice";
 import { ProblemList } from "./map-problem-list";
@@ -168,6 +169,10 @@ export function MapEditor({ facts, ruleSet, exportName, onContinue, ...draftOpti
           lead="Where energy comes from, what it passes and where it ends."
           flush
         >
+          <ConfirmFigures
+            count={map.elements.filter((element) => element.example).length}
+            onConfirm={() => act({ type: "confirm-figures", id: null })}
+          />
           {map.elements.length === 0 ? (
             <p className="px-4 py-4 text-ink-soft">No element yet. Begin with where the energy enters.</p>
           ) : (
@@ -200,7 +205,6 @@ export function MapEditor({ facts, ruleSet, exportName, onContinue, ...draftOpti
           lead="Each conductor from terminal to terminal, with what limits its current."
           flush
         >
-          {map.conductors.length > 0 ? <ConductorHeader /> : null}
           <ol>
             {map.conductors.map((conductor) => (
               <ConductorRow

@@ -4,6 +4,7 @@ import { useId, useState } from "react";
 import type { EnergyMap } from "~/engine/energy-map";
 import { starterMaps } from "~/engine/starter-maps";
 import { EnergyDiagram } from "./energy-diagram";
+import { asExample } from "./map-editor-state";
 import { importMap } from "./map-import";
 import { Button } from "./ui/button";
 import { Dialog } from "./ui/dialog";
@@ -19,14 +20,15 @@ export function MapStart({ onStart, onBlank }: MapStartProps) {
     <div className="space-y-4">
       <p className="max-w-prose">
         Begin with the starter that comes closest and change it to what you built. Its figures are examples:
-        replace every one by what is marked on your parts, and mark as not known what you don’t know.
+        replace every one by what is marked on your parts, and mark as not known what you don’t know. Until
+        you have entered or confirmed those of a part, the map can’t be submitted.
       </p>
       <ul className="grid gap-3 sm:grid-cols-2 xl:grid-cols-3">
         {starterMaps.map((starter) => (
           <li key={starter.key}>
             <button
               type="button"
-              onClick={() => onStart(starter.map, `Started from “${starter.title}”`)}
+              onClick={() => onStart(asExample(starter.map), `Started from “${starter.title}”`)}
               className="flex h-full w-full flex-col border border-rule-strong bg-sheet text-left hover:border-copper hover:bg-copper-wash/40"
             >
               <span

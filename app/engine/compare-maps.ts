@@ -119,7 +119,8 @@ function touchedBy(changes: MapChange[], before: EnergyMap, after: EnergyMap): M
   const mark = (id: string, by: string) => touched.set(id, (touched.get(id) ?? new Set()).add(by));
   const conductors = [...before.conductors, ...after.conductors];
   for (const { subject, id, fields, change } of changes) {
-    if (change === "changed" && fields.every(({ field }) => field === "label")) continue;
+    if (change === "changed" && fields.every(({ field }) => field === "label" || field === "example"))
+      continue;
     mark(id, id);
     for (const { id: conductor, from, to } of conductors) {
       if (subject === "conductor" ? conductor === id : from.element === id || to.element === id) {

@@ -1,4 +1,5 @@
 import { z } from "zod";
+import { tooLong, toOneLine } from "./typed-text";
 
 /**
  * The energy map: a one-line description of where energy comes from, what it passes and where it ends.
@@ -16,7 +17,15 @@ export const idSchema = z
 export const triState = z.enum(["yes", "no", "unknown"]);
 export type TriState = z.infer<typeof triState>;
 
-const label = z.string().max(80);
+const label = z
+  .string("Write a text.")
+  .max(80, tooLong(80))
+  .refine((text) => toOneLine(text) === text, "Write it in one line, without hidden signs.");
+/** The data come from a starter, and nobody has said yet that they are those of the part itself. */
+const example = z
+  .literal(true)
+  .optional()
+  .describe("The figures are a starter's example and not yet those of the part itself.");
 /** A quantity above nought, or `null` when nobody knows it. */
 const quantity = z.number().positive().max(1e7).nullable();
 /** A rating that a maker may not give at all: 0 says "the maker states none", `null` says "not known". */
@@ -28,7 +37,7 @@ export type InsulationGrade = z.infer<typeof insulationGrade>;
 const supplyKind = z.enum(["mains", "dc"]);
 
 function element<Kind extends string, Shape extends z.ZodRawShape>(kind: Kind, shape: Shape) {
-  return z.strictObject({ id: idSchema, label, kind: z.literal(kind), ...shape });
+  return z.strictObject({ id: idSchema, label, kind: z.literal(kind), example, ...shape });
 }
 
 const overcurrentRatings = {

@@ -13,7 +13,7 @@ export function part<Kind extends ElementKind>(
   kind: Kind,
   id: string,
   label: string,
-  data: Partial<Omit<ElementOf<Kind>, "id" | "label" | "kind">> = {},
+  data: Partial<Omit<ElementOf<Kind>, "id" | "label" | "kind" | "example">> = {},
 ): Element {
   return elementSchema.parse({ ...newElement(kind, id), ...data, label });
 }

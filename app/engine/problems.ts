@@ -107,6 +107,13 @@ function elementProblems(element: Element, map: EnergyMap): Problem[] {
   const about = (field: string | null, text: string, blocking: boolean) =>
     problems.push({ subject: { kind: "element", id: element.id }, field, text, blocking });
   if (element.label.trim() === "") about("label", `${element.id} has no name.`, true);
+  if (element.example) {
+    about(
+      null,
+      `${nameOf(element)} still has the starter's example figures: enter or confirm those of the part itself.`,
+      true,
+    );
+  }
 
   const data: Record<string, unknown> = { ...element };
   const fields: FieldDescriptor[] = elementKinds[element.kind].fields;

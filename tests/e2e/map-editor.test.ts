@@ -60,6 +60,30 @@ test("drawing, answers and what is missing follow while one types; undo brings t
   expect(await rating.inputValue()).toBe("1");
 });
 
+test("a starter's figures are examples until they are confirmed or entered, row by row", async () => {
+  const builder = await signIn(browser, server(), "Bruna");
+  const { page } = builder;
+  await makeUnit(builder, lamp);
+  await page.getByRole("button", { name: /^Mains LED lamp/ }).click();
+  const still = (id: string) =>
+    page.getByRole("button", { name: new RegExp(`^${id} .*still has the starter's example figures`) });
+  await still("F1").waitFor();
+  await still("S1").waitFor();
+  await openRow(page, "F1");
+  await expectNoAxeViolations(page);
+  await row(page, "F1").getByRole("button", { name: "These are my part’s figures: F1" }).click();
+  await still("F1").waitFor({ state: "detached" });
+  await openRow(page, "S1");
+  await row(page, "S1").getByLabel("Contact gap", { exact: true }).fill("3.5");
+  await still("S1").waitFor({ state: "detached" });
+  expect(await row(page, "S1").getByText("example figures").count()).toBe(0);
+  await saved(page);
+  // The mark is part of the map: the server keeps it.
+  await page.reload();
+  await still("X1").waitFor();
+  expect(await still("F1").count()).toBe(0);
+});
+
 test("rows are added, joined, duplicated and removed by keyboard alone", async () => {
   const { page } = await atLampMap();
   await page.getByLabel("New element").focus();

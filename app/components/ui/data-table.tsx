@@ -1,6 +1,6 @@
 /**
- * A table to compare in: dense, sortable by links that keep the address's other parameters, and on phones a stack of
- * cards in which every datum carries its heading.
+ * A table to compare in: dense, sortable by links that keep the address's other parameters, and on phones and tablets
+ * held upright (the "cards" variant of app.css) a stack of cards in which every datum carries its heading.
  *   <DataTable
  *     caption="Units in the queue" rows={units} rowKey={(unit) => unit.id} rowHref={(unit) => `/units/${unit.id}`}
  *     sort={sort}
@@ -26,7 +26,7 @@ export interface Column<Row> {
   descendingFirst?: boolean;
   /** Right-aligned, tabular figures. */
   numeric?: boolean;
-  /** Names the row: a row header, and the head of the card on a phone. */
+  /** Names the row: a row header, and the head of the card. */
   primary?: boolean;
   /** Keeps the heading for assistive technology only (columns of buttons). */
   hideHeader?: boolean;
@@ -60,17 +60,17 @@ export function DataTable<Row>({
   const sortable = columns.some((column) => column.sortable);
   if (rows.length === 0 && empty) return <>{empty}</>;
   return (
-    // Explicit roles: the phone layout changes `display`, which would take a table's meaning away in some browsers.
+    // Explicit roles: the layout as cards changes `display`, which would take a table's meaning away in some browsers.
     // The box around it scrolls a wide table sideways, and holds what is placed absolutely inside.
     <div className="relative overflow-x-auto">
-      <table role="table" className="w-full border-collapse text-sm max-sm:block">
-        <caption className={showCaption ? "px-3 py-2 text-left font-semibold max-sm:block" : "sr-only"}>
+      <table role="table" className="w-full border-collapse text-sm cards:block">
+        <caption className={showCaption ? "px-3 py-2 text-left font-semibold cards:block" : "sr-only"}>
           {caption}
         </caption>
-        <thead role="rowgroup" className="max-sm:block">
+        <thead role="rowgroup" className="cards:block">
           <tr
             role="row"
-            className={`border-b-2 border-rule-strong bg-inset text-left max-sm:flex max-sm:flex-wrap max-sm:gap-x-4 max-sm:px-3 ${sortable ? "max-sm:border-b" : "max-sm:border-0"}`}
+            className={`border-b-2 border-rule-strong bg-inset text-left cards:flex cards:flex-wrap cards:gap-x-4 cards:px-3 ${sortable ? "cards:border-b" : "cards:border-0"}`}
           >
             {columns.map((column) => {
               const current = sort?.by === column.id ? sort.direction : null;
@@ -82,14 +82,14 @@ export function DataTable<Row>({
                   aria-sort={current === null ? undefined : current === "asc" ? "ascending" : "descending"}
                   className={
                     `px-2 py-2 align-bottom lg:px-3 font-semibold ${column.numeric ? "text-right" : ""} ` +
-                    (column.sortable ? "max-sm:px-0 max-sm:py-0" : "max-sm:sr-only")
+                    (column.sortable ? "cards:px-0 cards:py-0" : "cards:sr-only")
                   }
                 >
                   {column.sortable ? (
                     <Link
                       to={sortHref(params, column.id, sort, column.descendingFirst)}
                       preventScrollReset
-                      className="inline-flex items-center gap-1 underline-offset-4 hover:text-copper hover:underline max-sm:min-h-11"
+                      className="inline-flex items-center gap-1 underline-offset-4 hover:text-copper hover:underline cards:min-h-11"
                     >
                       <span className={column.hideHeader ? "sr-only" : ""}>{column.header}</span>
                       <SortIcon direction={current} />
@@ -102,7 +102,7 @@ export function DataTable<Row>({
             })}
           </tr>
         </thead>
-        <tbody role="rowgroup" className="max-sm:block">
+        <tbody role="rowgroup" className="cards:block">
           {rows.map((row) => (
             <TableRow key={rowKey(row)} row={row} columns={columns} href={rowHref?.(row) ?? null} />
           ))}
@@ -117,22 +117,22 @@ function TableRow<Row>({ row, columns, href }: { row: Row; columns: Column<Row>[
     <tr
       role="row"
       className={
-        "border-b border-rule max-sm:block max-sm:px-3 max-sm:py-3 " +
+        "border-b border-rule cards:grid cards:gap-x-6 cards:px-3 cards:py-3 sm:grid-cols-2 " +
         (href ? "relative hover:bg-copper-wash/60 has-focus-visible:bg-copper-wash/60" : "")
       }
     >
       {columns.map((column) => {
         const content = column.cell(row);
         const cellClass =
-          `px-2 py-2 align-middle lg:px-3 ${column.numeric ? "text-right tabular-nums max-sm:text-left" : ""} ` +
-          `${column.nowrap ? "whitespace-nowrap" : ""} max-sm:flex max-sm:gap-3 max-sm:px-0 max-sm:py-1`;
+          `px-2 py-2 align-middle lg:px-3 ${column.numeric ? "text-right tabular-nums cards:text-left" : ""} ` +
+          `${column.nowrap ? "whitespace-nowrap" : ""} cards:flex cards:gap-3 cards:px-0 cards:py-1`;
         if (column.primary) {
           return (
             <th
               key={column.id}
               role="rowheader"
               scope="row"
-              className={`${cellClass} text-left font-semibold max-sm:text-base ${column.numeric || column.nowrap ? "" : "sm:min-w-32"}`}
+              className={`${cellClass} text-left font-semibold cards:col-span-full cards:text-base ${column.numeric || column.nowrap ? "" : "lg:min-w-32"}`}
             >
               {href ? (
                 // The stretched pseudo-element makes the whole row a target; the link's name stays short.
@@ -151,7 +151,7 @@ function TableRow<Row>({ row, columns, href }: { row: Row; columns: Column<Row>[
         return (
           <td key={column.id} role="cell" className={cellClass}>
             {column.hideHeader ? null : (
-              <span aria-hidden className="legend-text hidden w-28 shrink-0 pt-0.5 max-sm:block">
+              <span aria-hidden className="legend-text hidden w-28 shrink-0 pt-0.5 cards:block">
                 {column.header}
               </span>
             )}

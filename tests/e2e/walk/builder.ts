@@ -33,9 +33,16 @@ export async function makeUnit(builder: Person, unit: NewUnit): Promise<number> 
   return Number(/units\/(\d+)\/map$/.exec(page.url().slice(home.length))?.[1]);
 }
 
-/** Begins the map from a starter, and waits until it is on the server. */
+/** Begins the map from a starter, takes its figures for those of the parts, and waits until it is on the server. */
 export async function startMap({ page }: Person, starter: string): Promise<void> {
   await page.getByRole("button", { name: new RegExp(`^${starter}`) }).click();
+  await page
+    .getByRole("button", { name: /still has the starter's example figures/ })
+    .first()
+    .waitFor();
+  await expectNoAxeViolations(page);
+  await page.getByRole("button", { name: "All figures are my parts’…" }).click();
+  await page.getByRole("button", { name: "I have looked: they are" }).click();
   await page
     .getByRole("status")
     .filter({ hasText: /^Saved / })
