@@ -106,6 +106,17 @@ async function read(store: ObjectStore, key: string | null): Promise<Buffer> {
   return buffer((await store.get(key)).body);
 }
 
+test("a second file in one upload is refused, and the first isn't kept either", async () => {
+  const form = new FormData();
+  form.append("subject", "unit");
+  for (const name of ["one.jpg", "two.jpg"]) {
+    form.append("file", new Blob([bytesOf(await makeJpeg())], { type: "image/jpeg" }), name);
+  }
+  const refusal = await refusalOf(new Request("http://mainsgate.test/files", { method: "POST", body: form }));
+  expect(refusal).toBeInstanceOf(InvalidInputError);
+  expect(refusal).toMatchObject({ status: 400, message: "Send one file at a time. Nothing was kept." });
+});
+
 describe("a photo", () => {
   test("is kept upright, without metadata or position, in two sizes, and its hash is that of the kept bytes", async () => {
     const { workshop, unit } = await setUp();
