@@ -43,7 +43,20 @@ function words(state: SaveState) {
     case "conflict":
       return "Not saved: the map was changed elsewhere";
     case "refused":
-      return `Not saved. ${state.message} What you typed is still on this device.`;
+      return (
+        <>
+          {`Not saved. ${state.message} What you typed is still on this device.`}
+          {state.signedOut ? (
+            <>
+              {" "}
+              <a href="/sign-in" target="_blank" rel="noreferrer" className="text-link">
+                Sign in in a new tab
+              </a>
+              , then load this page again.
+            </>
+          ) : null}
+        </>
+      );
   }
 }
 

@@ -10,13 +10,13 @@ export type SaveState =
   /** Saved elsewhere meanwhile: a person must choose. */
   | { kind: "conflict"; theirs: EnergyMap; edition: number; message: string }
   /** The server won't take it (the unit has moved on, or the session ended); what was typed stays on this device. */
-  | { kind: "refused"; message: string };
+  | { kind: "refused"; message: string; signedOut?: boolean };
 
 export type PutAnswer =
   | { kind: "saved"; edition: number; at: string }
   | { kind: "conflict"; theirs: EnergyMap; edition: number; message: string }
   | { kind: "later"; message: string }
-  | { kind: "refused"; message: string };
+  | { kind: "refused"; message: string; signedOut?: boolean };
 
 export interface MapSaver {
   /** Tells of a change; it is saved after a short pause in typing. */

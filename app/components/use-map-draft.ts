@@ -114,5 +114,5 @@ async function putMap(
   if (result.status === 0 || result.status === 429 || result.status >= 500) {
     return { kind: "later", message: result.message };
   }
-  return { kind: "refused", message: result.message };
+  return { kind: "refused", message: result.message, signedOut: result.status === 401 };
 }

@@ -12,6 +12,7 @@ import { LinkButton } from "~/components/ui/link-button";
 import { PageHeader } from "~/components/ui/page-header";
 import { Sheet } from "~/components/ui/sheet";
 import { TextareaField } from "~/components/ui/textarea-field";
+import { useKeptForm } from "~/components/use-kept-form";
 import { clientAddressContext } from "~/context";
 import { authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
@@ -60,10 +61,14 @@ export const meta: Route.MetaFunction = ({ loaderData }) => [
   { title: loaderData ? `Withdraw unit ${loaderData.unit.number} · Mainsgate` : "Withdraw · Mainsgate" },
 ];
 
+/** What this tab keeps until the form was taken. */
+const keptFields = ["reason"];
+
 export default function Withdraw({ loaderData, actionData, params }: Route.ComponentProps) {
   const { unit } = loaderData;
   const archive = `/w/${params.workshop}/archive`;
   const pending = useNavigation().formMethod === "POST";
+  const kept = useKeptForm("withdraw", keptFields);
   const [form, fields] = useForm({
     id: "withdraw",
     lastResult: actionData,
@@ -83,10 +88,11 @@ export default function Withdraw({ loaderData, actionData, params }: Route.Compo
       />
       <PageHeader kicker={`Unit ${unit.number}`} title={`Withdraw the signature on ${unit.name}`} />
       <Sheet>
-        <Form method="post" {...getFormProps(form)} className="max-w-2xl space-y-5">
+        <Form method="post" {...getFormProps(form)} ref={kept.ref} className="max-w-2xl space-y-5">
           {actionData?.conflict ? (
             <ConflictNotice message={actionData.conflict} reloadHref={`${archive}/${unit.number}`} />
           ) : null}
+          {kept.notice}
           <FormErrorSummary
             form={form}
             labels={{ reason: "Reason", password: "Password" }}

@@ -4,6 +4,7 @@ import { data, Form, useNavigation, useSearchParams } from "react-router";
 import { ConflictNotice } from "~/components/shell/conflict-notice";
 import { Badge } from "~/components/ui/badge";
 import { Button } from "~/components/ui/button";
+import { Caution } from "~/components/ui/caution";
 import { ConfirmDialog } from "~/components/ui/confirm-dialog";
 import { type Column, DataTable } from "~/components/ui/data-table";
 import { EmptyState } from "~/components/ui/empty-state";
@@ -60,7 +61,7 @@ export async function action({ request, context, params }: Route.ActionArgs) {
   const submission = parseWithZod(await readForm(request), { schema: turnSchema });
   if (submission.status !== "success") {
     return data(
-      { conflict: false, message: "The form was incomplete. Load the page again." },
+      { conflict: false, message: submission.error?.reason?.[0] ?? "Load the page again and try once more." },
       { status: 400 },
     );
   }
@@ -104,7 +105,13 @@ export default function BenchQueue({ loaderData, actionData }: Route.ComponentPr
       <PageHeader title="Bench" lead="Units that wait for an inspector, and what is on the bench now." />
       {actionData?.message ? (
         <div className="mb-5">
-          <ConflictNotice message={actionData.message} reloadHref={`/w/${slug}/bench`} />
+          {actionData.conflict ? (
+            <ConflictNotice message={actionData.message} reloadHref={`/w/${slug}/bench`} />
+          ) : (
+            <Caution title="The form could not be read, and nothing was changed">
+              {actionData.message}
+            </Caution>
+          )}
         </div>
       ) : null}
       {own.length > 0 ? <OwnBench units={own} slug={slug} /> : null}

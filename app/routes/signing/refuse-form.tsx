@@ -7,8 +7,12 @@ import { ConflictNotice } from "~/components/shell/conflict-notice";
 import { Button } from "~/components/ui/button";
 import { FormErrorSummary } from "~/components/ui/form-error-summary";
 import { TextareaField } from "~/components/ui/textarea-field";
+import { useKeptForm } from "~/components/use-kept-form";
 import type { FormRefusal } from "~/middleware/form-refusal.server";
 import { refuseSchema } from "./decide.schema";
+
+/** What this tab keeps until the form was taken. */
+const keptFields = ["statement"];
 
 export interface RefuseFormProps {
   version: number;
@@ -20,6 +24,7 @@ export interface RefuseFormProps {
 /** Refuses with reasons: the end of this unit's way, with a record of its own. */
 export function RefuseForm({ version, signer, result, reloadHref }: RefuseFormProps) {
   const pending = useNavigation().formData?.get("act") === "refuse";
+  const kept = useKeptForm("refuse", keptFields);
   const [form, fields] = useForm({
     id: "refuse",
     lastResult: result,
@@ -30,8 +35,9 @@ export function RefuseForm({ version, signer, result, reloadHref }: RefuseFormPr
     shouldRevalidate: "onInput",
   });
   return (
-    <Form method="post" {...getFormProps(form)} className="space-y-6">
+    <Form method="post" {...getFormProps(form)} ref={kept.ref} className="space-y-6">
       {result?.conflict ? <ConflictNotice message={result.conflict} reloadHref={reloadHref} /> : null}
+      {kept.notice}
       <FormErrorSummary
         form={form}
         labels={{

@@ -7,8 +7,12 @@ import { Button } from "~/components/ui/button";
 import { ChoiceGroupField } from "~/components/ui/choice-group-field";
 import { FormErrorSummary } from "~/components/ui/form-error-summary";
 import { TextareaField } from "~/components/ui/textarea-field";
+import { useKeptForm } from "~/components/use-kept-form";
 import type { FormRefusal } from "~/middleware/form-refusal.server";
 import { sendBackSchema } from "./decide.schema";
+
+/** What this tab keeps until the form was taken. */
+const keptFields = ["reason", "severity"];
 
 export interface SendBackFormProps {
   version: number;
@@ -19,6 +23,7 @@ export interface SendBackFormProps {
 /** Sends the unit back to its builder with one more finding. */
 export function SendBackForm({ version, result, reloadHref }: SendBackFormProps) {
   const pending = useNavigation().formData?.get("act") === "send-back";
+  const kept = useKeptForm("send-back", keptFields);
   const [form, fields] = useForm({
     id: "send-back",
     lastResult: result,
@@ -29,8 +34,9 @@ export function SendBackForm({ version, result, reloadHref }: SendBackFormProps)
     shouldRevalidate: "onInput",
   });
   return (
-    <Form method="post" {...getFormProps(form)} className="space-y-6">
+    <Form method="post" {...getFormProps(form)} ref={kept.ref} className="space-y-6">
       {result?.conflict ? <ConflictNotice message={result.conflict} reloadHref={reloadHref} /> : null}
+      {kept.notice}
       <FormErrorSummary form={form} labels={{ reason: "Reason" }} title="It was not sent back" />
       <p className="max-w-prose">
         What you write becomes a finding: the builder answers it in a new revision, an inspector closes it,

@@ -9,9 +9,22 @@ import { Caution } from "~/components/ui/caution";
 import { FormErrorSummary } from "~/components/ui/form-error-summary";
 import { InputField } from "~/components/ui/input-field";
 import { TextareaField } from "~/components/ui/textarea-field";
+import { useKeptForm } from "~/components/use-kept-form";
 import type { FormRefusal } from "~/middleware/form-refusal.server";
 import { usualStatement } from "~/services/signing/signing-rules";
 import { signSchema } from "./decide.schema";
+
+/** What this tab keeps until the form was taken. */
+const keptFields = [
+  "statement",
+  "departures",
+  "place",
+  "supply",
+  "load",
+  "supervision",
+  "other",
+  "recheckOn",
+];
 
 export interface SignFormProps {
   version: number;
@@ -35,6 +48,7 @@ export function SignForm({
   proposal,
 }: SignFormProps) {
   const pending = useNavigation().formData?.get("act") === "sign";
+  const kept = useKeptForm("sign", keptFields);
   const [form, fields] = useForm({
     id: "sign",
     lastResult: result,
@@ -51,8 +65,9 @@ export function SignForm({
     shouldRevalidate: "onInput",
   });
   return (
-    <Form method="post" {...getFormProps(form)} className="space-y-6">
+    <Form method="post" {...getFormProps(form)} ref={kept.ref} className="space-y-6">
       {result?.conflict ? <ConflictNotice message={result.conflict} reloadHref={reloadHref} /> : null}
+      {kept.notice}
       <FormErrorSummary form={form} labels={signLabels} title="It was not signed" />
       <input type="hidden" name="act" value="sign" />
       <input type="hidden" name="version" value={version} />

@@ -10,7 +10,11 @@ import { InputField } from "~/components/ui/input-field";
 import { NumberField } from "~/components/ui/number-field";
 import { Sheet } from "~/components/ui/sheet";
 import { TextareaField } from "~/components/ui/textarea-field";
+import { useKeptForm } from "~/components/use-kept-form";
 import { unitFieldLabels as labels, unitFormSchema } from "./unit-form.schema";
+
+/** What this tab keeps until the form was taken. */
+const keptFields = Object.keys(labels);
 
 export interface UnitFormProps {
   lastResult: SubmissionResult | null | undefined;
@@ -25,6 +29,7 @@ export interface UnitFormProps {
 /** What is said about a unit beside its map: for a new one, and for changing it. */
 export function UnitForm({ lastResult, initial, version, submit, cancel }: UnitFormProps) {
   const busy = useNavigation().formMethod === "POST";
+  const kept = useKeptForm("unit", keptFields);
   const [form, fields] = useForm<z.input<typeof unitFormSchema>, z.output<typeof unitFormSchema>>({
     id: "unit",
     lastResult,
@@ -35,7 +40,8 @@ export function UnitForm({ lastResult, initial, version, submit, cancel }: UnitF
     shouldRevalidate: "onInput",
   });
   return (
-    <Form method="post" {...getFormProps(form)} className="space-y-5">
+    <Form method="post" {...getFormProps(form)} ref={kept.ref} className="space-y-5">
+      {kept.notice}
       <FormErrorSummary form={form} labels={labels} />
       {version === undefined ? null : <input type="hidden" name="version" value={version} />}
       <Sheet title="The unit">
