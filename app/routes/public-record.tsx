@@ -55,6 +55,11 @@ export default function PublicRecordPage({ loaderData: record }: Route.Component
               Recheck by <Day on={record.validity.recheckOn} />
             </p>
           ) : null}
+          {record.withdrawnOn ? (
+            <p className="mt-1 font-medium">
+              Withdrawn on <Day on={record.withdrawnOn} />
+            </p>
+          ) : null}
         </ValidityBanner>
         {record.conditions ? (
           <section aria-labelledby="conditions">

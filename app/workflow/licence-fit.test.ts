@@ -19,11 +19,11 @@ test.each(["2026-01-01", "2026-06-15", "2026-12-31"])("counts on %s", (day) => {
 test("does not count the day before it begins or the day after it ends, and says so", () => {
   expect(fitLicence([licence], lamp, "2025-12-31")).toEqual({
     kind: "not-in-date",
-    reasons: ["Licence E-1 (Test Authority) begins only on 2026-01-01."],
+    reasons: ["Licence E-1 (Test Authority) begins only on 1 Jan 2026."],
   });
   expect(fitLicence([licence], lamp, "2027-01-01")).toEqual({
     kind: "not-in-date",
-    reasons: ["Licence E-1 (Test Authority) lapsed: its last day was 2026-12-31."],
+    reasons: ["Licence E-1 (Test Authority) lapsed: its last day was 31 Dec 2026."],
   });
 });
 

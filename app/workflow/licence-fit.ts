@@ -1,3 +1,5 @@
+import { dayText } from "./day-text";
+
 /** What a licence allows and when. Dates are ISO days; both ends belong to it. */
 export interface LicenceTerms {
   number: string;
@@ -51,8 +53,9 @@ export function fitLicence<T extends LicenceTerms>(
 
 function objectionsToDate(licence: LicenceTerms, day: string): string[] {
   if (licence.revoked) return [`${name(licence)} has been revoked.`];
-  if (day < licence.validFrom) return [`${name(licence)} begins only on ${licence.validFrom}.`];
-  if (day > licence.validTo) return [`${name(licence)} lapsed: its last day was ${licence.validTo}.`];
+  if (day < licence.validFrom) return [`${name(licence)} begins only on ${dayText(licence.validFrom)}.`];
+  if (day > licence.validTo)
+    return [`${name(licence)} lapsed: its last day was ${dayText(licence.validTo)}.`];
   return [];
 }
 

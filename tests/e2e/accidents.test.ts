@@ -74,7 +74,9 @@ test("an electrician whose licence lapsed yesterday is told so, and gets no form
   await page.goto(`${home}/signing/${await numberOf(units.toSign)}`);
   await arrive(page, units.toSign);
   const guards = page.getByRole("region", { name: "Before a signature" });
-  await guards.getByText(/^Licence DEMO-5120 .* lapsed: its last day was \d{4}-\d\d-\d\d\./).waitFor();
+  await guards
+    .getByText(/^Licence DEMO-5120 .* lapsed: its last day was \d{1,2} [A-Z][a-z]{2} \d{4}\./)
+    .waitFor();
   const decision = page.getByRole("region", { name: "Decide" });
   await decision.getByText("It can’t be signed as it stands").waitFor();
   await decision

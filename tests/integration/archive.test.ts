@@ -80,6 +80,7 @@ describe("withdrawing", () => {
     expect(await findPublicRecord(db, publicCode, bench.clock.at)).toMatchObject({
       validity: { kind: "must-not-be-used", because: "withdrawn" },
       conditions: null,
+      withdrawnOn: "2026-05-04",
     });
     const mails = await db
       .select()
@@ -106,6 +107,7 @@ describe("the public page", () => {
         "unitName",
         "unitNumber",
         "validity",
+        "withdrawnOn",
         "workshopName",
       ].sort(),
     );
@@ -114,6 +116,7 @@ describe("the public page", () => {
       validity: { kind: "may-be-used", recheckOn: "2027-05-04" },
       conditions: { place: "Indoors", supply: "230 V" },
       decidedOn: "2026-05-04",
+      withdrawnOn: null,
     });
     const text = JSON.stringify(shown);
     for (const person of Object.values(bench.people)) {

@@ -150,7 +150,7 @@ test("an instrument out of calibration is refused in words, from the day after i
     field: "instrumentId",
     message: expect.stringContaining("Old meter") as string,
   });
-  await expect(late).rejects.toThrow("out of calibration since 2026-05-04");
+  await expect(late).rejects.toThrow("out of calibration since 4 May 2026");
   expect(await rowsOf(bench.unit.id)).toHaveLength(1);
 });
 

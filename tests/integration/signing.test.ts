@@ -159,7 +159,7 @@ describe("a guard stops the signature, in words:", () => {
     const bench = await makeReviewable(db, { licence: { validTo: "2026-05-05" } });
     // In Berlin it is half past midnight on 6 May, in UTC still the 5th.
     bench.clock.at = new Date("2026-05-05T22:30:00Z");
-    expect(await reasonsAgainst(bench)).toContain("lapsed: its last day was 2026-05-05");
+    expect(await reasonsAgainst(bench)).toContain("lapsed: its last day was 5 May 2026");
     bench.clock.at = new Date("2026-05-05T21:30:00Z");
     const electrician = bench.as("electrician");
     await signUnit(electrician, await signInput(electrician, bench.unit.number));

@@ -1,5 +1,6 @@
 import { expect, test } from "vitest";
-import { dayText, instantText } from "./instant-text";
+import { dayText } from "~/workflow/day-text";
+import { instantText } from "./instant-text";
 
 // Offsets by hand: Berlin is UTC+1 in winter and UTC+2 in summer (changes on the last Sundays of March and October at
 // 01:00 UTC); Kathmandu is UTC+5:45; Auckland is UTC+13 in December.

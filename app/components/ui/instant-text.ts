@@ -1,8 +1,9 @@
+import { months } from "~/workflow/day-text";
+
 /**
  * Dates in words. Written out here rather than by the browser's language data, since server and browser may carry
  * different versions of it and the page would then not match its own HTML. Only the time zone arithmetic is Intl's.
  */
-const months = ["Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"];
 
 export type InstantStyle = "date" | "date-time" | "date-time-seconds";
 
@@ -42,11 +43,4 @@ export function instantText(instant: Date, timeZone: string, style: InstantStyle
   if (style === "date") return date;
   const time = `${part("hour")}:${part("minute")}`;
   return style === "date-time" ? `${date}, ${time}` : `${date}, ${time}:${part("second")}`;
-}
-
-/** A calendar day without a time ("2027-03-07", as in licence and calibration dates) as text: "7 Mar 2027". */
-export function dayText(day: string): string {
-  const match = /^(\d{4})-(\d{2})-(\d{2})$/.exec(day);
-  const month = match ? months[Number(match[2]) - 1] : undefined;
-  return match && month ? `${Number(match[3])} ${month} ${match[1]}` : day;
 }

@@ -5,7 +5,8 @@
  * Loaders hand over dates as Date or as ISO text in UTC. Outside a provider the zone is UTC and is written out.
  */
 import { createContext, use, type ReactNode } from "react";
-import { dayText, instantText, type InstantStyle } from "./instant-text";
+import { dayText } from "~/workflow/day-text";
+import { instantText, type InstantStyle } from "./instant-text";
 
 const TimeZone = createContext<string | null>(null);
 

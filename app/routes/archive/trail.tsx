@@ -14,6 +14,7 @@ import { dayIn } from "~/services/context.server";
 import { archivedStates } from "~/workflow/states";
 import type { Route } from "./+types/trail";
 import { actWords } from "./act-words";
+import { detailWords } from "./detail-words";
 
 export async function loader({ context, params, url }: Route.LoaderArgs) {
   const { services, unit } = await authoriseUnit(context, "trail.read", params.unit);
@@ -41,10 +42,6 @@ export async function loader({ context, params, url }: Route.LoaderArgs) {
   };
 }
 
-function detailWords([name, value]: [string, unknown]) {
-  return { name, value: typeof value === "string" ? value : JSON.stringify(value) };
-}
-
 export const meta: Route.MetaFunction = ({ loaderData }) => [
   { title: loaderData ? `Trail of unit ${loaderData.unit.number} · Mainsgate` : "Trail · Mainsgate" },
 ];
@@ -66,7 +63,11 @@ export default function Trail({ loaderData, params }: Route.ComponentProps) {
       />
       <PageHeader
         kicker={`Unit ${unit.number}`}
-        title={`Trail of ${unit.name}`}
+        title={
+          <>
+            Trail of <bdi>{unit.name}</bdi>
+          </>
+        }
         badges={<StateBadge state={unit.state} standing={unit.standing} />}
         actions={<LinkButton to={home}>{unit.archived ? "The record" : "The unit"}</LinkButton>}
       />

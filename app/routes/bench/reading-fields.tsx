@@ -6,6 +6,7 @@ import { TextareaField } from "~/components/ui/textarea-field";
 import type { Ask } from "~/engine/bench-check";
 import { relatedUnits } from "~/engine/scaled-units";
 import type { BenchInstrument } from "~/services/bench/load-check.server";
+import { dayText } from "~/workflow/day-text";
 import { type AnswerDraft, isUsable } from "./answer-draft";
 
 type ReadingAsk = Extract<Ask, { kind: "reading" }>;
@@ -129,11 +130,11 @@ function boundOf(value: string): AnswerDraft["bound"] {
 function calibrationWords({ calibration, calibrationDue }: BenchInstrument): string {
   switch (calibration) {
     case "in-calibration":
-      return `in calibration until ${calibrationDue}`;
+      return `in calibration until ${dayText(calibrationDue)}`;
     case "due-soon":
-      return `in calibration, due ${calibrationDue}`;
+      return `in calibration, due ${dayText(calibrationDue)}`;
     case "overdue":
-      return `OUT OF CALIBRATION since ${calibrationDue}`;
+      return `OUT OF CALIBRATION since ${dayText(calibrationDue)}`;
     case "not-yet":
       return "calibration dated in the future";
     case "retired":

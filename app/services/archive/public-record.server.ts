@@ -5,7 +5,7 @@ import { dayIn } from "~/services/context.server";
 import { recordCautions } from "~/services/records/record-format";
 import { type UnitState, validity, type Validity } from "~/workflow/states";
 
-const { decisions, records, units, workshops } = tables;
+const { decisions, records, units, withdrawals, workshops } = tables;
 
 /** What anybody may see who scans a unit's code: how it stands and under which conditions. No person is named. */
 export interface PublicRecord {
@@ -21,6 +21,8 @@ export interface PublicRecord {
   departures: boolean;
   /** The day of the decision, in the workshop's calendar. */
   decidedOn: string;
+  /** The day of the withdrawal, in the workshop's calendar; null when it was not withdrawn. */
+  withdrawnOn: string | null;
   cautions: readonly string[];
 }
 
@@ -41,11 +43,13 @@ export async function findPublicRecord(db: Database, code: string, now: Date): P
       departures: decisions.departures,
       recheckOn: decisions.recheckOn,
       decidedAt: decisions.decidedAt,
+      withdrawnAt: withdrawals.at,
     })
     .from(records)
     .innerJoin(decisions, eq(decisions.id, records.decisionId))
     .innerJoin(units, eq(units.id, records.unitId))
     .innerJoin(workshops, eq(workshops.id, records.workshopId))
+    .leftJoin(withdrawals, eq(withdrawals.recordId, records.id))
     .where(eq(records.publicCode, code));
   if (!row) return null;
   const [latest] = await db
@@ -54,7 +58,7 @@ export async function findPublicRecord(db: Database, code: string, now: Date): P
     .where(eq(records.unitId, row.unitId))
     .orderBy(desc(records.id))
     .limit(1);
-  const { recordId, unitId: _, timeZone, recheckOn, decidedAt, ...shown } = row;
+  const { recordId, unitId: _, timeZone, recheckOn, decidedAt, withdrawnAt, ...shown } = row;
   // An earlier record of a unit that was decided on again says nothing about it any more.
   const state = latest?.id === recordId ? row.state : "superseded";
   const stands = validity(state, recheckOn, dayIn(timeZone, now));
@@ -65,6 +69,7 @@ export async function findPublicRecord(db: Database, code: string, now: Date): P
     state,
     validity: stands,
     decidedOn: dayIn(timeZone, decidedAt),
+    withdrawnOn: withdrawnAt && dayIn(timeZone, withdrawnAt),
     cautions: recordCautions,
   };
 }

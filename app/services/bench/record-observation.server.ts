@@ -9,6 +9,7 @@ import { ConflictError, InvalidInputError, NotFoundError } from "~/services/erro
 import { type Act, actOnUnit } from "~/services/unit-act.server";
 import { loadRevision } from "~/services/units/load-revision.server";
 import { calibrationState } from "~/workflow/calibration";
+import { dayText } from "~/workflow/day-text";
 import { beforeMains } from "./before-mains";
 import { loadSheet } from "./load-sheet.server";
 
@@ -210,12 +211,12 @@ async function requireInstrument(context: ServiceContext, tx: Transaction, id: n
     case "overdue":
       throw new InvalidInputError(
         "instrumentId",
-        `${named} is out of calibration since ${calibrationDue}. A reading with it proves nothing; take another instrument.`,
+        `${named} is out of calibration since ${dayText(calibrationDue)}. A reading with it proves nothing; take another instrument.`,
       );
     case "not-yet":
       throw new InvalidInputError(
         "instrumentId",
-        `${named} has its calibration dated ${calibratedOn}, which is still to come.`,
+        `${named} has its calibration dated ${dayText(calibratedOn)}, which is still to come.`,
       );
     case "in-calibration":
     case "due-soon":

@@ -8,6 +8,7 @@ import {
   uncertaintyWords,
   verdictWords,
 } from "~/services/records/record-words";
+import { dayText } from "~/workflow/day-text";
 import { heading, type Sign, table, type TableCell, type TableRow, paragraph } from "./blocks.server";
 import { doubtColor, failColor, ink, type Paper, passColor, soft } from "./paper.server";
 
@@ -82,7 +83,7 @@ function observationCell({ observation, earlier, ...check }: RecordCheck, timeZo
   if (uncertainty) under.push(uncertainty);
   if (observation.instrument) {
     const { name, serial, calibrationDue } = observation.instrument;
-    under.push(`${name}, no. ${serial}, calibrated until ${calibrationDue}`);
+    under.push(`${name}, no. ${serial}, calibrated until ${dayText(calibrationDue)}`);
   }
   if (observation.conditions !== "") under.push(observation.conditions);
   if (observation.reason)
