@@ -30,6 +30,7 @@ export function InputField({
       {(attributes) => (
         <input
           type="text"
+          dir="auto"
           minLength={field.minLength}
           maxLength={field.maxLength}
           pattern={field.pattern}

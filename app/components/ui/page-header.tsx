@@ -20,7 +20,9 @@ export function PageHeader({ title, kicker, lead, badges, actions }: PageHeaderP
       <div className="min-w-0">
         {kicker ? <p className="legend-text">{kicker}</p> : null}
         <div className="flex flex-wrap items-center gap-x-3 gap-y-1">
-          <h1 className="text-2xl sm:text-3xl">{title}</h1>
+          <h1 dir="auto" className="text-2xl sm:text-3xl">
+            {title}
+          </h1>
           {badges}
         </div>
         {lead ? <p className="mt-1 max-w-prose text-ink-soft">{lead}</p> : null}

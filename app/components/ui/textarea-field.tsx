@@ -25,6 +25,7 @@ export function TextareaField({
     <Field {...{ field, label, hint, size, optional, hideLabel, className }}>
       {(attributes) => (
         <textarea
+          dir="auto"
           rows={rows}
           minLength={field.minLength}
           maxLength={field.maxLength}

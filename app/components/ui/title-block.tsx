@@ -35,7 +35,7 @@ export function TitleBlock({
           className={`min-w-0 border-r border-b border-rule-strong px-3 py-2 ${item.wide ? "col-span-full" : ""}`}
         >
           <dt className="legend-text">{item.label}</dt>
-          <dd className={`mt-0.5 ${item.numeric ? "tabular-nums" : ""}`}>
+          <dd dir="auto" className={`mt-0.5 ${item.numeric ? "tabular-nums" : ""}`}>
             {item.value === null || item.value === undefined || item.value === "" ? (
               <span className="text-ink-soft italic">not known</span>
             ) : (

@@ -86,7 +86,14 @@ export default function Withdraw({ loaderData, actionData, params }: Route.Compo
           { label: "Withdraw" },
         ]}
       />
-      <PageHeader kicker={`Unit ${unit.number}`} title={`Withdraw the signature on ${unit.name}`} />
+      <PageHeader
+        kicker={`Unit ${unit.number}`}
+        title={
+          <>
+            Withdraw the signature on <bdi>{unit.name}</bdi>
+          </>
+        }
+      />
       <Sheet>
         <Form method="post" {...getFormProps(form)} ref={kept.ref} className="max-w-2xl space-y-5">
           {actionData?.conflict ? (

@@ -101,7 +101,9 @@ export default function Invitation({ loaderData, actionData }: Route.ComponentPr
   return (
     <PlainShell>
       <Sheet>
-        <h1 className="mb-2 text-2xl">Join {invitation.workshop.name}</h1>
+        <h1 className="mb-2 text-2xl">
+          Join <bdi>{invitation.workshop.name}</bdi>
+        </h1>
         <p>
           {invitation.email} is invited to {invitation.workshop.name} as:
         </p>

@@ -104,7 +104,11 @@ export default function Changes({ loaderData, actionData, params }: Route.Compon
         ]}
       />
       <PageHeader
-        kicker={`Unit ${unit.number}, ${unit.name}`}
+        kicker={
+          <>
+            Unit {unit.number}, <bdi>{unit.name}</bdi>
+          </>
+        }
         title={
           changes ? `What changed from revision ${unit.revision - 1} to ${unit.revision}` : "What changed"
         }

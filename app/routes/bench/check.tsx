@@ -180,7 +180,8 @@ export default function CheckPage({ loaderData, actionData, params }: Route.Comp
       <header className="mb-4 flex flex-wrap items-start justify-between gap-3 border-b border-rule-strong pb-3">
         <div className="min-w-0">
           <p className="legend-text">
-            {`Unit ${unit.number}, ${unit.name} · step ${index + 1} of ${total} · ${decided} decided`}
+            Unit {unit.number}, <bdi>{unit.name}</bdi>
+            {` · step ${index + 1} of ${total} · ${decided} decided`}
           </p>
           <h1 className="text-2xl sm:text-3xl">{check.title}</h1>
           <p className="text-ink-soft">{familyTitles[check.family]}</p>

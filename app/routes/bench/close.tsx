@@ -117,7 +117,11 @@ export default function CloseSheet({ loaderData, actionData, params }: Route.Com
         ]}
       />
       <PageHeader
-        kicker={`Unit ${unit.number}, ${unit.name}, revision ${unit.revision}`}
+        kicker={
+          <>
+            Unit {unit.number}, <bdi>{unit.name}</bdi>, revision {unit.revision}
+          </>
+        }
         title="Finish or send back"
         badges={<StateBadge state={unit.state} />}
         actions={<LinkButton to={base}>Whole sheet</LinkButton>}

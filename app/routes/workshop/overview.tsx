@@ -94,7 +94,16 @@ function nextStep(home: string, unit: OverviewUnit): string {
 }
 
 const unitColumns: Column<OverviewUnit>[] = [
-  { id: "unit", header: "Unit", primary: true, cell: (unit) => `${unit.number} · ${unit.name}` },
+  {
+    id: "unit",
+    header: "Unit",
+    primary: true,
+    cell: (unit) => (
+      <>
+        {unit.number} · <bdi>{unit.name}</bdi>
+      </>
+    ),
+  },
   {
     id: "state",
     header: "State",
@@ -171,7 +180,7 @@ function Expiring({ home, rows }: { home: string; rows: Route.ComponentProps["lo
         {rows.map((row) => (
           <li key={`${row.kind} ${row.name} ${row.day}`} className="flex flex-wrap items-center gap-x-3 py-2">
             <Link to={`${home}/${row.kind}s`} className="text-link">
-              {row.kind === "licence" ? `Licence of ${row.name}` : `Calibration of ${row.name}`}
+              {row.kind === "licence" ? "Licence of" : "Calibration of"} <bdi>{row.name}</bdi>
             </Link>
             <span className="ml-auto inline-flex items-center gap-2 text-sm">
               <Day on={row.day} />
