@@ -3,6 +3,7 @@ import { afterAll, expect, test } from "vitest";
 import { openDatabase } from "~/db/client.server";
 import { hashPassword } from "~/services/people/passwords.server";
 import { readingCheck, type TestBench, makeBench, unitNow } from "../fixtures/bench";
+import { raiseFinding } from "~/services/bench/raise-finding.server";
 import { grantRoles, makeInstrument, makePerson } from "../fixtures/workshop";
 import { expectNoAxeViolations, screenshot, tablet, useBrowser } from "../helpers/browser";
 import { useServer } from "../helpers/server";
@@ -168,7 +169,7 @@ test("an instrument out of calibration can't be chosen, and says why", async () 
   const page = await signedIn(made.people.inspector.email);
   await page.goto(stepOf(made, check.key));
   const option = page.locator("select[name=instrumentId] option", { hasText: "Old meter" });
-  expect(await option.textContent()).toContain("OUT OF CALIBRATION since 2021-01-01");
+  expect(await option.textContent()).toContain("OUT OF CALIBRATION since 1 Jan 2021");
   expect(await option.isDisabled()).toBe(true);
 });
 
@@ -220,4 +221,87 @@ test("a sheet that isn't done can't be finished, and without a finding it can't 
     state: "sent_back",
     revision: 2,
   });
+});
+
+/** How far the page reaches beyond its window, in px. */
+const overhang = (page: Page) =>
+  page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth);
+
+test("on an upright tablet the queue's button to take a unit is on the screen", async () => {
+  const made = await bench({ state: "submitted" });
+  const page = await signedIn(made.people.inspector.email);
+  await page.goto(`${made.home}/bench`);
+  const box = await page.getByRole("button", { name: `Take unit ${made.unit.number}` }).boundingBox();
+  if (!box) throw new Error("There is no button.");
+  expect(box.x).toBeGreaterThanOrEqual(0);
+  expect(box.x + box.width).toBeLessThanOrEqual(tablet.width);
+  expect(box.height).toBeGreaterThanOrEqual(44);
+  expect(await overhang(page)).toBe(0);
+  await expectNoAxeViolations(page);
+});
+
+test("one endless word in a finding widens no page of the bench", async () => {
+  const made = await bench();
+  const inspector = made.as("inspector");
+  const check = await readingCheck(inspector, made.unit.number);
+  await raiseFinding(inspector, {
+    unitNumber: made.unit.number,
+    severity: "danger",
+    text: "W".repeat(300),
+    checkKey: check.key,
+    elementId: null,
+  });
+  const page = await signedIn(made.people.inspector.email);
+  for (const path of [
+    `${made.home}/bench/${made.unit.number}`,
+    `${made.home}/bench/${made.unit.number}/close`,
+    stepOf(made, check.key),
+    stepOf(made, "operation"),
+  ]) {
+    await page.goto(path);
+    await page
+      .getByText(/W{300}/)
+      .first()
+      .waitFor();
+    expect(await overhang(page), path).toBe(0);
+  }
+});
+
+test("a step with mains on says first what forbids mains, and takes no answer without a reason", async () => {
+  browser.tolerate(/status of 422/);
+  const made = await bench();
+  const page = await signedIn(made.people.inspector.email);
+  await page.goto(stepOf(made, "operation"));
+  const warning = page.getByRole("note", { name: "Do not connect mains:" });
+  await warning
+    .getByText(/: not done yet\.$/)
+    .first()
+    .waitFor();
+  await expectNoAxeViolations(page);
+  await page.getByRole("region", { name: "What you found" }).getByRole("radio").first().check();
+  await save(page).click();
+  await page.getByText(/^Do not connect mains: .* If it was right all the same, say why\.$/).waitFor();
+  await page.getByLabel("Why mains is connected all the same").fill("Behind an isolating transformer");
+  await save(page).click();
+  await corrected(page).waitFor();
+  await page.getByText("Behind an isolating transformer").waitFor();
+});
+
+test("the printed sheet fits its paper and shows what is folded up", async () => {
+  const made = await bench();
+  const page = await signedIn(made.people.inspector.email);
+  await page.goto(`${made.home}/bench/${made.unit.number}`);
+  await page.emulateMedia({ media: "print" });
+  // A4 upright less its margins, at 96 px to the inch.
+  await page.setViewportSize({ width: 688, height: 1000 });
+  const far = await page.evaluate(() =>
+    [...document.querySelectorAll("main *")]
+      .filter((each) => each.getClientRects().length > 0 && !each.closest(".sr-only"))
+      .filter((each) => each.getBoundingClientRect().right > innerWidth + 1)
+      .map((each) => `${each.tagName} ${each.className.toString()}`),
+  );
+  expect(far).toEqual([]);
+  const folded = page.locator("main details:not([open]) table");
+  expect(await folded.count()).toBeGreaterThan(0);
+  expect(await folded.first().isVisible()).toBe(true);
 });

@@ -216,3 +216,18 @@ test("a draft can be discarded, and is gone from the list", async () => {
   await hydrated(page);
   expect(await page.locator(`a[href$="/units/${number}"]`).count()).toBe(0);
 });
+
+test("a connection shows its figures whole, on a desk and on an upright tablet", async () => {
+  const { page } = await atLampMap();
+  for (const width of [1280, 820]) {
+    await page.setViewportSize({ width, height: 900 });
+    for (const field of ["area", "lengthM"]) {
+      const input = page.locator(`#conductor-W1-${field}`);
+      await input.fill("0.125");
+      const cut = await input.evaluate((each) => each.scrollWidth - each.clientWidth);
+      expect(cut, `${field} at ${width}`).toBeLessThanOrEqual(0);
+    }
+    const from = await page.locator("#conductor-W1-from").boundingBox();
+    expect(from?.width ?? 0).toBeGreaterThan(200);
+  }
+});

@@ -16,7 +16,7 @@ export function FindingSummary({
 }) {
   const check = lines.find((line) => line.check.key === finding.checkKey)?.check;
   return (
-    <div className="space-y-1 text-sm">
+    <div className="min-w-0 space-y-1 text-sm wrap-anywhere">
       <p className="flex flex-wrap items-center gap-2">
         <SeverityBadge severity={finding.severity} />
         <span className="font-semibold">Finding {finding.number}</span>

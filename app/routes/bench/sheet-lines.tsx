@@ -219,7 +219,9 @@ function Found({ line, observation, unit }: { line: Line; observation: Observati
         <span className="block text-ink-soft">{uncertaintyText(line.judged.expandedUncertainty, unit)}</span>
       ) : null}
       {observation.carried ? (
-        <span className="block text-ink-soft">carried over from revision {observation.revision}</span>
+        <span className="block text-ink-soft lg:whitespace-nowrap">
+          carried over from revision {observation.revision}
+        </span>
       ) : null}
       {observation.reason ? <span className="block text-ink-soft">{observation.reason}</span> : null}
     </>
