@@ -46,7 +46,7 @@ const words: Record<number, Words> = {
     again: false,
   },
   413: { title: "Too large", message: "What was sent is larger than this page takes.", again: false },
-  415: { title: "Wrong kind of file", message: "Files of this type are not taken here.", again: false },
+  415: { title: "Wrong kind of content", message: "Content of this type is not taken here.", again: false },
   422: { title: "Not possible as it stands", message: "Something stands in the way.", again: false },
   429: { title: "Too many tries", message: "Please wait a while before the next try.", again: true },
   503: {

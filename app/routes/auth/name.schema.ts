@@ -1,4 +1,3 @@
-import { z } from "zod";
 import { oneLine } from "~/engine/typed-text";
 
 /** A person's name, as it stands in records. */
