@@ -3,11 +3,51 @@ import tseslint from "typescript-eslint";
 
 /** What each layer may not import: the table in DEVELOPERS.md, enforced. */
 const layers = [
-  { files: ["app/engine/**"], except: ["app/**/*.test.ts"], deny: ["~/db/*", "~/services/*", "~/workflow/*", "~/routes/*", "~/components/*", "~/middleware/*", "~/context", "node:*", "react", "react-router"] },
-  { files: ["app/workflow/**"], except: ["app/**/*.test.ts"], deny: ["~/db/*", "~/services/*", "~/routes/*", "~/components/*", "~/middleware/*", "~/context", "node:*", "react"] },
-  { files: ["app/db/**"], except: [], deny: ["~/services/*", "~/routes/*", "~/components/*", "~/middleware/*", "~/engine/*"] },
-  { files: ["app/services/**"], except: [], deny: ["~/routes/*", "~/components/*", "~/middleware/*", "react-router"] },
-  { files: ["app/components/**"], except: [], deny: ["~/db/*", "~/services/*", "~/routes/*", "~/middleware/*"] },
+  {
+    files: ["app/engine/**"],
+    except: ["app/**/*.test.ts"],
+    deny: [
+      "~/db/*",
+      "~/services/*",
+      "~/workflow/*",
+      "~/routes/*",
+      "~/components/*",
+      "~/middleware/*",
+      "~/context",
+      "node:*",
+      "react",
+      "react-router",
+    ],
+  },
+  {
+    files: ["app/workflow/**"],
+    except: ["app/**/*.test.ts"],
+    deny: [
+      "~/db/*",
+      "~/services/*",
+      "~/routes/*",
+      "~/components/*",
+      "~/middleware/*",
+      "~/context",
+      "node:*",
+      "react",
+    ],
+  },
+  {
+    files: ["app/db/**"],
+    except: [],
+    deny: ["~/services/*", "~/routes/*", "~/components/*", "~/middleware/*", "~/engine/*"],
+  },
+  {
+    files: ["app/services/**"],
+    except: [],
+    deny: ["~/routes/*", "~/components/*", "~/middleware/*", "react-router"],
+  },
+  {
+    files: ["app/components/**"],
+    except: [],
+    deny: ["~/db/*", "~/services/*", "~/routes/*", "~/middleware/*"],
+  },
   { files: ["app/middleware/**"], except: [], deny: ["~/routes/*", "~/components/*", "~/engine/*"] },
   { files: ["app/routes/**"], except: [], deny: ["~/db/*"] },
 ];
@@ -15,7 +55,11 @@ const layers = [
 export default tseslint.config(
   { ignores: ["build/", ".react-router/", "node_modules/", ".data/", "drizzle/", "coverage/"] },
   ...tseslint.configs.recommended,
-  { files: ["app/**/*.{ts,tsx}"], plugins: { "react-hooks": reactHooks }, rules: { "react-hooks/rules-of-hooks": "error", "react-hooks/exhaustive-deps": "error" } },
+  {
+    files: ["app/**/*.{ts,tsx}"],
+    plugins: { "react-hooks": reactHooks },
+    rules: { "react-hooks/rules-of-hooks": "error", "react-hooks/exhaustive-deps": "error" },
+  },
   {
     rules: {
       "@typescript-eslint/no-unused-vars": ["error", { argsIgnorePattern: "^_", varsIgnorePattern: "^_" }],
@@ -29,7 +73,10 @@ export default tseslint.config(
     ignores: ["**/*.test.ts"],
     rules: {
       "no-restricted-globals": ["error", "Date", "process", "window", "document", "fetch"],
-      "no-restricted-properties": ["error", { object: "Math", property: "random", message: "The engine is deterministic." }],
+      "no-restricted-properties": [
+        "error",
+        { object: "Math", property: "random", message: "The engine is deterministic." },
+      ],
     },
   },
   ...layers.map(({ files, except, deny }) => ({

@@ -76,7 +76,9 @@ export function StatementList({
                 </span>
                 <span className="min-w-0">
                   {statement.text}
-                  {onJump ? <Names ids={[...statement.elements, ...statement.conductors]} onJump={onJump} /> : null}
+                  {onJump ? (
+                    <Names ids={[...statement.elements, ...statement.conductors]} onJump={onJump} />
+                  ) : null}
                 </span>
               </li>
             ))}
