@@ -55,10 +55,10 @@ export function EnergyDiagram({
       role="img"
       aria-labelledby={titleId}
       viewBox={`0 0 ${Math.ceil(diagram.width)} ${Math.ceil(diagram.height)}`}
-      width={tiny ? "100%" : Math.ceil(diagram.width)}
-      height={tiny ? undefined : Math.ceil(diagram.height)}
-      // On the screen it scrolls at its own size; paper can't scroll, so there it shrinks to the sheet's width.
-      className={tiny ? "max-h-40" : "max-w-none print:h-auto print:max-w-full"}
+      width="100%"
+      // It shrinks a little to fit, then scrolls; paper can't scroll, so there it shrinks to the sheet's width.
+      style={tiny ? undefined : { width: `clamp(${0.72 * diagram.width}px, 100%, ${diagram.width}px)` }}
+      className={tiny ? "max-h-40" : "h-auto max-w-none print:max-w-full"}
       fontFamily="var(--font-sans)"
     >
       <title id={titleId}>{title}</title>

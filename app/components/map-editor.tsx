@@ -119,7 +119,7 @@ export function MapEditor({ facts, ruleSet, exportName, onContinue, ...draftOpti
     >
       {map.elements.length > 0 ? (
         <Sheet title="Drawing" className="xl:col-span-2" flush>
-          <div className="max-h-[45dvh] overflow-y-auto p-3">
+          <div className="max-h-[60dvh] overflow-y-auto p-3">
             <MapDiagram map={deferred} analysis={analysis} highlight={pointed} />
           </div>
         </Sheet>
