@@ -220,7 +220,7 @@ async function drawSignature(
       : [{ text: `signed in as ${decision.signer.name}`, size: 7.4 }]),
     { text: `Licence ${licence.number}`, size: 8.4 },
     { text: licence.authority, size: 8.4 },
-    { text: `valid ${licence.validFrom} to ${licence.validTo}`, size: 8.4 },
+    { text: `valid ${dayWords(licence.validFrom)} to ${dayWords(licence.validTo)}`, size: 8.4 },
     {
       text: `up to ${licence.maxSupplyVolts} V, ${licence.coversBatteries ? "batteries included" : "no batteries"}`,
       size: 8.4,
