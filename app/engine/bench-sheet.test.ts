@@ -139,3 +139,11 @@ test.each(maps)("%s: what is cautioned as done with mains on is held back as suc
   const dead = checks.filter(({ key }) => /^(earth-|insulation|pole-)/.test(key) && !key.includes("current"));
   expect(dead.filter(({ energised }) => energised === true).map(({ key }) => key)).toEqual([]);
 });
+
+test("whatever needs mains connected comes after all that is done with the plug pulled", () => {
+  for (const { map } of starterMaps) {
+    const order = deriveBenchSheet(map, europe, facts).map((check) => check.energised === true);
+    expect(order.indexOf(true), "some check needs mains").toBeGreaterThan(0);
+    expect(order.lastIndexOf(false)).toBeLessThan(order.indexOf(true));
+  }
+});

@@ -9,7 +9,10 @@ import type { UnitFacts } from "./unit-facts";
 
 export type { BenchCheck, CheckFamily, InstrumentKind, Limit, Reason } from "./bench-check";
 
-/** The checks that this map and this rule set call for, in working order. An analysis made already may be passed in. */
+/**
+ * The checks that this map and this rule set call for, in working order: whatever needs mains connected comes after all
+ * that is done with the plug pulled. An analysis made already may be passed in.
+ */
 export function deriveBenchSheet(
   map: EnergyMap,
   ruleSet: RuleSet,
@@ -18,5 +21,6 @@ export function deriveBenchSheet(
 ): BenchCheck[] {
   const view = viewOf(map);
   const known = analysis ?? analyse(map, ruleSet, facts);
-  return checkRegistry.flatMap((definition) => definition.derive(view, ruleSet, facts, known));
+  const checks = checkRegistry.flatMap((definition) => definition.derive(view, ruleSet, facts, known));
+  return [...checks.filter((check) => !check.energised), ...checks.filter((check) => check.energised)];
 }

@@ -6,7 +6,6 @@ import { LineVerdictBadge } from "~/components/bench-verdict";
 import { SeverityBadge } from "~/components/ui/severity-badge";
 import { withParams } from "~/components/ui/table-params";
 import { VerdictIcon } from "~/components/ui/verdict-icon";
-import type { CheckFamily } from "~/engine/bench-check";
 import type { ObservationView, SheetLine } from "~/services/bench/sheet-view";
 import { checkHref } from "./check-href";
 import { isShown, type Show, shows, showWords } from "./sheet-filter";
@@ -30,20 +29,19 @@ export function SheetLines({
   revision: number;
 }) {
   const shown = lines.filter((line) => isShown(line, show));
-  // In the order in which the bench comes to them.
-  const families = [...new Set(shown.map((line) => line.check.family))];
+  const groups = groupLines(shown);
   return (
     <>
       <div className="flex flex-wrap items-center gap-x-6 gap-y-2 border-b border-rule px-3 py-2 print:hidden">
         <ShowLinks lines={lines} show={show} />
         <nav aria-label="Families" className="flex flex-wrap gap-x-3 text-sm">
-          {families.map((family) => (
+          {groups.map(({ id, title }) => (
             <a
-              key={family}
-              href={`#family-${family}`}
+              key={id}
+              href={`#${id}`}
               className="text-link inline-flex min-h-9 items-center pointer-coarse:min-h-11"
             >
-              {familyTitles[family]}
+              {title}
             </a>
           ))}
         </nav>
@@ -75,13 +73,8 @@ export function SheetLines({
               </th>
             </tr>
           </thead>
-          {families.map((family) => (
-            <FamilyRows
-              key={family}
-              family={family}
-              lines={shown.filter((line) => line.check.family === family)}
-              base={base}
-            />
+          {groups.map((group) => (
+            <GroupRows key={group.id} group={group} base={base} />
           ))}
         </table>
       )}
@@ -111,7 +104,28 @@ function ShowLinks({ lines, show }: { lines: readonly Line[]; show: Show }) {
   );
 }
 
-function FamilyRows({ family, lines, base }: { family: CheckFamily; lines: readonly Line[]; base: string }) {
+interface LineGroup {
+  /** Of the heading, for links. */
+  id: string;
+  title: string;
+  lines: Line[];
+}
+
+/** The lines by family, in the order in which the bench comes to them: first the dead ones, then those with mains on. */
+function groupLines(lines: readonly Line[]): LineGroup[] {
+  const groups = new Map<string, LineGroup>();
+  for (const line of lines) {
+    const { family, energised } = line.check;
+    const id = energised ? `family-${family}-mains` : `family-${family}`;
+    const title = energised ? `${familyTitles[family]} (mains connected)` : familyTitles[family];
+    const group = groups.get(id) ?? { id, title, lines: [] };
+    group.lines.push(line);
+    groups.set(id, group);
+  }
+  return [...groups.values()];
+}
+
+function GroupRows({ group: { id, title, lines }, base }: { group: LineGroup; base: string }) {
   return (
     <tbody role="rowgroup" className="max-md:block">
       <tr role="row" className="border-y border-rule-strong bg-inset max-md:block">
@@ -119,10 +133,10 @@ function FamilyRows({ family, lines, base }: { family: CheckFamily; lines: reado
           role="rowheader"
           scope="rowgroup"
           colSpan={6}
-          id={`family-${family}`}
+          id={id}
           className="px-3 py-1.5 text-left text-sm font-semibold max-md:block"
         >
-          {familyTitles[family]}
+          {title}
         </th>
       </tr>
       {lines.map((line) => (
