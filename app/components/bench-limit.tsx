@@ -1,21 +1,6 @@
-import type { CheckFamily, Limit } from "~/engine/bench-check";
+import type { Limit } from "~/engine/bench-check";
 import type { Citation } from "~/engine/rule-set";
 import { figure } from "~/engine/figure";
-
-export const familyTitles: Record<CheckFamily, string> = {
-  visual: "Visual and mechanical",
-  "protective-earth": "Protective earth",
-  insulation: "Insulation",
-  fusing: "Fusing",
-  "double-pole-isolation": "Double-pole isolation",
-  "reverse-current": "Reverse current",
-  leakage: "Leakage",
-  "stored-charge": "Stored charge",
-  battery: "Battery",
-  heat: "Heat",
-  marking: "Marking",
-  function: "Function",
-};
 
 /** A limit in words: "at most 0.3 Ω". */
 export function limitText(limit: Limit): string {

@@ -19,6 +19,22 @@ export const checkFamilies = [
 ] as const;
 export type CheckFamily = (typeof checkFamilies)[number];
 
+/** The families in words, the same on screen and in a printed record. */
+export const familyTitles: Record<CheckFamily, string> = {
+  visual: "Visual and mechanical",
+  "protective-earth": "Protective earth",
+  insulation: "Insulation",
+  fusing: "Fusing",
+  "double-pole-isolation": "Double-pole isolation",
+  "reverse-current": "Reverse current",
+  leakage: "Leakage",
+  "stored-charge": "Stored charge",
+  battery: "Battery",
+  heat: "Heat",
+  marking: "Marking",
+  function: "Function",
+};
+
 export const instrumentKinds = [
   "low-ohm-meter",
   "insulation-tester",

@@ -2,7 +2,7 @@ import { parseWithZod } from "@conform-to/zod/v4";
 import { Copy } from "lucide-react";
 import { data, Form, Link, useNavigation } from "react-router";
 import { z } from "zod";
-import { familyTitles } from "~/components/bench-limit";
+import { familyTitles } from "~/engine/bench-check";
 import { readingText } from "~/components/bench-reading";
 import { LineVerdictBadge } from "~/components/bench-verdict";
 import { Breadcrumbs } from "~/components/shell/breadcrumbs";

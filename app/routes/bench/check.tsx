@@ -1,7 +1,7 @@
 import { parseWithZod } from "@conform-to/zod/v4";
 import { ListChecks } from "lucide-react";
 import { data, isRouteErrorResponse } from "react-router";
-import { familyTitles } from "~/components/bench-limit";
+import { familyTitles } from "~/engine/bench-check";
 import { LineVerdictBadge } from "~/components/bench-verdict";
 import { PhotoStrip } from "~/components/photo-strip";
 import { PhotoUpload } from "~/components/photo-upload";

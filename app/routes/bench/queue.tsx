@@ -1,8 +1,8 @@
 import { parseWithZod } from "@conform-to/zod/v4";
-import { BatteryMedium, ClipboardCheck, HandGrab, Search, Undo2 } from "lucide-react";
+import { ClipboardCheck, HandGrab, Search, Undo2 } from "lucide-react";
 import { data, Form, useNavigation, useSearchParams } from "react-router";
 import { ConflictNotice } from "~/components/shell/conflict-notice";
-import { Badge } from "~/components/ui/badge";
+import { submissionColumns } from "~/components/submission-columns";
 import { Button } from "~/components/ui/button";
 import { Caution } from "~/components/ui/caution";
 import { ConfirmDialog } from "~/components/ui/confirm-dialog";
@@ -17,7 +17,6 @@ import { SelectField } from "~/components/ui/select-field";
 import { Sheet } from "~/components/ui/sheet";
 import { StateBadge } from "~/components/ui/state-badge";
 import { readPage, readSort } from "~/components/ui/table-params";
-import { Time } from "~/components/ui/time";
 import { answerTo } from "~/middleware/answers.server";
 import { authorise, authoriseUnit } from "~/middleware/authorise.server";
 import { redirectWithFlash } from "~/middleware/flash.server";
@@ -255,33 +254,7 @@ function columnsFor(slug: string, mayTake: boolean): Column<QueueRow>[] {
       ),
     },
     { id: "builder", header: "Builder", cell: (row) => row.builder, sortable: true },
-    {
-      id: "since",
-      header: "Submitted",
-      cell: (row) => <Time at={row.since} style="date" />,
-      sortable: true,
-      nowrap: true,
-    },
-    { id: "revision", header: "Rev.", cell: (row) => row.revision, sortable: true, numeric: true },
-    {
-      id: "supply",
-      header: "Supply",
-      cell: (row) => `${row.supplyVolts} V, ${row.supplyHertz} Hz, class ${row.protectionClass}`,
-      sortable: true,
-      nowrap: true,
-    },
-    {
-      id: "battery",
-      header: "Battery",
-      cell: (row) =>
-        row.hasBattery ? (
-          <Badge tone="outline" icon={BatteryMedium}>
-            Battery
-          </Badge>
-        ) : (
-          <span className="text-ink-soft">none</span>
-        ),
-    },
+    ...submissionColumns,
     {
       id: "take",
       header: "Take",

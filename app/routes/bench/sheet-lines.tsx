@@ -1,6 +1,7 @@
 import { Camera, CameraOff } from "lucide-react";
 import { Link, useSearchParams } from "react-router";
-import { familyTitles, limitSigns } from "~/components/bench-limit";
+import { limitSigns } from "~/components/bench-limit";
+import { familyTitles } from "~/engine/bench-check";
 import { readingText, uncertaintyText } from "~/components/bench-reading";
 import { LineVerdictBadge } from "~/components/bench-verdict";
 import { SeverityBadge } from "~/components/ui/severity-badge";

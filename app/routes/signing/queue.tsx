@@ -1,6 +1,6 @@
-import { BatteryMedium, PenLine, Search } from "lucide-react";
+import { PenLine, Search } from "lucide-react";
 import { Form, useSearchParams } from "react-router";
-import { Badge } from "~/components/ui/badge";
+import { submissionColumns } from "~/components/submission-columns";
 import { Button } from "~/components/ui/button";
 import { type Column, DataTable } from "~/components/ui/data-table";
 import { EmptyState } from "~/components/ui/empty-state";
@@ -11,7 +11,6 @@ import { Pagination } from "~/components/ui/pagination";
 import { SelectField } from "~/components/ui/select-field";
 import { Sheet } from "~/components/ui/sheet";
 import { readPage, readSort } from "~/components/ui/table-params";
-import { Time } from "~/components/ui/time";
 import { authorise } from "~/middleware/authorise.server";
 import { queueSorts } from "~/services/bench/queue.server";
 import { loadSigningQueue, type SigningRow } from "~/services/signing/signing-queue.server";
@@ -121,33 +120,7 @@ function columnsFor(slug: string, maySign: boolean): Column<SigningRow>[] {
     { id: "number", header: "No.", cell: (row) => row.number, sortable: true, numeric: true },
     { id: "builder", header: "Builder", cell: (row) => row.builder, sortable: true },
     { id: "inspector", header: "Inspector", cell: (row) => row.inspector ?? "not known" },
-    {
-      id: "since",
-      header: "Submitted",
-      cell: (row) => <Time at={row.since} style="date" />,
-      sortable: true,
-      nowrap: true,
-    },
-    { id: "revision", header: "Rev.", cell: (row) => row.revision, sortable: true, numeric: true },
-    {
-      id: "supply",
-      header: "Supply",
-      cell: (row) => `${row.supplyVolts} V, ${row.supplyHertz} Hz, class ${row.protectionClass}`,
-      sortable: true,
-      nowrap: true,
-    },
-    {
-      id: "battery",
-      header: "Battery",
-      cell: (row) =>
-        row.hasBattery ? (
-          <Badge tone="outline" icon={BatteryMedium}>
-            Battery
-          </Badge>
-        ) : (
-          <span className="text-ink-soft">none</span>
-        ),
-    },
+    ...submissionColumns,
     {
       id: "review",
       header: "Review",

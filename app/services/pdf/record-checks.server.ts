@@ -1,7 +1,7 @@
+import { familyTitles } from "~/engine/bench-check";
 import type { RecordCheck, UnitRecord } from "~/services/records/record-format";
 import {
   citationWords,
-  familyWords,
   limitWords,
   momentWords,
   observationWords,
@@ -31,7 +31,7 @@ export function drawChecks(paper: Paper, record: UnitRecord): void {
   const rows: TableRow[] = [];
   record.checks.forEach((check, index) => {
     if (check.family !== record.checks[index - 1]?.family)
-      rows.push({ kind: "group", text: familyWords[check.family] });
+      rows.push({ kind: "group", text: familyTitles[check.family] });
     rows.push({ kind: "row", cells: checkCells(check, index + 1, record.workshop.timeZone) });
   });
   table(

@@ -1,6 +1,7 @@
+import { familyTitles } from "~/engine/bench-check";
 import QRCode from "qrcode";
 import type { UnitRecord } from "~/services/records/record-format";
-import { dayWords, familyWords, momentWords, tally } from "~/services/records/record-words";
+import { dayWords, momentWords, tally } from "~/services/records/record-words";
 import { nameMatches } from "~/services/signing/signing-rules";
 import { cautionBox, drawSign, paragraph, type Sign, titleBlock } from "./blocks.server";
 import {
@@ -156,7 +157,7 @@ function drawFamilies(paper: Paper, { checks }: UnitRecord): void {
     const own = checks.filter((check) => check.family === family);
     paper.outline(box, strongRule, 0.5);
     drawSign(paper, familySign(own), box.x + 10, box.top - height / 2);
-    paper.lines([familyWords[family]], box.x + 20, box.top - 3.5, { size: 7.6, weight: "bold" });
+    paper.lines([familyTitles[family]], box.x + 20, box.top - 3.5, { size: 7.6, weight: "bold" });
     const [counts = ""] = paper.fit(tally(own), width - 24, { size: 6.8 }).lines;
     paper.lines([counts], box.x + 20, box.top - 13, { size: 6.8, color: soft });
   });

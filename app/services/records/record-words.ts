@@ -1,24 +1,8 @@
-import type { CheckFamily } from "~/engine/bench-check";
 import type { LineVerdict } from "~/engine/bench-answer";
 import { figure } from "~/engine/figure";
 import type { RecordCheck, RecordCitation, RecordLimit, RecordObservation } from "./record-format";
 
 /** The words in which a record is printed. */
-
-export const familyWords: Record<CheckFamily, string> = {
-  visual: "Visual and mechanical",
-  "protective-earth": "Protective earth",
-  insulation: "Insulation",
-  fusing: "Fusing",
-  "double-pole-isolation": "Double-pole isolation",
-  "reverse-current": "Reverse current",
-  leakage: "Leakage",
-  "stored-charge": "Stored charge",
-  battery: "Battery",
-  heat: "Heat",
-  marking: "Marking",
-  function: "Function",
-};
 
 export const verdictWords: Record<LineVerdict, string> = {
   pass: "Pass",
